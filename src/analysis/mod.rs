@@ -1,0 +1,40 @@
+//! Linear analysis of the structures of a model, exact for straight uniform members.
+//!
+//! Invariants
+//! - SI throughout; local axes, signs and effects as fixed in the design (see [`crate::model::Effect`]).
+//! - A field inside a member is a piecewise polynomial; nothing is sampled at stations.
+//! - Mechanisms and unrestrained parts are refused with the node and direction named, never solved.
+//! - Never reads files, never rounds for printing.
+
+mod fields;
+mod solution;
+
+pub use fields::{Fields, Polynomial, evaluate};
+pub use solution::{
+    Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,
+    Independent, MemberSolution, NodeSolution, Residual, Runner, Segment, SelfCheck, Solution,
+    StructureCheck,
+};
+
+use crate::diagnostic::Diagnostic;
+use crate::model::Model;
+
+/// Solves every load case of every structure.
+///
+/// # Errors
+/// Mechanisms, unrestrained parts and loads that cannot be carried, each with its place in the file.
+pub fn solve(model: &Model) -> Result<Solution, Vec<Diagnostic>> {
+    todo!("{}", model.nodes.len())
+}
+
+/// Superposes every combination and finds the governing values with their positions.
+#[must_use]
+pub fn govern(model: &Model, solution: &Solution) -> Governing {
+    todo!("{} {}", model.nodes.len(), solution.states.len())
+}
+
+/// Holds the solution against equilibrium, energy and an independent integration.
+#[must_use]
+pub fn self_check(model: &Model, solution: &Solution) -> SelfCheck {
+    todo!("{} {}", model.nodes.len(), solution.states.len())
+}

@@ -1,0 +1,1 @@
+//! Commands: parse arguments, call the library, print, pick the exit status.

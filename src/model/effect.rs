@@ -1,0 +1,91 @@
+//! The effects along a member, named once for the whole program.
+
+/// An effect along a member in its local axes; signs as in the design page's conventions:
+/// N tension positive, M_y sagging (tension on −z) positive, dM_y/dx = V_z.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Effect {
+    N,
+    Vy,
+    Vz,
+    T,
+    My,
+    Mz,
+    U,
+    V,
+    W,
+    ThetaX,
+    ThetaY,
+    ThetaZ,
+    /// Deflection along y from the chord of the span.
+    Dy,
+    /// Deflection along z from the chord of the span.
+    Dz,
+}
+
+/// All effects, in the order in which they are stored and printed.
+pub const EFFECTS: [Effect; 14] = [
+    Effect::N,
+    Effect::Vy,
+    Effect::Vz,
+    Effect::T,
+    Effect::My,
+    Effect::Mz,
+    Effect::U,
+    Effect::V,
+    Effect::W,
+    Effect::ThetaX,
+    Effect::ThetaY,
+    Effect::ThetaZ,
+    Effect::Dy,
+    Effect::Dz,
+];
+
+/// The six internal forces, the first six of [`EFFECTS`].
+pub const FORCES: usize = 6;
+/// Effects written to record.json; `d_y` and `d_z` follow from the others.
+pub const STORED: usize = 12;
+
+impl Effect {
+    /// Position in [`EFFECTS`].
+    #[must_use]
+    pub const fn index(self) -> usize {
+        self as usize
+    }
+
+    /// The name in records, formulas, templates and the terminal.
+    #[must_use]
+    pub const fn name(self) -> &'static str {
+        match self {
+            Self::N => "N",
+            Self::Vy => "V_y",
+            Self::Vz => "V_z",
+            Self::T => "T",
+            Self::My => "M_y",
+            Self::Mz => "M_z",
+            Self::U => "u",
+            Self::V => "v",
+            Self::W => "w",
+            Self::ThetaX => "theta_x",
+            Self::ThetaY => "theta_y",
+            Self::ThetaZ => "theta_z",
+            Self::Dy => "d_y",
+            Self::Dz => "d_z",
+        }
+    }
+
+    /// The effect of a name.
+    #[must_use]
+    pub fn from_name(name: &str) -> Option<Self> {
+        EFFECTS.into_iter().find(|effect| effect.name() == name)
+    }
+}
+
+/// Which side of a jump along a member: just before it (towards the start) or just after.
+#[derive(
+    Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, serde::Serialize, serde::Deserialize,
+)]
+#[serde(rename_all = "lowercase")]
+pub enum Side {
+    Before,
+    After,
+}

@@ -1,0 +1,142 @@
+//! The resolved project: SI units, names resolved, nothing optional left that matters to the solver.
+//!
+//! Invariants
+//! - Ids index the vectors of the [`Model`] they came from; entities stand in the order written.
+//! - Lengths are finite and positive, members' nodes are collinear, axes orthonormal and right-handed:
+//!   `project` checks each once and cannot build a model otherwise.
+//! - Every entity keeps its origin in the file, so that later problems can point there.
+//! - Never reads files, never computes an effect.
+
+mod action;
+mod combination;
+mod effect;
+mod settings;
+mod structure;
+
+pub use action::{
+    Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Per, Target, Written,
+};
+pub use combination::{Combination, Purpose};
+pub use effect::{EFFECTS, Effect, FORCES, STORED, Side};
+pub use settings::{
+    AnalysisSettings, Assumption, Basis, Deferral, Draw, MomentSide, PackageSettings, Paper,
+    ProjectInfo, Revision, Standard,
+};
+pub use structure::{
+    Axes, AxialOnly, Frame, Freedom, Held, HeldAlong, Hinge, Material, Member, Node, Release,
+    Section, Span, Structure, Support,
+};
+
+use crate::diagnostic::Place;
+use crate::quantity::{Dimension, Units};
+
+macro_rules! ids {
+    ($($(#[$doc:meta])* $name:ident),* $(,)?) => {$(
+        $(#[$doc])*
+        #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+        pub struct $name(pub usize);
+    )*};
+}
+ids! {
+    /// Index into [`Model::structures`].
+    StructureId,
+    /// Index into [`Model::nodes`].
+    NodeId,
+    /// Index into [`Model::members`].
+    MemberId,
+    /// Index into [`Model::sections`].
+    SectionId,
+    /// Index into [`Model::materials`].
+    MaterialId,
+    /// Index into [`Model::cases`].
+    CaseId,
+    /// Index into [`Model::build_ups`].
+    BuildUpId,
+}
+
+/// Where in the project file an entity was written.
+pub type Origin = Place;
+
+/// Everything the project states, resolved.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Model {
+    pub project: ProjectInfo,
+    pub basis: Basis,
+    pub units: Units,
+    /// Significant digits printed.
+    pub significant: usize,
+    /// Shear deformation of catalogue and shape sections counts.
+    pub shear_deformation: bool,
+    pub analysis: AnalysisSettings,
+    pub package: PackageSettings,
+    pub values: Vec<NamedValue>,
+    pub build_ups: Vec<BuildUp>,
+    pub materials: Vec<Material>,
+    pub sections: Vec<Section>,
+    pub structures: Vec<Structure>,
+    /// Structures in order of dependency: a structure that hands on reactions comes first.
+    pub solve_order: Vec<StructureId>,
+    pub nodes: Vec<Node>,
+    pub members: Vec<Member>,
+    pub cases: Vec<LoadCase>,
+    /// In the order written; `combinations[i].number` is what tables print.
+    pub combinations: Vec<Combination>,
+}
+
+/// A named constant of the project.
+#[derive(Clone, Debug, PartialEq)]
+pub struct NamedValue {
+    pub name: String,
+    /// SI.
+    pub value: f64,
+    pub dimension: Dimension,
+    /// As written in the file, e.g. `0.4 m`.
+    pub written: String,
+    pub source: Option<String>,
+    pub origin: Origin,
+}
+
+/// Layers that make up an area load.
+#[derive(Clone, Debug, PartialEq)]
+pub struct BuildUp {
+    pub name: String,
+    pub layers: Vec<Layer>,
+    pub origin: Origin,
+}
+
+impl BuildUp {
+    /// Sum of the layers, N/m².
+    #[must_use]
+    pub fn total(&self) -> f64 {
+        self.layers.iter().map(|layer| layer.load).sum()
+    }
+}
+
+/// One layer of a build-up.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Layer {
+    pub title: String,
+    /// N/m².
+    pub load: f64,
+    pub source: Option<String>,
+}
+
+macro_rules! index_by_id {
+    ($($id:ident => $field:ident: $entity:ident),* $(,)?) => {$(
+        impl std::ops::Index<$id> for Model {
+            type Output = $entity;
+            fn index(&self, id: $id) -> &$entity {
+                &self.$field[id.0]
+            }
+        }
+    )*};
+}
+index_by_id! {
+    StructureId => structures: Structure,
+    NodeId => nodes: Node,
+    MemberId => members: Member,
+    SectionId => sections: Section,
+    MaterialId => materials: Material,
+    CaseId => cases: LoadCase,
+    BuildUpId => build_ups: BuildUp,
+}
