@@ -1,0 +1,1 @@
+//! See the files beside this one.

@@ -1,0 +1,7 @@
+//! One test program: published values, laws, commands and documents.
+
+mod commands;
+mod documents;
+mod laws;
+mod published;
+mod support;
