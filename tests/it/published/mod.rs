@@ -1,1 +1,7 @@
-//! See the files beside this one.
+//! Printed values from outside the project, run through the real project-file path.
+
+mod case;
+mod compare;
+mod families;
+mod sections;
+mod translate;

@@ -1,0 +1,1 @@
+//! Family M: section properties, through the project file.
