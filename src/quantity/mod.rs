@@ -7,14 +7,17 @@
 //! - This module never guesses a unit: a number without one is dimensionless.
 
 mod dimension;
+mod kind;
 mod parse;
 mod print;
+mod symbols;
 mod units;
 
 pub use dimension::Dimension;
-pub use parse::{QuantityError, parse};
-pub use print::Printer;
-pub use units::{Kind, System, Unit, Units};
+pub use kind::Kind;
+pub use parse::{QuantityError, parse, parse_as, parse_unit};
+pub use print::{Printer, print};
+pub use units::{System, Unit, Units};
 
 /// A value in SI base units with its dimension.
 #[derive(Clone, Copy, Debug, PartialEq)]

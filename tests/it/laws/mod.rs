@@ -1,3 +1,4 @@
 //! See the files beside this one.
 
 mod module_order;
+mod quantities;
