@@ -1,7 +1,28 @@
 //! Section properties from geometry.
 //!
-//! Axes: local y and z through the centroid, z up, y = z × x (members' local axes seen against +x:
-//! y points left, z up). All values SI.
+//! Axes: local y and z through the centroid, z up, y = z × x: looking along +x, y points left; looking
+//! against +x, right. y-y is the major axis of an upright I, H, rectangle or channel. All values SI.
+//!
+//! Lie of the shapes that are not symmetric: a channel has its web on the -y side and its flanges
+//! pointing to +y; an angle has its heel at -y, -z, its `width` leg along +y and its `depth` leg along
+//! +z (so I_yz < 0); a T has its flange on top (+z).
+//!
+//! Areas, second moments, elastic and plastic moduli are exact for the nominal shape, fillets included.
+//! Torsion and warping constants and shear areas follow published approximations, each named in
+//! [`Methods`]. Nothing here knows tables, materials or units.
+
+mod closed;
+mod edge;
+mod integral;
+mod open;
+mod polygon;
+mod shape;
+mod torsion;
+
+pub use open::european_i_torsion;
+pub use shape::{Shape, ShapeError, Taper};
+
+use std::f64::consts::FRAC_PI_2;
 
 use indexmap::IndexMap;
 
@@ -24,7 +45,7 @@ pub struct Properties {
     pub i_t: f64,
     /// Warping constant, m⁶.
     pub i_w: Option<f64>,
-    /// Elastic section moduli (least), m³.
+    /// Elastic section moduli, second moment over the farther fibre, m³.
     pub w_el_y: Option<f64>,
     pub w_el_z: Option<f64>,
     /// Plastic section moduli, m³.
@@ -47,19 +68,67 @@ pub struct Properties {
     /// Nominal dimensions by symbol (`h`, `b`, `t_w`, `t_f`, `r`, `d`, `t`), m.
     pub dimensions: IndexMap<String, f64>,
     pub outline: Outline,
+    pub methods: Methods,
 }
+
+/// How the values that are not exact were found, as text for the Basis chapter. `None`: not known, or
+/// given by hand.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Methods {
+    /// I_t.
+    pub torsion: Option<&'static str>,
+    /// I_w and the shear centre.
+    pub warping: Option<&'static str>,
+    /// A_sy, A_sz.
+    pub shear_area: Option<&'static str>,
+    /// A_vy, A_vz.
+    pub shear_resistance: Option<&'static str>,
+}
+
+/// Text for [`Methods::torsion`] where [`european_i_torsion`] is used.
+pub const EUROPEAN_TORSION: &str = torsion::EUROPEAN;
 
 impl Properties {
     /// Principal second moments (I_u ≥ I_v) and the angle α from local y to axis u, rad,
     /// right-handed about +x.
     #[must_use]
     pub fn principal(&self) -> (f64, f64, f64) {
-        todo!()
+        let mean = (self.i_y + self.i_z) / 2.0;
+        let half = (self.i_y - self.i_z) / 2.0;
+        let radius = libm::hypot(half, self.i_yz);
+        // A round or square section: every axis is principal, and the local ones serve.
+        if radius <= 1e-12 * mean {
+            return (self.i_y, self.i_z, 0.0);
+        }
+        let angle = if self.i_yz == 0.0 {
+            if half > 0.0 { 0.0 } else { FRAC_PI_2 }
+        } else {
+            libm::atan2(-self.i_yz, half) / 2.0
+        };
+        (mean + radius, mean - radius, angle)
+    }
+
+    /// The local axes are not principal axes: bending about y also moves the section sideways.
+    #[must_use]
+    pub fn is_skew(&self) -> bool {
+        self.i_yz.abs() > 1e-9 * (self.i_y + self.i_z)
+    }
+
+    /// Radii of gyration about y and z, m.
+    #[must_use]
+    pub fn radii(&self) -> [f64; 2] {
+        [self.i_y, self.i_z].map(|second| libm::sqrt(second / self.area))
     }
 
     /// Overall depth along z, m.
     #[must_use]
     pub fn depth(&self) -> Option<f64> {
         Some(self.z_top? + self.z_bottom?)
+    }
+
+    /// Overall width along y, m.
+    #[must_use]
+    pub fn width(&self) -> Option<f64> {
+        Some(self.y_plus? + self.y_minus?)
     }
 }
