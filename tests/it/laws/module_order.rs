@@ -3,8 +3,18 @@
 use std::path::{Path, PathBuf};
 
 const ORDER: [&str; 12] = [
-    "quantity", "diagnostic", "files", "section", "catalogue", "model", "project", "analysis", "record", "figures",
-    "package", "cli",
+    "quantity",
+    "diagnostic",
+    "files",
+    "section",
+    "catalogue",
+    "model",
+    "project",
+    "analysis",
+    "record",
+    "figures",
+    "package",
+    "cli",
 ];
 
 fn rust_files(folder: &Path) -> Vec<PathBuf> {
@@ -51,10 +61,8 @@ fn modules_import_only_what_stands_before_them() {
 #[test]
 fn every_module_stands_in_the_order() {
     let lib = include_str!("../../../src/lib.rs");
-    let modules: Vec<&str> = lib
-        .lines()
-        .filter_map(|line| line.strip_prefix("pub mod ")?.strip_suffix(';'))
-        .collect();
+    let modules: Vec<&str> =
+        lib.lines().filter_map(|line| line.strip_prefix("pub mod ")?.strip_suffix(';')).collect();
     let mut sorted: Vec<&str> = ORDER.to_vec();
     sorted.sort_unstable();
     let mut listed = modules.clone();

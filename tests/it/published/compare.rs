@@ -65,13 +65,16 @@ fn value(case: &Case, record: &Record, expected: &Expected) -> f64 {
     let member = member(record, name);
     let side = if at.side.as_deref() == Some("before") { Side::Before } else { Side::After };
     let x = at.x.expect("a position");
-    let effect = |effect| record.effect(name, effect, state, x, side).expect("a position on the member");
+    let effect =
+        |effect| record.effect(name, effect, state, x, side).expect("a position on the member");
     match quantity {
         "moment" => up(member) * effect(Effect::My),
         "shear" => up(member) * effect(Effect::Vz),
         "axial" => effect(Effect::N),
         // z = row 2 of the local axes; the plane's vertical is global Z.
-        "deflection_y" => member.axes[0][2] * effect(Effect::U) + member.axes[2][2] * effect(Effect::W),
+        "deflection_y" => {
+            member.axes[0][2] * effect(Effect::U) + member.axes[2][2] * effect(Effect::W)
+        }
         // Anticlockwise is left-handed about global Y.
         "end_rotation" => -member.axes[1][1] * effect(Effect::ThetaY),
         "torque_abs" => effect(Effect::T).abs(),
@@ -85,8 +88,7 @@ fn value(case: &Case, record: &Record, expected: &Expected) -> f64 {
 fn scope_extreme(case: &Case, record: &Record, expected: &Expected) -> Result<(), String> {
     let at = &expected.location;
     let largest = expected.quantity.ends_with("max");
-    let effect =
-        if expected.quantity.starts_with("moment") { Effect::My } else { Effect::W };
+    let effect = if expected.quantity.starts_with("moment") { Effect::My } else { Effect::W };
     let state = at.load_set.as_deref().unwrap_or(ONLY);
     let (name, found) = extremes(record, at, effect, largest, &format!("{state} alone"));
     within(expected, found.value)?;
@@ -109,14 +111,18 @@ fn place(
     let near = name == member && (found.x - x).abs() <= 0.005 * length;
     let state = at.load_set.as_deref().unwrap_or(ONLY);
     let there = [Side::Before, Side::After].iter().any(|side| {
-        let value = record.effect(member, effect, state, x, *side).expect("a position on the member");
+        let value =
+            record.effect(member, effect, state, x, *side).expect("a position on the member");
         (up(self::member(record, member)) * value - expected.value).abs()
             <= 1e-5 * expected.value.abs()
     });
     if near || there {
         Ok(())
     } else {
-        Err(format!("{} of {}: at {name} {}, published {member} {x}", expected.quantity, case.id, found.x))
+        Err(format!(
+            "{} of {}: at {name} {}, published {member} {x}",
+            expected.quantity, case.id, found.x
+        ))
     }
 }
 
@@ -135,7 +141,8 @@ fn extremes<'r>(
 ) -> (&'r str, Signed) {
     let scope = at.scope.as_deref().unwrap_or("all");
     let mut best: Option<(&str, Signed)> = None;
-    for (name, result) in record.results.members.iter().filter(|(name, _)| scope == "all" || scope == *name)
+    for (name, result) in
+        record.results.members.iter().filter(|(name, _)| scope == "all" || scope == *name)
     {
         let sign = up(member(record, name));
         let Some(pair) = result.governing["strength"].get(effect.name()) else { continue };

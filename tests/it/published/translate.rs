@@ -187,7 +187,8 @@ fn load_lines(case: &Case, plane: bool, load: &Load) -> Vec<String> {
         "node" => {
             let force = components(force, ["X", "Y", "Z"], "N");
             let moment = components(moment, ["X", "Y", "Z"], "N m");
-            let mut line = format!("node: {}", load.node.as_deref().expect("a node load names a node"));
+            let mut line =
+                format!("node: {}", load.node.as_deref().expect("a node load names a node"));
             if !force.is_empty() {
                 let _ = write!(line, ", force: {{{force}}}");
             }
@@ -202,7 +203,9 @@ fn load_lines(case: &Case, plane: bool, load: &Load) -> Vec<String> {
             let mut lines = Vec::new();
             for (axis, value) in ["X", "Y", "Z"].into_iter().zip(force) {
                 if value != 0.0 {
-                    lines.push(format!("member: {member}, point: {value} N, at: {at} m, direction: +{axis}"));
+                    lines.push(format!(
+                        "member: {member}, point: {value} N, at: {at} m, direction: +{axis}"
+                    ));
                 }
             }
             for (axis, value) in ["X", "Y", "Z"].into_iter().zip(moment) {
@@ -224,7 +227,10 @@ fn load_lines(case: &Case, plane: bool, load: &Load) -> Vec<String> {
             vec![if load.difference == 0.0 {
                 format!("member: {}, warming: {{uniform: {} K}}", member_of(load), load.mean)
             } else {
-                format!("member: {}, warming: {{top: {top} K, bottom: {bottom} K}}", member_of(load))
+                format!(
+                    "member: {}, warming: {{top: {top} K, bottom: {bottom} K}}",
+                    member_of(load)
+                )
             }]
         }
         kind => panic!("no translation of a load of type {kind}"),
