@@ -4,4 +4,5 @@ mod case;
 mod compare;
 mod families;
 mod sections;
+mod shapes;
 mod translate;
