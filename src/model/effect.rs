@@ -1,5 +1,7 @@
 //! The effects along a member, named once for the whole program.
 
+use crate::quantity::Kind;
+
 /// An effect along a member in its local axes; signs as in the design page's conventions:
 /// N tension positive, M_y sagging (tension on −z) positive, dM_y/dx = V_z.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -70,6 +72,17 @@ impl Effect {
             Self::ThetaZ => "theta_z",
             Self::Dy => "d_y",
             Self::Dz => "d_z",
+        }
+    }
+
+    /// What its values are: decides the unit they print in.
+    #[must_use]
+    pub const fn kind(self) -> Kind {
+        match self {
+            Self::N | Self::Vy | Self::Vz => Kind::Force,
+            Self::T | Self::My | Self::Mz => Kind::Moment,
+            Self::U | Self::V | Self::W | Self::Dy | Self::Dz => Kind::Deflection,
+            Self::ThetaX | Self::ThetaY | Self::ThetaZ => Kind::Rotation,
         }
     }
 

@@ -5,6 +5,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::analysis::{Arithmetic, Fields};
 use crate::model::{FORCES, Side};
+use crate::quantity::{Printer, Units};
 
 /// The form of record.json written by this program.
 pub const FORMAT: u32 = 1;
@@ -239,6 +240,18 @@ pub struct UnitsRecord {
     pub system: crate::quantity::System,
     pub significant: usize,
     pub units: Map<(String, f64)>,
+}
+
+impl UnitsRecord {
+    /// Prints values in the project's units.
+    #[must_use]
+    pub fn printer(&self) -> Printer {
+        let labels = self
+            .units
+            .iter()
+            .map(|(kind, (label, factor))| (kind.as_str(), label.as_str(), *factor));
+        Printer { units: Units::from_labels(self.system, labels), significant: self.significant }
+    }
 }
 
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
