@@ -2,6 +2,7 @@
 //!
 //! Numbers are written with two decimals of a mm, so that equal drawings are equal bytes.
 
+use svg::Node;
 use svg::node::Blob;
 use svg::node::element::Element;
 

