@@ -5,6 +5,11 @@
 //! - Every problem of a file is reported in one run.
 //! - Leaves are text as written until `resolve` parses and names them.
 
+pub mod keys;
+mod resolve;
+pub mod text;
+pub mod written;
+
 use crate::diagnostic::Diagnostic;
 use crate::files::Sources;
 use crate::model::Model;
