@@ -223,11 +223,6 @@ impl Canvas {
         self.extent.map_or(0.0, |extent| extent.max[1])
     }
 
-    /// Upper edge of what is drawn so far, labels apart.
-    pub(super) fn top(&self) -> f64 {
-        self.extent.map_or(0.0, |extent| extent.min[1])
-    }
-
     /// Places the labels and writes the drawing.
     pub(super) fn finish(mut self, id: &str, title: &str, description: &str) -> String {
         let labels = std::mem::take(&mut self.labels);

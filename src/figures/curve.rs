@@ -14,20 +14,42 @@ pub(super) fn points(
     state: &str,
     per_metre: f64,
 ) -> Vec<Point> {
-    let pieces = record.along(member, effect, state).unwrap_or_default();
-    pieces.iter().flat_map(|piece| piece_points(piece, per_metre)).collect()
+    let cuts = |piece: &Piece| {
+        let straight = piece.polynomial[2..].iter().all(|c| c.abs() <= 0.0);
+        if straight { 1 } else { steps((piece.to - piece.from) * per_metre) }
+    };
+    sampled(record, member, effect, state, cuts)
 }
 
-fn piece_points(piece: &Piece, per_metre: f64) -> Vec<Point> {
-    let run = piece.to - piece.from;
-    let straight = piece.polynomial[2..].iter().all(|c| c.abs() <= 0.0);
-    let steps = if straight { 1 } else { steps(run * per_metre) };
-    (0..=steps)
-        .map(|i| {
-            let s = run * f64::from(i) / f64::from(steps);
-            [piece.from + s, evaluate(&piece.polynomial, s)]
-        })
-        .collect()
+/// Like [`points`], but straight pieces are cut as curves are, so that several effects of a member
+/// have their points at the same positions.
+pub(super) fn evenly(
+    record: &Record,
+    member: &str,
+    effect: Effect,
+    state: &str,
+    per_metre: f64,
+) -> Vec<Point> {
+    let cuts = |piece: &Piece| steps((piece.to - piece.from) * per_metre);
+    sampled(record, member, effect, state, cuts)
+}
+
+fn sampled(
+    record: &Record,
+    member: &str,
+    effect: Effect,
+    state: &str,
+    cuts: impl Fn(&Piece) -> u8,
+) -> Vec<Point> {
+    let mut points = Vec::new();
+    for piece in record.along(member, effect, state).unwrap_or_default() {
+        let cuts = cuts(&piece);
+        for i in 0..=cuts {
+            let s = (piece.to - piece.from) * f64::from(i) / f64::from(cuts);
+            points.push([piece.from + s, evaluate(&piece.polynomial, s)]);
+        }
+    }
+    points
 }
 
 fn steps(paper: f64) -> u8 {

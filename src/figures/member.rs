@@ -14,22 +14,14 @@ use crate::quantity::Kind;
 use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberRecord};
 
 /// Effects that are drawn, where they are not zero.
-const DRAWN: [Effect; 8] = [
-    Effect::N,
-    Effect::Vy,
-    Effect::Vz,
-    Effect::T,
-    Effect::My,
-    Effect::Mz,
-    Effect::Dy,
-    Effect::Dz,
-];
+const DRAWN: [Effect; 8] =
+    [Effect::N, Effect::Vy, Effect::Vz, Effect::T, Effect::My, Effect::Mz, Effect::Dy, Effect::Dz];
 /// Left and right ends of the member on the paper, mm.
 const ENDS: [f64; 2] = [26.0, 160.0];
 /// Height from least to greatest value, mm.
 const HEIGHT: f64 = 19.0;
 /// Clear height between two effects, mm.
-const GAP: f64 = 9.0;
+const GAP: f64 = 11.0;
 /// So many combinations are drawn one by one.
 const COMBINATIONS: usize = 40;
 /// Below this part of the greatest related value an effect is not drawn: round-off.
@@ -110,7 +102,9 @@ impl Drawing<'_> {
         let title = format!("Effects along member {}, {}", self.name, self.purpose.name());
         let capped = match self.combinations.len() {
             n if n > COMBINATIONS => {
-                format!(" Of {n} combinations the first {COMBINATIONS} are drawn one by one; the envelope covers all.")
+                format!(
+                    " Of {n} combinations the first {COMBINATIONS} are drawn one by one; the envelope covers all."
+                )
             }
             _ => String::new(),
         };
@@ -155,7 +149,8 @@ impl Drawing<'_> {
         for (node, station) in self.member.along.iter().zip(&self.member.stations) {
             let at = [self.x(*station), 0.0];
             self.neighbours(canvas, node, at, direction);
-            let support = self.sheet.structure.nodes.get(node).and_then(|node| node.support.as_ref());
+            let support =
+                self.sheet.structure.nodes.get(node).and_then(|node| node.support.as_ref());
             if let Some(support) = support {
                 let end = if *station <= 0.0 { [-1.0, 0.0] } else { [1.0, 0.0] };
                 let inner = *station > 0.0 && *station < self.member.length;
@@ -221,8 +216,7 @@ impl Drawing<'_> {
         let Some(extremes) = self.governing[0].get(effect.name()) else { return false };
         let (low, high) = (extremes.min.value.min(0.0), extremes.max.value.max(0.0));
         // Positive values below the axis.
-        let down =
-            is_bending(effect) && self.sheet.record.model.package.moments == "tension side";
+        let down = is_bending(effect) && self.sheet.record.model.package.moments == "tension side";
         let factor = HEIGHT / (high - low) * if down { 1.0 } else { -1.0 };
         let axis = top - (if down { low } else { high }) * factor;
         let place = |point: Point| [self.x(point[0]), axis + point[1] * factor];
@@ -297,9 +291,12 @@ impl Drawing<'_> {
         }
     }
 
-    /// Zeros of the combinations that govern, without repetition.
+    /// Zeros of the forces and moments of the combinations that govern, without repetition.
     fn zeros(&self, effect: Effect, extremes: &ExtremesRecord) -> Vec<f64> {
         let mut zeros = Vec::new();
+        if effect.kind() == Kind::Deflection {
+            return zeros;
+        }
         for state in [&extremes.max.state, &extremes.min.state] {
             zeros.extend(curve::zeros(self.sheet.record, self.name, effect, state));
         }
@@ -355,7 +352,10 @@ impl Drawing<'_> {
         entries.push((Sample::Extreme, "extreme of member (bold) or span".to_owned()));
         if zeros {
             let position = &self.sheet.printer.units.get(Kind::Length).label;
-            entries.push((Sample::Zero, format!("zero of a governing combination, x in {position}")));
+            entries.push((
+                Sample::Zero,
+                format!("zero (moment: contraflexure) of a governing combination, x in {position}"),
+            ));
         }
         legend(canvas, top, &entries);
     }

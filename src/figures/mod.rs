@@ -8,8 +8,12 @@
 
 mod canvas;
 mod curve;
+mod frame;
 mod labels;
+mod loads;
 mod member;
+mod method;
+mod model;
 mod names;
 mod plane;
 mod sheet;
@@ -20,6 +24,8 @@ mod view;
 use crate::model::Purpose;
 use crate::record::Record;
 use sheet::Sheet;
+
+pub use method::method;
 
 /// A drawing with its place in the package.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
@@ -50,6 +56,11 @@ pub fn figures(record: &Record) -> Vec<Figure> {
     let mut figures = Vec::new();
     for (name, structure) in &record.model.structures {
         let sheet = Sheet::new(record, &printer, name, structure);
+        figures.push(model::figure(&sheet));
+        for (case, content) in &record.model.cases {
+            figures.extend(loads::figure(&sheet, case, content));
+        }
+        figures.extend(frame::figures(&sheet));
         for member in structure.members.keys().filter(|name| is_drawn(record, name)) {
             let all = Purpose::ALL.into_iter();
             figures.extend(all.filter_map(|purpose| member::figure(&sheet, member, purpose)));
@@ -60,10 +71,4 @@ pub fn figures(record: &Record) -> Vec<Figure> {
 
 fn is_drawn(record: &Record, member: &str) -> bool {
     record.model.package.drawn.iter().any(|drawn| drawn == member)
-}
-
-/// The drawing of the method statement: the beam element, its end freedoms and shape functions.
-#[must_use]
-pub fn method() -> Figure {
-    Figure::default()
 }

@@ -77,10 +77,7 @@ impl Area {
 
     /// Nearest point of the box.
     pub(super) fn nearest(&self, point: Point) -> Point {
-        [
-            point[0].clamp(self.min[0], self.max[0]),
-            point[1].clamp(self.min[1], self.max[1]),
-        ]
+        [point[0].clamp(self.min[0], self.max[0]), point[1].clamp(self.min[1], self.max[1])]
     }
 
     /// The segment from `a` to `b` touches the box (clipping by its four sides).

@@ -56,7 +56,8 @@ impl<'a> Sheet<'a> {
             }
         }
         for member in self.structure.members.values() {
-            let pen = if member.axial_only.is_some() && pen == Pen::Member { Pen::Brace } else { pen };
+            let pen =
+                if member.axial_only.is_some() && pen == Pen::Member { Pen::Brace } else { pen };
             canvas.line(self.paper(member, 0.0), self.paper(member, member.length), pen);
         }
         for member in self.structure.members.values() {
@@ -103,11 +104,7 @@ impl<'a> Sheet<'a> {
     /// The axes of space, below the drawing.
     pub(super) fn triad(&self, canvas: &mut Canvas) {
         let at = [8.0, canvas.bottom() + 4.0];
-        let all = [
-            ("X", [1.0, 0.0, 0.0]),
-            ("Y", [0.0, 1.0, 0.0]),
-            ("Z", [0.0, 0.0, 1.0]),
-        ];
+        let all = [("X", [1.0, 0.0, 0.0]), ("Y", [0.0, 1.0, 0.0]), ("Z", [0.0, 0.0, 1.0])];
         let seen: Vec<(&str, Point)> = all
             .into_iter()
             .map(|(name, axis)| (name, self.view.direction(axis)))
@@ -116,6 +113,13 @@ impl<'a> Sheet<'a> {
         symbols::triad(canvas, at, &seen);
     }
 
+    /// Left edge of the structure on the paper.
+    pub(super) fn left(&self) -> f64 {
+        let nodes = self.structure.nodes.values();
+        nodes.map(|node| self.view.point(node.at)[0]).fold(f64::INFINITY, f64::min)
+    }
+
+    /// Writes a length with its unit.
     pub(super) fn length(&self, metres: f64) -> String {
         self.printer.with_unit(Kind::Length, metres)
     }

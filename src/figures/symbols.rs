@@ -68,7 +68,10 @@ pub(super) fn support(
                 }
             }
             if fixed(turn) {
-                canvas.polygon(&[[-1.3, -1.3], [1.3, -1.3], [1.3, 1.3], [-1.3, 1.3]].map(|c| add(at, c)), Pen::Outline);
+                canvas.polygon(
+                    &[[-1.3, -1.3], [1.3, -1.3], [1.3, 1.3], [-1.3, 1.3]].map(|c| add(at, c)),
+                    Pen::Outline,
+                );
             }
         }
     }

@@ -37,16 +37,21 @@ impl Text {
     /// A symbol such as `M_y`, its part behind the underscore as a subscript.
     pub(super) fn symbol(symbol: &str) -> Self {
         match symbol.split_once('_') {
-            Some((letter, index)) => Self {
-                parts: vec![(letter.into(), false), (index.into(), true)],
-                strong: false,
-            },
+            Some((letter, index)) => {
+                Self { parts: vec![(letter.into(), false), (index.into(), true)], strong: false }
+            }
             None => Self::new(symbol),
         }
     }
 
     pub(super) fn then(mut self, words: impl Into<String>) -> Self {
         self.parts.push((words.into(), false));
+        self
+    }
+
+    /// Goes on with a symbol.
+    pub(super) fn and_symbol(mut self, symbol: &str) -> Self {
+        self.parts.extend(Self::symbol(symbol).parts);
         self
     }
 
