@@ -5,9 +5,11 @@
 //! - Every problem of a file is reported in one run.
 //! - Leaves are text as written until `resolve` parses and names them.
 
+mod de;
 pub mod keys;
 mod resolve;
 pub mod text;
+mod tree;
 pub mod written;
 
 use crate::diagnostic::Diagnostic;
@@ -19,7 +21,9 @@ use crate::model::Model;
 /// # Errors
 /// Every problem found, in the order of the file; warnings never stand alone here.
 pub fn read(sources: &Sources) -> Result<(Model, Vec<Diagnostic>), Vec<Diagnostic>> {
-    todo!("{}", sources.files.len())
+    let written: written::Project =
+        de::read(&tree::read(sources.project())?).map_err(|problem| vec![problem])?;
+    resolve::resolve(&written)
 }
 
 /// JSON Schema (2020-12) of the project file.

@@ -60,6 +60,17 @@ impl<T> Deref for Located<T> {
 pub struct Text(Located<String>);
 
 impl Text {
+    /// Text read from these bytes.
+    pub(super) fn new(text: String, range: Range<usize>) -> Self {
+        Self(Located { value: text, range })
+    }
+
+    /// The bytes it was read from.
+    #[must_use]
+    pub fn range(&self) -> &Range<usize> {
+        &self.0.range
+    }
+
     /// The text.
     #[must_use]
     pub fn as_str(&self) -> &str {

@@ -3,9 +3,7 @@
 use schemars::JsonSchema;
 use serde::Deserialize;
 
-use super::words::{
-    Accepted, Anchored, AsWritten, Axis, Continuous, ShapeKind, SupportKind,
-};
+use super::words::{Accepted, Anchored, AsWritten, Axis, Continuous, ShapeKind, SupportKind};
 use crate::model::Frame;
 use crate::project::text::{Map, Text, Word};
 
