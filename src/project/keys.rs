@@ -1,4 +1,4 @@
-//! Keys that go together: one table drives the messages of the shape pass and the schema.
+//! Keys of blocks that are read as maps of text, with their help: `given`, materials, units; and nodes.
 
 use indexmap::IndexMap;
 use schemars::{Schema, SchemaGenerator};
@@ -112,4 +112,10 @@ pub(super) fn units(_: &mut SchemaGenerator) -> Schema {
     let mut properties = texts(kinds);
     properties.insert("system".into(), json!({ "description": "SI or US.", "enum": ["SI", "US"] }));
     schema(object("Units", &properties))
+}
+
+/// Schema of a `nodes` block: [x, z] or [x, y, z].
+pub(super) fn nodes(_: &mut SchemaGenerator) -> Schema {
+    let at = json!({ "type": "array", "items": { "type": ["string", "number", "boolean"] }, "minItems": 2, "maxItems": 3 });
+    schema(json!({ "type": "object", "additionalProperties": at }))
 }

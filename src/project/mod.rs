@@ -6,8 +6,12 @@
 //! - Leaves are text as written until `resolve` parses and names them.
 
 mod de;
+mod forms;
 pub mod keys;
+mod near;
 mod resolve;
+mod schema;
+mod shape;
 pub mod text;
 mod tree;
 pub mod written;
@@ -21,13 +25,34 @@ use crate::model::Model;
 /// # Errors
 /// Every problem found, in the order of the file; warnings never stand alone here.
 pub fn read(sources: &Sources) -> Result<(Model, Vec<Diagnostic>), Vec<Diagnostic>> {
-    let written: written::Project =
-        de::read(&tree::read(sources.project())?).map_err(|problem| vec![problem])?;
-    resolve::resolve(&written)
+    resolve::resolve(&written(sources)?)
+}
+
+/// Reads `project.yaml` as written: the three reading steps, without resolving anything.
+///
+/// # Errors
+/// Every problem of syntax, or else every problem of shape, in the order of the file.
+pub fn written(sources: &Sources) -> Result<written::Project, Vec<Diagnostic>> {
+    let Some(bytes) = sources.files.get(text::FILE) else {
+        return Err(vec![Diagnostic::error("no-project", "there is no `project.yaml`")]);
+    };
+    let content = std::str::from_utf8(bytes).map_err(|error| {
+        let at = error.valid_up_to();
+        vec![
+            Diagnostic::error("encoding", "`project.yaml` is not UTF-8 text")
+                .hint(format!("the first byte that is not stands after {at} bytes")),
+        ]
+    })?;
+    let tree = tree::read(content)?;
+    let problems = shape::problems(content, &tree);
+    if !problems.is_empty() {
+        return Err(problems);
+    }
+    de::read(&tree).map_err(|problem| vec![problem])
 }
 
 /// JSON Schema (2020-12) of the project file.
 #[must_use]
 pub fn schema() -> serde_json::Value {
-    todo!()
+    schema::SCHEMA.clone()
 }

@@ -101,6 +101,7 @@ pub struct Load {
 /// Components along, or about, the global axes.
 #[derive(Clone, Debug, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields)]
+#[schemars(extend("minProperties" = 1))]
 pub struct Components {
     /// Along or about X.
     #[serde(rename = "X")]
@@ -124,6 +125,7 @@ impl Components {
 /// Movement along, and rotation about, the axes of a support.
 #[derive(Clone, Debug, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields)]
+#[schemars(extend("minProperties" = 1))]
 pub struct Movement {
     /// Along X.
     #[serde(rename = "X")]

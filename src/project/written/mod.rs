@@ -35,6 +35,7 @@ use crate::model::Frame;
 #[serde(deny_unknown_fields)]
 pub struct Project {
     /// Form of this file: 1.
+    #[schemars(extend("enum" = [1, "1"]))]
     pub format: Text,
     /// What the package is called and which issue this is.
     pub project: ProjectInfo,
@@ -69,6 +70,8 @@ pub struct Project {
     /// Plane or space, for a project of one structure.
     pub frame: Option<Word<Frame>>,
     /// Nodes with their coordinates, for a project of one structure.
+    #[serde(default)]
+    #[schemars(schema_with = "super::keys::nodes")]
     pub nodes: Option<Map<Vec<Text>>>,
     /// Members by name, for a project of one structure.
     pub members: Option<Map<Member>>,

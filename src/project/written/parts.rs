@@ -16,7 +16,8 @@ pub struct Section {
     /// Shape whose properties follow from its dimensions.
     pub shape: Option<Word<ShapeKind>>,
     /// Properties given by hand: local-axis names, or major and minor.
-    #[schemars(schema_with = "super::super::keys::given")]
+    #[serde(default)]
+    #[schemars(schema_with = "crate::project::keys::given")]
     pub given: Option<Map<Text>>,
     /// The axes of given properties are meant as written.
     pub axes: Option<Word<AsWritten>>,
@@ -78,6 +79,7 @@ pub struct Structure {
     /// Plane or space.
     pub frame: Word<Frame>,
     /// Nodes with their coordinates.
+    #[schemars(schema_with = "crate::project::keys::nodes")]
     pub nodes: Map<Vec<Text>>,
     /// Members by name.
     pub members: Map<Member>,
@@ -131,6 +133,7 @@ pub enum Towards {
 /// Internal forces released: `free` or a spring.
 #[derive(Clone, Debug, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields)]
+#[schemars(extend("minProperties" = 1))]
 pub struct Hinge {
     /// Axial force.
     #[serde(rename = "N")]
