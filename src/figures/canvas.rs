@@ -73,7 +73,6 @@ impl Pen {
 pub(super) enum Align {
     Start,
     Middle,
-    End,
 }
 
 #[derive(Debug, Default)]
@@ -183,12 +182,22 @@ impl Canvas {
         let left = match align {
             Align::Start => at[0],
             Align::Middle => at[0] - width / 2.0,
-            Align::End => at[0] - width,
         };
         let half = super::labels::HEIGHT / 2.0;
         let area = Area { min: [left, at[1] - half], max: [left + width, at[1] + half] };
         self.placer.taken.push(area);
         self.write(at, align, text, &area);
+    }
+
+    /// Text that runs upwards, its middle at `at`.
+    pub(super) fn upright_text(&mut self, at: Point, text: &Text) {
+        let half = [super::labels::HEIGHT / 2.0, text.width() / 2.0];
+        let area = Area { min: sub(at, half), max: add(at, half) };
+        self.placer.taken.push(area);
+        self.write(at, Align::Middle, text, &area);
+        if let Some(element) = self.elements.last_mut() {
+            element.assign("transform", format!("rotate(-90 {} {})", number(at[0]), number(at[1])));
+        }
     }
 
     fn write(&mut self, at: Point, align: Align, text: &Text, area: &Area) {
@@ -202,7 +211,6 @@ impl Canvas {
         match align {
             Align::Start => {}
             Align::Middle => element.assign("text-anchor", "middle"),
-            Align::End => element.assign("text-anchor", "end"),
         }
         if text.is_strong() {
             element.assign("class", "sf-strong");
@@ -213,8 +221,18 @@ impl Canvas {
 
     /// A label to stand near `anchor`, if possible on the given side of it.
     pub(super) fn label(&mut self, anchor: Point, side: Point, rank: u8, text: Text) {
-        if anchor.iter().all(|coordinate| coordinate.is_finite()) {
-            self.labels.push(Label { text, anchor, side, rank });
+        self.label_along(&[anchor], side, rank, text);
+    }
+
+    /// A label to stand near one of several points, the first if possible.
+    pub(super) fn label_along(&mut self, anchors: &[Point], side: Point, rank: u8, text: Text) {
+        let anchors: Vec<Point> = anchors
+            .iter()
+            .copied()
+            .filter(|anchor| anchor.iter().all(|coordinate| coordinate.is_finite()))
+            .collect();
+        if !anchors.is_empty() {
+            self.labels.push(Label { text, anchors, side, rank });
         }
     }
 
@@ -236,13 +254,18 @@ impl Canvas {
         }
         let extent = self.extent.unwrap_or(Area { min: [0.0; 2], max: [WIDTH, 10.0] });
         let (top, height) = (extent.min[1] - 1.5, extent.max[1] - extent.min[1] + 3.0);
+        // Wider than a column only where arrows reach beyond it.
+        let (left, right) = ((extent.min[0] - 1.0).min(0.0), (extent.max[0] + 1.0).max(WIDTH));
 
         let mut root = Element::new("svg");
         root.assign("xmlns", "http://www.w3.org/2000/svg");
         root.assign("class", "sf-fig");
         root.assign("role", "img");
         root.assign("aria-labelledby", format!("{id}-title {id}-desc"));
-        root.assign("viewBox", format!("0 {} {} {}", number(top), number(WIDTH), number(height)));
+        root.assign(
+            "viewBox",
+            format!("{} {} {} {}", number(left), number(top), number(right - left), number(height)),
+        );
         root.assign("width", "100%");
         for (name, words) in [("title", title), ("desc", description)] {
             let mut element = Element::new(name);

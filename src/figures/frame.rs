@@ -20,7 +20,7 @@ const MOVEMENT: f64 = 10.0;
 /// So many values are written at most, the greatest first.
 const VALUES: usize = 60;
 /// Values below this share of the greatest are not written.
-const SMALL: f64 = 0.02;
+const SMALL: f64 = 0.05;
 /// So many combinations are drawn one by one.
 const COMBINATIONS: usize = 40;
 /// Below this share of the greatest related value an effect is round-off and not drawn.
@@ -114,10 +114,12 @@ impl Frame<'_> {
             &[
                 (
                     Sample::Line(Pen::Outline),
-                    format!("greatest and least {}, values in {unit}", symbol(self.effect)),
+                    Text::new("greatest and least ")
+                        .and_symbol(self.effect.name())
+                        .then(format!(", values in {unit}")),
                 ),
-                (Sample::Band, "envelope".to_owned()),
-                (Sample::Extreme, "value written".to_owned()),
+                (Sample::Band, Text::new("envelope")),
+                (Sample::Extreme, Text::new("value written")),
             ],
         );
         let name = self.sheet.name;
@@ -221,11 +223,6 @@ fn is_bending(effect: Effect) -> bool {
     matches!(effect, Effect::My | Effect::Mz)
 }
 
-/// The last word of an effect's name: its symbol.
-fn symbol(effect: Effect) -> &'static str {
-    words(effect).rsplit(' ').next().unwrap_or_default()
-}
-
 /// The displaced shape of every combination; the one that moves a node most is drawn strongly.
 fn displaced(sheet: &Sheet<'_>, purpose: Purpose, combinations: &[&str]) -> Option<Figure> {
     let record = sheet.record;
@@ -244,7 +241,14 @@ fn displaced(sheet: &Sheet<'_>, purpose: Purpose, combinations: &[&str]) -> Opti
         }
     }
     let (most, node, state) = governing.filter(|(most, ..)| *most > 0.0)?;
-    let factor = MOVEMENT / most;
+    // The scale comes from all that is drawn, members between their nodes included.
+    let farthest = combinations
+        .iter()
+        .flat_map(|state| sheet.structure.members.keys().map(move |name| (name, state)))
+        .flat_map(|(name, state)| movements(sheet, name, state))
+        .map(|(_, by)| length(by))
+        .fold(most, f64::max);
+    let factor = MOVEMENT / farthest;
     let shape = |name: &str, member: &MemberRecord, state: &str| -> Vec<Point> {
         shape(sheet, name, member, state, factor)
     };
@@ -273,11 +277,11 @@ fn displaced(sheet: &Sheet<'_>, purpose: Purpose, combinations: &[&str]) -> Opti
     canvas.label(at, [0.5, -0.8], 2, Text::new(words.as_str()));
     let top = canvas.bottom() + 6.0;
     let mut entries = vec![
-        (Sample::Line(Pen::Second), "undisplaced".to_owned()),
-        (Sample::Line(Pen::Member), format!("{number}, which moves a node most")),
+        (Sample::Line(Pen::Second), Text::new("undisplaced")),
+        (Sample::Line(Pen::Member), Text::new(format!("{number}, which moves a node most"))),
     ];
     if combinations.len() > 1 {
-        entries.push((Sample::Line(Pen::Faint), "other combinations".to_owned()));
+        entries.push((Sample::Line(Pen::Faint), Text::new("other combinations")));
     }
     legend(&mut canvas, top, &entries);
 
@@ -316,10 +320,18 @@ fn shape(
     state: &str,
     factor: f64,
 ) -> Vec<Point> {
-    let scale = sheet.view.scale;
+    movements(sheet, name, state)
+        .into_iter()
+        .map(|(x, by)| add(sheet.paper(member, x), scaled(by, factor)))
+        .collect()
+}
+
+/// Displacements along a member as seen on the paper: position, and m to the right and downwards.
+fn movements(sheet: &Sheet<'_>, name: &str, state: &str) -> Vec<(f64, Point)> {
+    let Some(member) = sheet.structure.members.get(name) else { return Vec::new() };
     // All three are cut alike and so share their positions.
     let [u, v, w] = [Effect::U, Effect::V, Effect::W]
-        .map(|effect| curve::evenly(sheet.record, name, effect, state, scale));
+        .map(|effect| curve::evenly(sheet.record, name, effect, state, sheet.view.scale));
     u.iter()
         .zip(&v)
         .zip(&w)
@@ -328,7 +340,7 @@ fn shape(
             for (axis, part) in member.axes.iter().zip([u[1], v[1], w[1]]) {
                 by = along(by, *axis, part);
             }
-            add(sheet.paper(member, u[0]), scaled(sheet.view.direction(by), factor))
+            (u[0], sheet.view.direction(by))
         })
         .collect()
 }

@@ -11,8 +11,9 @@ use super::text::{SIZE, Text};
 #[derive(Clone, Debug)]
 pub(super) struct Label {
     pub(super) text: Text,
-    pub(super) anchor: Point,
-    /// The side of the anchor on which it should stand.
+    /// Points it may stand beside, the best first; at least one.
+    pub(super) anchors: Vec<Point>,
+    /// The side of its anchor on which it should stand.
     pub(super) side: Point,
     /// Lower ranks are placed first.
     pub(super) rank: u8,
@@ -44,6 +45,9 @@ const CLEAR: f64 = 0.35;
 const DISTANCES: [f64; 12] = [0.9, 1.6, 2.6, 4.0, 5.6, 7.6, 10.0, 13.0, 17.0, 22.0, 28.0, 36.0];
 /// From this gap on a leader joins label and anchor, mm.
 const LEADER: f64 = 2.4;
+/// Penalty of a line crossed, and of each anchor after the first, mm of distance.
+const CROSSED: f64 = 4.5;
+const NEXT: f64 = 0.8;
 /// Sixteen directions, as unit vectors.
 const DIRECTIONS: [Point; 16] = [
     [1.0, 0.0],
@@ -73,20 +77,42 @@ impl Placer {
 
     fn place_one(&mut self, label: Label, edges: [f64; 2]) -> Placed {
         let size = [label.text.width(), HEIGHT];
-        let reach = Area::around(&[label.anchor]).grown(size[0] + 40.0);
+        let side = unit(label.side);
+        let mut best: Option<(f64, Area, Point)> = None;
+        for (order, anchor) in (0_u8..).zip(&label.anchors) {
+            self.improve(&mut best, *anchor, f64::from(order) * NEXT, side, size, edges);
+        }
+        let first = label.anchors.first().copied().unwrap_or_default();
+        let (_, area, anchor) =
+            best.unwrap_or_else(|| (0.0, self.below(first, size, edges), first));
+        self.taken.push(area);
+        let leader = leader(anchor, &area);
+        self.ink.extend(leader);
+        Placed { text: label.text, area, leader }
+    }
+
+    /// Looks for a better position round an anchor that costs `cost` by itself.
+    fn improve(
+        &self,
+        best: &mut Option<(f64, Area, Point)>,
+        anchor: Point,
+        cost: f64,
+        side: Point,
+        size: Point,
+        edges: [f64; 2],
+    ) {
+        let reach = Area::around(&[anchor]).grown(size[0] + 40.0);
         let ink: Vec<[Point; 2]> =
             self.ink.iter().copied().filter(|[a, b]| reach.meets(*a, *b)).collect();
         let taken: Vec<Area> =
             self.taken.iter().copied().filter(|area| area.overlaps(&reach)).collect();
-        let side = unit(label.side);
-        let mut best: Option<(f64, Area)> = None;
         for distance in DISTANCES {
             // Farther positions can only be worse than what is found already.
-            if best.is_some_and(|(penalty, _)| penalty < distance) {
+            if best.is_some_and(|(penalty, ..)| penalty < cost + distance) {
                 break;
             }
             for direction in DIRECTIONS {
-                let area = beside(label.anchor, direction, distance, size);
+                let area = beside(anchor, direction, distance, size);
                 if area.min[0] < edges[0] || area.max[0] > edges[1] {
                     continue;
                 }
@@ -96,20 +122,16 @@ impl Placer {
                 }
                 let agreement = direction[0] * side[0] + direction[1] * side[1];
                 let crossed = ink.iter().filter(|[a, b]| area.grown(0.2).meets(*a, *b)).count();
-                let penalty = distance
+                let penalty = cost
+                    + distance
                     + (1.0 - agreement) * 1.5
-                    + crossed.min(20) as f64 * 3.0
-                    + leader_penalty(label.anchor, &area, &taken);
-                if best.is_none_or(|(least, _)| penalty < least) {
-                    best = Some((penalty, area));
+                    + crossed.min(20) as f64 * CROSSED
+                    + leader_penalty(anchor, &area, &taken);
+                if best.is_none_or(|(least, ..)| penalty < least) {
+                    *best = Some((penalty, area, anchor));
                 }
             }
         }
-        let area = best.map_or_else(|| self.below(label.anchor, size, edges), |(_, area)| area);
-        self.taken.push(area);
-        let leader = leader(label.anchor, &area);
-        self.ink.extend(leader);
-        Placed { text: label.text, area, leader }
     }
 
     /// The first free place straight below everything near the anchor.

@@ -19,6 +19,9 @@ const FORCE: [f64; 2] = [14.0, 6.0];
 const PITCH: f64 = 5.5;
 /// Clear space between a member and its first load, and between loads, mm.
 const CLEAR: f64 = 0.9;
+/// Structures with more nodes are drawn without their names, with more lines of self-weight without
+/// the values of these.
+const NAMES: usize = 20;
 /// Below this share a load's direction counts as along its member.
 const ALONG: f64 = 0.12;
 
@@ -26,6 +29,8 @@ struct Drawing<'a> {
     sheet: &'a Sheet<'a>,
     /// Greatest intensity (N/m) and force (N) of the case on this structure.
     greatest: [f64; 2],
+    /// Self-weight is written at every member.
+    weighs: bool,
     /// Room taken beside members: member, direction, stretch, outer edge in mm.
     taken: Vec<(&'a str, Point, [f64; 2], f64)>,
 }
@@ -44,22 +49,28 @@ pub(super) fn figure(sheet: &Sheet<'_>, name: &str, case: &CaseRecord) -> Option
     let mut drawing = Drawing {
         sheet,
         greatest: [greatest(is_line), greatest(|load| !is_line(load))],
+        weighs: loads.iter().filter(|load| load.form == "self_weight").count() <= NAMES,
         taken: Vec::new(),
     };
     let mut canvas = Canvas::default();
-    sheet.skeleton(&mut canvas, Pen::Member);
     for load in &loads {
         drawing.draw(&mut canvas, load);
     }
-    if sheet.structure.nodes.len() <= 40 {
+    sheet.skeleton(&mut canvas, Pen::Member);
+    if sheet.structure.nodes.len() <= NAMES {
         sheet.node_names(&mut canvas);
     }
     sheet.triad(&mut canvas);
     let id = format!("loads-{}.{}", slug(sheet.name), slug(name));
     let title = format!("Loads of case {name} on structure {}", sheet.name);
+    let silent = if drawing.weighs {
+        ""
+    } else {
+        " Self-weight is drawn without its values, which the table lists."
+    };
     let caption = format!(
         "Case {name}, {}: loads on structure {}. Line loads are per length of member; arrows are to \
-         scale, the smallest lengthened to be seen.",
+         scale, the smallest lengthened to be seen.{silent}",
         case.title, sheet.name
     );
     let description = format!(
@@ -148,7 +159,9 @@ impl<'a> Drawing<'a> {
             base + heights[0].max(heights[1])
         };
         self.taken.push((name, away, stretch, top));
-        self.line_values(canvas, ends, away, top - base, intensity, load);
+        if self.weighs || load.form != "self_weight" {
+            self.line_values(canvas, ends, away, top - base, intensity, load);
+        }
     }
 
     fn line_values(
@@ -164,13 +177,10 @@ impl<'a> Drawing<'a> {
         let prefix = prefix(load);
         if (intensity[0] - intensity[1]).abs() <= 1e-9 * intensity[0].abs().max(intensity[1].abs())
         {
-            let at = moved(between(ends[0], ends[1], 0.5), away, height);
-            return canvas.label(
-                at,
-                away,
-                3,
-                Text::new(format!("{prefix}{}", value(intensity[0]))),
-            );
+            let places = [0.5, 0.4, 0.6, 0.25, 0.75]
+                .map(|t| moved(between(ends[0], ends[1], t), away, height));
+            let text = Text::new(format!("{prefix}{}", value(intensity[0])));
+            return canvas.label_along(&places, away, 3, text);
         }
         let greater = usize::from(intensity[1].abs() > intensity[0].abs());
         for i in 0..2 {

@@ -18,8 +18,11 @@ const DRAWN: [Effect; 8] =
     [Effect::N, Effect::Vy, Effect::Vz, Effect::T, Effect::My, Effect::Mz, Effect::Dy, Effect::Dz];
 /// Left and right ends of the member on the paper, mm.
 const ENDS: [f64; 2] = [26.0, 160.0];
-/// Height from least to greatest value, mm.
+/// Height from least to greatest value, mm, and the height of all effects together.
 const HEIGHT: f64 = 19.0;
+const HEIGHTS: f64 = 195.0;
+/// An effect below this share of the greatest related one is drawn half as high.
+const MINOR: f64 = 0.02;
 /// Clear height between two effects, mm.
 const GAP: f64 = 11.0;
 /// So many combinations are drawn one by one.
@@ -68,22 +71,21 @@ pub(super) fn figure(sheet: &Sheet<'_>, name: &str, purpose: Purpose) -> Option<
 
 impl Drawing<'_> {
     fn effects(&self) -> Vec<Effect> {
-        let size = |effect: Effect| {
-            self.governing[0]
-                .get(effect.name())
-                .map_or(0.0, |found| found.max.value.abs().max(found.min.value.abs()))
-        };
-        DRAWN
-            .into_iter()
-            .filter(|effect| {
-                let related = DRAWN
-                    .into_iter()
-                    .filter(|other| other.kind() == effect.kind())
-                    .map(size)
-                    .fold(0.0, f64::max);
-                size(*effect) > related * NOTHING
-            })
-            .collect()
+        let shows = |effect: &Effect| self.size(*effect) > self.related(*effect) * NOTHING;
+        DRAWN.into_iter().filter(shows).collect()
+    }
+
+    /// Greatest absolute value along the member.
+    fn size(&self, effect: Effect) -> f64 {
+        self.governing[0]
+            .get(effect.name())
+            .map_or(0.0, |found| found.max.value.abs().max(found.min.value.abs()))
+    }
+
+    /// Greatest absolute value of any effect of the same kind.
+    fn related(&self, effect: Effect) -> f64 {
+        let related = DRAWN.into_iter().filter(|other| other.kind() == effect.kind());
+        related.map(|other| self.size(other)).fold(0.0, f64::max)
     }
 
     fn draw(&self, effects: &[Effect]) -> Figure {
@@ -91,9 +93,13 @@ impl Drawing<'_> {
         self.member_line(&mut canvas);
         let mut top = canvas.bottom() + 7.0;
         let mut zeros = false;
+        let rows = u32::try_from(effects.len()).unwrap_or(1);
+        let full = (HEIGHTS / f64::from(rows) - GAP).min(HEIGHT);
         for effect in effects {
-            zeros |= self.row(&mut canvas, *effect, top);
-            top += HEIGHT + GAP;
+            let minor = self.size(*effect) < MINOR * self.related(*effect);
+            let height = if minor { full / 2.0 } else { full };
+            zeros |= self.row(&mut canvas, *effect, top, height);
+            top += height + GAP;
         }
         self.legend(&mut canvas, top - GAP + 7.0, zeros);
 
@@ -212,12 +218,12 @@ impl Drawing<'_> {
     }
 
     /// One effect over its axis; says whether zeros are marked.
-    fn row(&self, canvas: &mut Canvas, effect: Effect, top: f64) -> bool {
+    fn row(&self, canvas: &mut Canvas, effect: Effect, top: f64, height: f64) -> bool {
         let Some(extremes) = self.governing[0].get(effect.name()) else { return false };
         let (low, high) = (extremes.min.value.min(0.0), extremes.max.value.max(0.0));
         // Positive values below the axis.
         let down = is_bending(effect) && self.sheet.record.model.package.moments == "tension side";
-        let factor = HEIGHT / (high - low) * if down { 1.0 } else { -1.0 };
+        let factor = height / (high - low) * if down { 1.0 } else { -1.0 };
         let axis = top - (if down { low } else { high }) * factor;
         let place = |point: Point| [self.x(point[0]), axis + point[1] * factor];
 
@@ -226,7 +232,7 @@ impl Drawing<'_> {
         for station in &self.member.stations {
             canvas.line([self.x(*station), axis - 0.8], [self.x(*station), axis + 0.8], Pen::Axis);
         }
-        let middle = top + HEIGHT / 2.0;
+        let middle = top + height / 2.0;
         let unit = &self.sheet.printer.units.get(effect.kind()).label;
         canvas.text([2.0, middle - 1.6], Align::Start, &Text::symbol(effect.name()).strong());
         canvas.text([2.0, middle + 1.6], Align::Start, &Text::new(unit.as_str()));
@@ -249,7 +255,35 @@ impl Drawing<'_> {
             let text = self.extreme_text(effect, found, rank);
             canvas.label(at, [0.2, outwards], rank, text);
         }
+        if effect.kind() != Kind::Deflection {
+            self.end_values(canvas, effect, down, place);
+        }
         !zeros.is_empty()
+    }
+
+    /// The greater value of the envelope at each end of the member, where no extreme says it.
+    fn end_values(
+        &self,
+        canvas: &mut Canvas,
+        effect: Effect,
+        down: bool,
+        place: impl Fn(Point) -> Point,
+    ) {
+        let band = self.sheet.record.band(self.name, effect, self.purpose).unwrap_or_default();
+        let marked = self.marked(effect);
+        for end in [band.first(), band.last()].into_iter().flatten() {
+            let value = if end[2].abs() >= end[1].abs() { end[2] } else { end[1] };
+            let known = marked.iter().any(|(extreme, _)| {
+                let apart = extreme.x.unwrap_or(0.0) - end[0];
+                apart.abs() < 1e-6 * self.member.length
+            });
+            if known || value.abs() < 0.02 * self.size(effect) {
+                continue;
+            }
+            let outwards = if (value > 0.0) == down { 1.0 } else { -1.0 };
+            let text = Text::new(self.sheet.printer.number(effect.kind(), value));
+            canvas.label(place([end[0], value]), [0.2, outwards], 4, text);
+        }
     }
 
     fn envelope(
@@ -308,9 +342,7 @@ impl Drawing<'_> {
     /// The extremes that are marked, with their ranks: of the whole member, then of each span.
     fn marked(&self, effect: Effect) -> Vec<(&ExtremeRecord, u8)> {
         let mut marked: Vec<(&ExtremeRecord, u8)> = Vec::new();
-        let greatest = self.governing[0]
-            .get(effect.name())
-            .map_or(0.0, |found| found.max.value.abs().max(found.min.value.abs()));
+        let greatest = self.size(effect);
         for (i, governing) in self.governing.iter().enumerate() {
             let Some(found) = governing.get(effect.name()) else { continue };
             for extreme in [&found.max, &found.min] {
@@ -344,17 +376,19 @@ impl Drawing<'_> {
     fn legend(&self, canvas: &mut Canvas, top: f64, zeros: bool) {
         let mut entries = Vec::new();
         if self.combinations.len() > 1 {
-            entries.push((Sample::Band, format!("envelope, {}", self.purpose.name())));
-            entries.push((Sample::Line(Pen::Faint), "each combination".to_owned()));
+            entries.push((Sample::Band, Text::new(format!("envelope, {}", self.purpose.name()))));
+            entries.push((Sample::Line(Pen::Faint), Text::new("each combination")));
         } else if let Some((_, number)) = self.combinations.first() {
-            entries.push((Sample::Line(Pen::Outline), format!("combination {number}")));
+            entries.push((Sample::Line(Pen::Outline), Text::new(format!("combination {number}"))));
         }
-        entries.push((Sample::Extreme, "extreme of member (bold) or span".to_owned()));
+        entries.push((Sample::Extreme, Text::new("extreme of member (bold) or span")));
         if zeros {
             let position = &self.sheet.printer.units.get(Kind::Length).label;
             entries.push((
                 Sample::Zero,
-                format!("zero (moment: contraflexure) of a governing combination, x in {position}"),
+                Text::new(format!(
+                    "zero (moment: contraflexure) of a governing combination, x in {position}"
+                )),
             ));
         }
         legend(canvas, top, &entries);

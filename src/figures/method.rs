@@ -2,7 +2,7 @@
 
 use super::Figure;
 use super::canvas::{Align, Canvas, Pen, WIDTH};
-use super::plane::{Point, add, moved};
+use super::plane::{Point, add, moved, unit};
 use super::symbols::curl;
 use super::text::Text;
 
@@ -43,31 +43,35 @@ pub fn method() -> Figure {
 
 /// The element, seen a little from the side: x to the right, z up, y away from the reader.
 fn element(canvas: &mut Canvas) {
-    let axes: [(Point, &str, &str); 3] = [
-        ([1.0, 0.0], "u", "theta_x"),
-        ([0.6, -0.45], "v", "theta_y"),
-        ([0.0, -1.0], "w", "theta_z"),
-    ];
+    let axes: [(Point, &str, &str); 3] =
+        [([1.0, 0.0], "u", "θ_x"), ([0.6, -0.45], "v", "θ_y"), ([0.0, -1.0], "w", "θ_z")];
     canvas.line([ENDS[0], 0.0], [ENDS[1], 0.0], Pen::Member);
     for (x, name) in ENDS.into_iter().zip(["start", "end"]) {
         for (axis, displacement, rotation) in axes {
-            let from = moved([x, 0.0], axis, 1.6);
-            let tip = moved([x, 0.0], axis, 12.0);
-            canvas.arrow(from, tip, Pen::Force);
-            let double = moved([x, 0.0], axis, 15.5);
-            canvas.line(tip, double, Pen::Axis);
-            canvas.arrow_head(double, super::plane::unit(axis), 1.4);
-            canvas.arrow_head(
-                moved(double, super::plane::unit(axis), -1.3),
-                super::plane::unit(axis),
-                1.4,
-            );
+            let along = unit(axis);
+            // Before the start, so that the element does not hide it.
+            let back = if name == "start" && axis[1].abs() < 0.1 { 17.0 } else { 0.0 };
+            let at = |by: f64| moved([x, 0.0], along, by - back);
+            canvas.arrow(at(1.5), at(10.5), Pen::Force);
+            canvas.line(at(10.5), at(14.0), Pen::Axis);
+            canvas.arrow_head(at(14.0), along, 1.4);
+            canvas.arrow_head(at(15.2), along, 1.4);
             let words = Text::symbol(displacement).then(", ").and_symbol(rotation);
-            canvas.label(double, axis, 1, words);
+            let side = if back > 0.0 { [0.0, -1.0] } else { along };
+            canvas.label(at(if back > 0.0 { 8.0 } else { 15.2 }), side, 1, words);
         }
         canvas.text([x, 4.5], Align::Middle, &Text::new(name));
     }
-    canvas.text([85.0, 4.5], Align::Middle, &Text::new("L, E, G, A, I_y, I_z, I_t"));
+    canvas.text(
+        [85.0, 4.5],
+        Align::Middle,
+        &Text::new("L, E, G, A, ")
+            .and_symbol("I_y")
+            .then(", ")
+            .and_symbol("I_z")
+            .then(", ")
+            .and_symbol("I_t"),
+    );
     // The sense of a rotation about y: from z towards x.
     curl(canvas, add([85.0, 0.0], [0.0, -9.0]), [-1.0, 0.0], [0.0, -1.0], 3.2, true);
     canvas.label([89.0, -9.0], [1.0, 0.0], 1, Text::new("sense about y"));

@@ -11,7 +11,7 @@ use crate::quantity::Kind;
 use crate::record::{FreedomRecord, MemberRecord, SectionValue, SupportRecord};
 
 /// Size of the largest section's outline on the paper, mm.
-const OUTLINE: f64 = 6.0;
+const OUTLINE: f64 = 8.0;
 /// Clear width a dimension's text needs beside itself, mm.
 const ROOM: f64 = 1.0;
 
@@ -49,10 +49,10 @@ pub(super) fn figure(sheet: &Sheet<'_>) -> Figure {
     let mut entries = Vec::new();
     if held {
         entries
-            .push((Sample::Line(Pen::Dotted), "edge held sideways (cross: at a node)".to_owned()));
+            .push((Sample::Line(Pen::Dotted), Text::new("edge held sideways (cross: at a node)")));
     }
     if braces {
-        entries.push((Sample::Line(Pen::Brace), "carries axial force only".to_owned()));
+        entries.push((Sample::Line(Pen::Brace), Text::new("carries axial force only")));
     }
     if !entries.is_empty() {
         let top = canvas.bottom() + 6.0;
@@ -99,7 +99,15 @@ fn member_name(canvas: &mut Canvas, sheet: &Sheet<'_>, name: &str, member: &Memb
     } else {
         name.to_owned()
     };
-    canvas.label(between(a, b, 0.42), side, 2, Text::new(words));
+    // Beside the middle of the longest piece between nodes, or elsewhere along the member.
+    let longest =
+        member.stations.windows(2).map(|pair| (pair[1] - pair[0], (pair[0] + pair[1]) / 2.0)).fold(
+            (0.0, member.length / 2.0),
+            |most, piece| if piece.0 > most.0 { piece } else { most },
+        );
+    let middle = longest.1 / member.length;
+    let anchors = [middle, 0.42, 0.58, 0.32, 0.7, 0.2, 0.82].map(|t| between(a, b, t));
+    canvas.label_along(&anchors, side, 2, Text::new(words));
 }
 
 /// Dotted lines along edges held sideways, crosses where they are held at nodes.
@@ -129,7 +137,9 @@ fn restraint(canvas: &mut Canvas, sheet: &Sheet<'_>, member: &MemberRecord) -> b
 }
 
 fn local_axes(canvas: &mut Canvas, sheet: &Sheet<'_>, member: &MemberRecord) {
-    let origin = sheet.paper(member, member.length * 0.6);
+    // Beside the member, so that x shows.
+    let beside = sheet.view.direction(member.axes[2]);
+    let origin = moved(sheet.paper(member, member.length * 0.62), unit(beside), 2.6);
     for (name, axis) in ["x", "y", "z"].into_iter().zip(member.axes) {
         let flat = sheet.view.direction(axis);
         if length(flat) < 0.15 {
@@ -192,7 +202,7 @@ fn spring_values(canvas: &mut Canvas, sheet: &Sheet<'_>, at: Point, support: &Su
 
 /// Chains of dimensions below and to the left, between the nodes' coordinates.
 fn dimensions(canvas: &mut Canvas, sheet: &Sheet<'_>) {
-    let (below, left) = (canvas.bottom() + 6.0, sheet.left() - 10.0);
+    let (below, left) = (canvas.bottom() + 6.0, sheet.left() - 8.0);
     let coordinates = |axis: usize| {
         let mut all: Vec<f64> = sheet.structure.nodes.values().map(|node| node.at[axis]).collect();
         all.sort_by(f64::total_cmp);
@@ -203,7 +213,7 @@ fn dimensions(canvas: &mut Canvas, sheet: &Sheet<'_>) {
     let paper_x = |x: f64| [sheet.view.point([x, 0.0, 0.0])[0], below];
     let paper_z = |z: f64| [left, sheet.view.point([0.0, 0.0, z])[1]];
     chain(canvas, sheet, &xs, paper_x, |text| text.width() + ROOM, [0.0, 5.0]);
-    chain(canvas, sheet, &zs, paper_z, |_| super::labels::HEIGHT + ROOM, [-10.0, 0.0]);
+    chain(canvas, sheet, &zs, paper_z, |text| text.width() + ROOM, [-5.5, 0.0]);
 }
 
 /// A chain of dimensions and, where it has several links, the whole outside it; links too short for

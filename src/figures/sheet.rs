@@ -126,15 +126,14 @@ impl<'a> Sheet<'a> {
 }
 
 /// A row of samples with their meaning, below the drawing.
-pub(super) fn legend(canvas: &mut Canvas, top: f64, entries: &[(Sample, String)]) {
+pub(super) fn legend(canvas: &mut Canvas, top: f64, entries: &[(Sample, Text)]) {
     let (mut x, mut y) = (8.0, top);
-    for (sample, words) in entries {
-        let text = Text::new(words.as_str());
+    for (sample, text) in entries {
         if x + 9.0 + text.width() > super::canvas::WIDTH - 2.0 && x > 8.0 {
             (x, y) = (8.0, y + 4.2);
         }
         sample.draw(canvas, [x, y]);
-        canvas.text([x + 8.5, y], Align::Start, &text);
+        canvas.text([x + 8.5, y], Align::Start, text);
         x += 8.5 + text.width() + 5.0;
     }
 }

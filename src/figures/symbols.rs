@@ -174,7 +174,7 @@ pub(super) fn curl(
     }
 }
 
-/// A dimension line from `a` to `b` with its text above it or to its left.
+/// A dimension line from `a` to `b` with its text above it; turned with it where it stands.
 pub(super) fn dimension(canvas: &mut Canvas, a: Point, b: Point, text: &Text) {
     canvas.line(a, b, Pen::Hair);
     let along = unit(sub(b, a));
@@ -186,7 +186,7 @@ pub(super) fn dimension(canvas: &mut Canvas, a: Point, b: Point, text: &Text) {
     if along[0].abs() > 0.5 {
         canvas.text([middle[0], middle[1] - 2.0], Align::Middle, text);
     } else {
-        canvas.text([middle[0] - 1.2, middle[1]], Align::End, text);
+        canvas.upright_text([middle[0] - 2.0, middle[1]], text);
     }
 }
 

@@ -79,7 +79,9 @@ impl Text {
         let mut out = String::new();
         let mut lowered = false;
         for (words, sub) in &self.parts {
-            let words = escape(words);
+            // Ordinary spaces at the ends of pieces would be dropped.
+            let words =
+                escape(words).replace(' ', if self.parts.len() > 1 { "\u{a0}" } else { " " });
             match (sub, lowered) {
                 (true, _) => out += &format!(r#"<tspan class="sf-sub" dy=".6">{words}</tspan>"#),
                 (false, true) => out += &format!(r#"<tspan dy="-.6">{words}</tspan>"#),
