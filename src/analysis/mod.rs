@@ -6,9 +6,19 @@
 //! - Mechanisms and unrestrained parts are refused with the node and direction named, never solved.
 //! - Never reads files, never rounds for printing.
 
+mod element;
 mod fields;
+mod frame;
+mod hinge;
+mod loading;
+mod mechanism;
+mod member;
 mod solution;
+mod solve;
+mod span;
+mod sparse;
 
+pub use span::deflections;
 pub use fields::{Fields, Polynomial, evaluate};
 pub use solution::{
     Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,
@@ -24,7 +34,7 @@ use crate::model::Model;
 /// # Errors
 /// Mechanisms, unrestrained parts and loads that cannot be carried, each with its place in the file.
 pub fn solve(model: &Model) -> Result<Solution, Vec<Diagnostic>> {
-    todo!("{}", model.nodes.len())
+    solve::solve(model)
 }
 
 /// Superposes every combination and finds the governing values with their positions.
