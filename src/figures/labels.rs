@@ -48,23 +48,25 @@ const LEADER: f64 = 2.4;
 /// Penalty of a line crossed, and of each anchor after the first, mm of distance.
 const CROSSED: f64 = 4.5;
 const NEXT: f64 = 0.8;
+/// Both parts of a unit vector half way between the axes.
+const DIAGONAL: f64 = std::f64::consts::FRAC_1_SQRT_2;
 /// Sixteen directions, as unit vectors.
 const DIRECTIONS: [Point; 16] = [
     [1.0, 0.0],
     [0.923_9, 0.382_7],
-    [0.707_1, 0.707_1],
+    [DIAGONAL, DIAGONAL],
     [0.382_7, 0.923_9],
     [0.0, 1.0],
     [-0.382_7, 0.923_9],
-    [-0.707_1, 0.707_1],
+    [-DIAGONAL, DIAGONAL],
     [-0.923_9, 0.382_7],
     [-1.0, 0.0],
     [-0.923_9, -0.382_7],
-    [-0.707_1, -0.707_1],
+    [-DIAGONAL, -DIAGONAL],
     [-0.382_7, -0.923_9],
     [0.0, -1.0],
     [0.382_7, -0.923_9],
-    [0.707_1, -0.707_1],
+    [DIAGONAL, -DIAGONAL],
     [0.923_9, -0.382_7],
 ];
 

@@ -4,11 +4,9 @@ use super::Figure;
 use super::canvas::{Align, Canvas, Pen};
 use super::curve;
 use super::names::slug;
-use super::plane::{Point, length, scaled, unit};
+use super::plane::Point;
 use super::sheet::{Sample, Sheet, extreme, legend, zero};
-use super::symbols;
 use super::text::Text;
-use super::view::dot;
 use crate::model::{Effect, Purpose};
 use crate::quantity::Kind;
 use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberRecord};
@@ -17,7 +15,7 @@ use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberRecord};
 const DRAWN: [Effect; 8] =
     [Effect::N, Effect::Vy, Effect::Vz, Effect::T, Effect::My, Effect::Mz, Effect::Dy, Effect::Dz];
 /// Left and right ends of the member on the paper, mm.
-const ENDS: [f64; 2] = [26.0, 160.0];
+pub(super) const ENDS: [f64; 2] = [26.0, 160.0];
 /// Height from least to greatest value, mm, and the height of all effects together.
 const HEIGHT: f64 = 19.0;
 const HEIGHTS: f64 = 195.0;
@@ -30,10 +28,10 @@ const COMBINATIONS: usize = 40;
 /// Below this part of the greatest related value an effect is not drawn: round-off.
 const NOTHING: f64 = 1e-9;
 
-struct Drawing<'a> {
-    sheet: &'a Sheet<'a>,
-    name: &'a str,
-    member: &'a MemberRecord,
+pub(super) struct Drawing<'a> {
+    pub(super) sheet: &'a Sheet<'a>,
+    pub(super) name: &'a str,
+    pub(super) member: &'a MemberRecord,
     purpose: Purpose,
     /// Combinations of the purpose: name and number.
     combinations: Vec<(&'a str, &'a str)>,
@@ -144,77 +142,8 @@ impl Drawing<'_> {
         (ENDS[1] - ENDS[0]) / self.member.length
     }
 
-    fn x(&self, position: f64) -> f64 {
+    pub(super) fn x(&self, position: f64) -> f64 {
         ENDS[0] + position * self.scale()
-    }
-
-    /// The member with its supports, what frames in, its hinges, nodes and spans.
-    fn member_line(&self, canvas: &mut Canvas) {
-        let axes = self.member.axes;
-        let direction = |vector: [f64; 3]| [dot(axes[0], vector), -dot(axes[2], vector)];
-        for (node, station) in self.member.along.iter().zip(&self.member.stations) {
-            let at = [self.x(*station), 0.0];
-            self.neighbours(canvas, node, at, direction);
-            let support =
-                self.sheet.structure.nodes.get(node).and_then(|node| node.support.as_ref());
-            if let Some(support) = support {
-                let end = if *station <= 0.0 { [-1.0, 0.0] } else { [1.0, 0.0] };
-                let inner = *station > 0.0 && *station < self.member.length;
-                let away = if inner { [0.0, 1.0] } else { end };
-                symbols::support(canvas, at, support, direction, away, self.sheet.view.space);
-            }
-            canvas.label(at, [0.0, -1.0], 0, Text::new(node.as_str()).strong());
-        }
-        canvas.line([ENDS[0], 0.0], [ENDS[1], 0.0], Pen::Member);
-        for hinge in &self.member.hinges {
-            let by = if hinge.x >= self.member.length * (1.0 - 1e-9) { -1.5 } else { 1.5 };
-            symbols::hinge(canvas, [self.x(hinge.x) + by, 0.0]);
-        }
-        let y = canvas.bottom() + 5.0;
-        let written: Vec<Text> = self
-            .member
-            .spans
-            .iter()
-            .map(|span| Text::new(self.sheet.length(span.to - span.from)))
-            .collect();
-        for (span, text) in self.member.spans.iter().zip(&written) {
-            let [a, b] = [self.x(span.from), self.x(span.to)];
-            if text.width() < b - a {
-                symbols::dimension(canvas, [a, y], [b, y], text);
-            } else {
-                canvas.line([a, y], [b, y], Pen::Hair);
-                canvas.label([(a + b) / 2.0, y], [0.0, 1.0], 2, text.clone());
-            }
-        }
-    }
-
-    /// Stubs of other members that meet this one at a node.
-    fn neighbours(
-        &self,
-        canvas: &mut Canvas,
-        node: &str,
-        at: Point,
-        direction: impl Fn([f64; 3]) -> Point,
-    ) {
-        let nodes = &self.sheet.structure.nodes;
-        let Some(here) = nodes.get(node) else { return };
-        for (name, member) in &self.sheet.structure.members {
-            let Some(place) = member.along.iter().position(|other| other == node) else { continue };
-            if name == self.name {
-                continue;
-            }
-            for other in [place.checked_sub(1), Some(place + 1)].into_iter().flatten() {
-                let Some(there) = member.along.get(other).and_then(|name| nodes.get(name)) else {
-                    continue;
-                };
-                let run: [f64; 3] = std::array::from_fn(|i| there.at[i] - here.at[i]);
-                let flat = direction(run);
-                if length(flat) > 1e-6 {
-                    let tip = scaled(unit(flat), 5.0);
-                    canvas.line(at, [at[0] + tip[0], at[1] + tip[1]], Pen::Ghost);
-                }
-            }
-        }
     }
 
     /// One effect over its axis; says whether zeros are marked.

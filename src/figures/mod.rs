@@ -9,9 +9,11 @@
 mod canvas;
 mod curve;
 mod frame;
+mod imposed;
 mod labels;
 mod loads;
 mod member;
+mod member_line;
 mod method;
 mod model;
 mod names;
