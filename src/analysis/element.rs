@@ -216,4 +216,3 @@ fn end_of(start: &[f64; STORED], flexibility: &Flexibility, length: f64) -> [f64
     advance(start, &Intensity::default(), &Imposed::default(), flexibility)
         .map(|polynomial| super::evaluate(&polynomial, length))
 }
-

@@ -202,9 +202,12 @@ impl Frame {
             let turn = self.turn(model, element);
             let stiffness = turn.transpose() * element.joined.stiffness * turn;
             for row in 0..12 {
-                let Place::Equation(i) = self.places[element.nodes[row / 6]][row % 6] else { continue };
+                let Place::Equation(i) = self.places[element.nodes[row / 6]][row % 6] else {
+                    continue;
+                };
                 for column in 0..12 {
-                    let Place::Equation(j) = self.places[element.nodes[column / 6]][column % 6] else {
+                    let Place::Equation(j) = self.places[element.nodes[column / 6]][column % 6]
+                    else {
                         continue;
                     };
                     if i >= j {
@@ -301,7 +304,8 @@ fn elements_of(
         let (from, to) = (member.stations[piece], member.stations[piece + 1]);
         let ends = Ends::new(&flexibility, to - from).ok_or_else(weak)?;
         let releases = [released(member, piece, true), released(member, piece + 1, false)];
-        let joined = Joined::new(&ends.stiffness, &releases).map_err(|loose| spins(member, loose))?;
+        let joined =
+            Joined::new(&ends.stiffness, &releases).map_err(|loose| spins(member, loose))?;
         let node = |station: usize| nodes.iter().position(|id| *id == member.along[station]);
         let (Some(start), Some(end)) = (node(piece), node(piece + 1)) else { return Err(weak()) };
         elements.push(Element { member: place, nodes: [start, end], from, to, ends, joined });
@@ -336,9 +340,11 @@ fn spins(member: &Member, loose: Loose) -> Diagnostic {
     let force = crate::model::EFFECTS[loose.freedom % 6].name();
     Diagnostic::error(
         "mechanism",
-        format!("member `{}` is loose between its hinges: `{force}` is passed on at neither end", member.name),
+        format!(
+            "member `{}` is loose between its hinges: `{force}` is passed on at neither end",
+            member.name
+        ),
     )
     .at(member.origin.clone())
     .hint(format!("release `{force}` at one end only, or give the hinge a spring"))
 }
-

@@ -78,10 +78,8 @@ impl Joined {
     }
 
     fn relaxed(&self, held: &Vector12) -> Vector12 {
-        let given = DVector::from_iterator(
-            self.released.len(),
-            self.released.iter().map(|k| held[*k]),
-        );
+        let given =
+            DVector::from_iterator(self.released.len(), self.released.iter().map(|k| held[*k]));
         let moved = &self.compliance * given;
         let mut out = Vector12::zeros();
         for (row, freedom) in self.released.iter().enumerate() {

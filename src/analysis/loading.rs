@@ -75,7 +75,9 @@ pub(super) fn gather(
                     out.point(place, &model[*member], *at, force, moment);
                 }
             }
-            LoadKind::Node { node, force, moment } => out.nodal.push((*node, joined(force, moment))),
+            LoadKind::Node { node, force, moment } => {
+                out.nodal.push((*node, joined(force, moment)))
+            }
             LoadKind::Displaced { node, by } => out.displaced.push((*node, *by)),
             LoadKind::Warming { member, mean, gradient_z, gradient_y } => {
                 let Some(place) = place(*member) else { continue };
@@ -109,7 +111,14 @@ pub(super) fn gather(
 
 impl CaseLoads {
     /// A point load; at a node of the member it acts on the node.
-    fn point(&mut self, place: usize, member: &Member, at: f64, force: &[f64; 3], moment: &[f64; 3]) {
+    fn point(
+        &mut self,
+        place: usize,
+        member: &Member,
+        at: f64,
+        force: &[f64; 3],
+        moment: &[f64; 3],
+    ) {
         let near = |station: &f64| (station - at).abs() <= SAME_PLACE * member.length;
         match member.stations.iter().position(near) {
             Some(station) => self.nodal.push((member.along[station], joined(force, moment))),
@@ -149,7 +158,8 @@ impl MemberLoads {
     pub(super) fn at(&self, x: f64, length: f64) -> Option<PointLoad> {
         let mut sum = PointLoad { at: x, force: [0.0; 3], moment: [0.0; 3] };
         let mut any = false;
-        for point in self.points.iter().filter(|point| (point.at - x).abs() <= SAME_PLACE * length) {
+        for point in self.points.iter().filter(|point| (point.at - x).abs() <= SAME_PLACE * length)
+        {
             any = true;
             for axis in 0..3 {
                 sum.force[axis] += point.force[axis];

@@ -74,12 +74,8 @@ fn walk(
                 here[3 + k] -= FACE[3 + k] * point.moment[k];
             }
         }
-        let polynomials = advance(
-            &here,
-            &loads.intensity(stretch.from, stretch.to),
-            &loads.imposed,
-            flexibility,
-        );
+        let polynomials =
+            advance(&here, &loads.intensity(stretch.from, stretch.to), &loads.imposed, flexibility);
         here = polynomials.map(|polynomial| evaluate(&polynomial, stretch.to - stretch.from));
         visit(&polynomials);
     }

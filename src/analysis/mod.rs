@@ -18,13 +18,13 @@ mod solve;
 mod span;
 mod sparse;
 
-pub use span::deflections;
 pub use fields::{Fields, Polynomial, evaluate};
 pub use solution::{
     Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,
     Independent, MemberSolution, NodeSolution, Residual, Runner, Segment, SelfCheck, Solution,
     StructureCheck,
 };
+pub use span::deflections;
 
 use crate::diagnostic::Diagnostic;
 use crate::model::Model;

@@ -97,8 +97,8 @@ fn run(
             let turn = frame.turn(model, element);
             let nodes = frame.at_ends(model, element, &displacement);
             let held = &side.held[index];
-            let forces = turn.transpose()
-                * (element.joined.stiffness * nodes + element.joined.held(held));
+            let forces =
+                turn.transpose() * (element.joined.stiffness * nodes + element.joined.held(held));
             for k in 0..12 {
                 resisting[element.nodes[k / 6]][k % 6] += forces[k];
             }
@@ -106,7 +106,13 @@ fn run(
             let start = element.ends.start(&ends, &side.particular[index]);
             let member = &model[frame.members[element.member]];
             let flexibility = &frame.flexibility[element.member];
-            let own = fields(&start, &stretches[index], &loads.members[element.member], member.length, flexibility);
+            let own = fields(
+                &start,
+                &stretches[index],
+                &loads.members[element.member],
+                member.length,
+                flexibility,
+            );
             let into = &mut segments[element.member];
             let offset = into.iter().position(|segment| segment.from >= element.from).unwrap_or(0);
             for (segment, polynomials) in into[offset..].iter_mut().zip(own) {
@@ -181,7 +187,11 @@ impl Side {
             let turn = frame.turn(model, element);
             let moved = Vector12::from_fn(|k, _| {
                 let (node, freedom) = (element.nodes[k / 6], k % 6);
-                if frame.places[node][freedom] == Place::Held { out.ground[node][freedom] } else { 0.0 }
+                if frame.places[node][freedom] == Place::Held {
+                    out.ground[node][freedom]
+                } else {
+                    0.0
+                }
             });
             let forces = turn.transpose()
                 * (element.joined.stiffness * (turn * moved) + element.joined.held(&held));
@@ -203,11 +213,13 @@ impl Side {
 
     /// Moments on nodes that nothing holds in that direction.
     fn loose(&self, model: &Model, frame: &Frame, case: CaseId) -> Vec<Diagnostic> {
-        let scale = self.applied.iter().flatten().fold(0.0_f64, |most, force| most.max(force.abs()));
+        let scale =
+            self.applied.iter().flatten().fold(0.0_f64, |most, force| most.max(force.abs()));
         let mut problems = Vec::new();
         for (node, id) in frame.nodes.iter().enumerate() {
             let loaded = (3..6).any(|k| {
-                frame.places[node][k] == Place::Unattached && self.applied[node][k].abs() > 1e-9 * scale
+                frame.places[node][k] == Place::Unattached
+                    && self.applied[node][k].abs() > 1e-9 * scale
             });
             if loaded {
                 let origin = model[case]
@@ -224,7 +236,10 @@ impl Side {
                         ),
                     )
                     .at(origin.clone())
-                    .label(format!("{} here pass on no moment", mechanism::members_at(model, frame, *id))),
+                    .label(format!(
+                        "{} here pass on no moment",
+                        mechanism::members_at(model, frame, *id)
+                    )),
                 );
             }
         }
@@ -260,7 +275,9 @@ impl Side {
             let spring = spring(model, frame.nodes[node], k);
             match frame.places[node][k] {
                 // A spring's force is found from this very equation; see `file_nodes`.
-                Place::Equation(_) if spring <= 0.0 => (resisting[node][k] - self.applied[node][k]).abs(),
+                Place::Equation(_) if spring <= 0.0 => {
+                    (resisting[node][k] - self.applied[node][k]).abs()
+                }
                 _ => 0.0,
             }
         };
@@ -329,7 +346,9 @@ fn handed_forces(model: &Model, structure: StructureId, solution: &Solution) -> 
             let axes = model[handed.from].support.as_ref().map(|support| support.axes);
             let turned = |offset: usize| -> [f64; 3] {
                 std::array::from_fn(|axis| match axes {
-                    Some(rows) => -(0..3).map(|row| rows[row][axis] * own[offset + row]).sum::<f64>(),
+                    Some(rows) => {
+                        -(0..3).map(|row| rows[row][axis] * own[offset + row]).sum::<f64>()
+                    }
                     None => -own[offset + axis],
                 })
             };
@@ -339,11 +358,7 @@ fn handed_forces(model: &Model, structure: StructureId, solution: &Solution) -> 
     out
 }
 
-fn empty_segments(
-    model: &Model,
-    frame: &Frame,
-    stretches: &[Vec<Stretch>],
-) -> Vec<Vec<Segment>> {
+fn empty_segments(model: &Model, frame: &Frame, stretches: &[Vec<Stretch>]) -> Vec<Vec<Segment>> {
     let mut out = vec![Vec::new(); frame.members.len()];
     for (element, own) in frame.elements.iter().zip(stretches) {
         for stretch in own {
@@ -356,4 +371,3 @@ fn empty_segments(
     }
     out
 }
-

@@ -9,7 +9,8 @@ use faer::linalg::cholesky::llt::factor::LltRegularization;
 use faer::sparse::linalg::SupernodalThreshold;
 use faer::sparse::linalg::amd;
 use faer::sparse::linalg::cholesky::{
-    CholeskySymbolicParams, LltRef, SymbolicCholesky, SymmetricOrdering, factorize_symbolic_cholesky,
+    CholeskySymbolicParams, LltRef, SymbolicCholesky, SymmetricOrdering,
+    factorize_symbolic_cholesky,
 };
 use faer::sparse::{SparseColMat, Triplet};
 use faer::{Conj, MatMut, Par, Side};

@@ -39,6 +39,8 @@ pub(super) enum Pen {
     Ink,
     /// White area with outline.
     Open,
+    /// White area that parts lines behind a label.
+    Back,
 }
 
 impl Pen {
@@ -59,6 +61,7 @@ impl Pen {
             Self::Tint => "sf-tint",
             Self::Ink => "sf-ink",
             Self::Open => "sf-open",
+            Self::Back => "sf-back",
         }
     }
 
@@ -248,6 +251,10 @@ impl Canvas {
         for placed in placer.place(labels, [EDGE, WIDTH - EDGE]) {
             if let Some([from, to]) = placed.leader {
                 self.line(from, to, Pen::Hair);
+            }
+            if placed.on_lines {
+                let Area { min, max } = placed.area;
+                self.polygon(&[min, [max[0], min[1]], max, [min[0], max[1]]], Pen::Back);
             }
             let middle = scaled(add(placed.area.min, placed.area.max), 0.5);
             self.write(middle, Align::Middle, &placed.text, &placed.area);

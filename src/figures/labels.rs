@@ -26,6 +26,8 @@ pub(super) struct Placed {
     pub(super) area: Area,
     /// A line to the anchor where the label stands away from it.
     pub(super) leader: Option<[Point; 2]>,
+    /// It stands on drawn lines.
+    pub(super) on_lines: bool,
 }
 
 /// What labels must keep clear of.
@@ -89,8 +91,9 @@ impl Placer {
             best.unwrap_or_else(|| (0.0, self.below(first, size, edges), first));
         self.taken.push(area);
         let leader = leader(anchor, &area);
+        let on_lines = self.ink.iter().any(|[a, b]| area.meets(*a, *b));
         self.ink.extend(leader);
-        Placed { text: label.text, area, leader }
+        Placed { text: label.text, area, leader, on_lines }
     }
 
     /// Looks for a better position round an anchor that costs `cost` by itself.

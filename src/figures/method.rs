@@ -11,6 +11,9 @@ const ENDS: [f64; 2] = [45.0, 125.0];
 /// Width and height of a curve's plot, mm.
 const PLOT: [f64; 2] = [32.0, 11.0];
 
+/// A curve over t from 0 to 1.
+type Shape = fn(f64) -> f64;
+
 /// The drawing of the method statement: the beam element, its end freedoms and shape functions.
 #[must_use]
 pub fn method() -> Figure {
@@ -18,7 +21,7 @@ pub fn method() -> Figure {
     element(&mut canvas);
     let top = canvas.bottom() + 12.0;
     // Cubic shape functions of bending without shear deformation, in t = x / L.
-    let curves: [(&str, &str, fn(f64) -> f64); 4] = [
+    let curves: [(&str, &str, Shape); 4] = [
         ("w at the start = 1", "1 − 3t² + 2t³", |t| 1.0 - 3.0 * t * t + 2.0 * t * t * t),
         ("w′ at the start = 1", "L (t − 2t² + t³)", |t| t - 2.0 * t * t + t * t * t),
         ("w at the end = 1", "3t² − 2t³", |t| 3.0 * t * t - 2.0 * t * t * t),
@@ -77,7 +80,7 @@ fn element(canvas: &mut Canvas) {
     canvas.label([89.0, -9.0], [1.0, 0.0], 1, Text::new("sense about y"));
 }
 
-fn plot(canvas: &mut Canvas, at: Point, case: &str, formula: &str, shape: fn(f64) -> f64) {
+fn plot(canvas: &mut Canvas, at: Point, case: &str, formula: &str, shape: Shape) {
     let place = |t: f64| add(at, [t * PLOT[0], -shape(t) * PLOT[1]]);
     canvas.line(at, add(at, [PLOT[0], 0.0]), Pen::Axis);
     let line: Vec<Point> = (0_u8..=32).map(|i| place(f64::from(i) / 32.0)).collect();

@@ -18,12 +18,10 @@ const ROOM: f64 = 1.0;
 pub(super) fn figure(sheet: &Sheet<'_>) -> Figure {
     let mut canvas = Canvas::default();
     sheet.skeleton(&mut canvas, Pen::Member);
-    let held = sheet
-        .structure
-        .members
-        .values()
-        .map(|member| restraint(&mut canvas, sheet, member))
-        .fold(false, |any, drawn| any || drawn);
+    let mut held = false;
+    for member in sheet.structure.members.values() {
+        held |= restraint(&mut canvas, sheet, member);
+    }
     if sheet.view.space {
         section_outlines(&mut canvas, sheet);
     }
