@@ -65,9 +65,13 @@ impl Pen {
         }
     }
 
-    /// Labels may stand on it.
-    const fn is_quiet(self) -> bool {
-        matches!(self, Self::Faint | Self::Band)
+    /// How much labels keep off it.
+    const fn weight(self) -> u8 {
+        match self {
+            Self::Faint | Self::Band | Self::Back => 0,
+            Self::Member | Self::Brace => 2,
+            _ => 1,
+        }
     }
 }
 
@@ -141,7 +145,8 @@ impl Canvas {
         for point in points {
             extent.include(*point);
         }
-        if !pen.is_quiet() {
+        // Thick lines count twice.
+        for _ in 0..pen.weight() {
             self.placer.ink.extend(points.windows(2).map(|pair| [pair[0], pair[1]]));
             if let (true, Some(first), Some(last)) = (closed, points.first(), points.last()) {
                 self.placer.ink.push([*last, *first]);

@@ -1,6 +1,8 @@
 //! Effects of a whole frame over the combinations of one purpose: diagrams on the members, and the
 //! displaced shape.
 
+use rayon::prelude::*;
+
 use super::Figure;
 use super::canvas::{Canvas, Pen};
 use super::curve;
@@ -36,8 +38,7 @@ pub(super) fn figures(sheet: &Sheet<'_>) -> Vec<Figure> {
     } else {
         &[Effect::N, Effect::Vz, Effect::My]
     };
-    let mut figures = Vec::new();
-    for purpose in Purpose::ALL {
+    let of_purpose = |purpose: Purpose| -> Vec<Figure> {
         let combinations: Vec<&str> = sheet
             .record
             .combinations
@@ -46,15 +47,16 @@ pub(super) fn figures(sheet: &Sheet<'_>) -> Vec<Figure> {
             .map(|(name, _)| name.as_str())
             .collect();
         if combinations.is_empty() {
-            continue;
+            return Vec::new();
         }
-        for effect in effects {
-            let frame = Frame { sheet, purpose, effect: *effect, greatest: 0.0 };
-            figures.extend(frame.figure());
-        }
+        let mut figures: Vec<Figure> = effects
+            .par_iter()
+            .filter_map(|effect| Frame { sheet, purpose, effect: *effect, greatest: 0.0 }.figure())
+            .collect();
         figures.extend(displaced(sheet, purpose, &combinations));
-    }
-    figures
+        figures
+    };
+    Purpose::ALL.par_iter().flat_map(|purpose| of_purpose(*purpose)).collect()
 }
 
 /// Some node joins two members.

@@ -117,22 +117,25 @@ impl Placer {
                 break;
             }
             for direction in DIRECTIONS {
+                let agreement = direction[0] * side[0] + direction[1] * side[1];
+                let least = cost + distance + (1.0 - agreement) * 1.5;
                 let area = beside(anchor, direction, distance, size);
-                if area.min[0] < edges[0] || area.max[0] > edges[1] {
+                if area.min[0] < edges[0]
+                    || area.max[0] > edges[1]
+                    || best.is_some_and(|(penalty, ..)| penalty <= least)
+                {
                     continue;
                 }
                 let clear = area.grown(CLEAR);
                 if taken.iter().any(|other| clear.overlaps(other)) {
                     continue;
                 }
-                let agreement = direction[0] * side[0] + direction[1] * side[1];
-                let crossed = ink.iter().filter(|[a, b]| area.grown(0.2).meets(*a, *b)).count();
-                let penalty = cost
-                    + distance
-                    + (1.0 - agreement) * 1.5
+                let near = area.grown(0.2);
+                let crossed = ink.iter().filter(|[a, b]| near.meets(*a, *b)).count();
+                let penalty = least
                     + crossed.min(20) as f64 * CROSSED
                     + leader_penalty(anchor, &area, &taken);
-                if best.is_none_or(|(least, ..)| penalty < least) {
+                if best.is_none_or(|(found, ..)| penalty < found) {
                     *best = Some((penalty, area, anchor));
                 }
             }

@@ -156,7 +156,8 @@ impl Drawing<'_> {
         let axis = top - (if down { low } else { high }) * factor;
         let place = |point: Point| [self.x(point[0]), axis + point[1] * factor];
 
-        self.envelope(canvas, effect, axis, place);
+        let band = self.sheet.record.band(self.name, effect, self.purpose).unwrap_or_default();
+        self.envelope(canvas, effect, &band, axis, place);
         canvas.line([ENDS[0], axis], [ENDS[1], axis], Pen::Axis);
         for station in &self.member.stations {
             canvas.line([self.x(*station), axis - 0.8], [self.x(*station), axis + 0.8], Pen::Axis);
@@ -185,7 +186,7 @@ impl Drawing<'_> {
             canvas.label(at, [0.2, outwards], rank, text);
         }
         if effect.kind() != Kind::Deflection {
-            self.end_values(canvas, effect, down, place);
+            self.end_values(canvas, effect, &band, down, place);
         }
         !zeros.is_empty()
     }
@@ -195,10 +196,10 @@ impl Drawing<'_> {
         &self,
         canvas: &mut Canvas,
         effect: Effect,
+        band: &[[f64; 3]],
         down: bool,
         place: impl Fn(Point) -> Point,
     ) {
-        let band = self.sheet.record.band(self.name, effect, self.purpose).unwrap_or_default();
         let marked = self.marked(effect);
         for end in [band.first(), band.last()].into_iter().flatten() {
             let value = if end[2].abs() >= end[1].abs() { end[2] } else { end[1] };
@@ -219,12 +220,12 @@ impl Drawing<'_> {
         &self,
         canvas: &mut Canvas,
         effect: Effect,
+        band: &[[f64; 3]],
         axis: f64,
         place: impl Fn(Point) -> Point,
     ) {
         let record = self.sheet.record;
         let several = self.combinations.len() > 1;
-        let band = record.band(self.name, effect, self.purpose).unwrap_or_default();
         let edge = |side: usize| -> Vec<Point> {
             band.iter().map(|point| place([point[0], point[side]])).collect()
         };

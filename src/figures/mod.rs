@@ -23,6 +23,8 @@ mod symbols;
 mod text;
 mod view;
 
+use rayon::prelude::*;
+
 use crate::model::Purpose;
 use crate::record::Record;
 use sheet::Sheet;
@@ -59,14 +61,20 @@ pub fn figures(record: &Record) -> Vec<Figure> {
     for (name, structure) in &record.model.structures {
         let sheet = Sheet::new(record, &printer, name, structure);
         figures.push(model::figure(&sheet));
-        for (case, content) in &record.model.cases {
-            figures.extend(loads::figure(&sheet, case, content));
-        }
+        let cases: Vec<_> = record.model.cases.iter().collect();
+        figures.par_extend(
+            cases.par_iter().filter_map(|(case, content)| loads::figure(&sheet, case, content)),
+        );
         figures.extend(frame::figures(&sheet));
-        for member in structure.members.keys().filter(|name| is_drawn(record, name)) {
-            let all = Purpose::ALL.into_iter();
-            figures.extend(all.filter_map(|purpose| member::figure(&sheet, member, purpose)));
-        }
+        let members: Vec<(&String, Purpose)> = structure
+            .members
+            .keys()
+            .filter(|name| is_drawn(record, name))
+            .flat_map(|name| Purpose::ALL.map(|purpose| (name, purpose)))
+            .collect();
+        figures.par_extend(
+            members.par_iter().filter_map(|(name, purpose)| member::figure(&sheet, name, *purpose)),
+        );
     }
     figures
 }
