@@ -56,10 +56,17 @@ fn steps(paper: f64) -> u8 {
     (4..60).find(|steps| f64::from(*steps) * 2.0 >= paper).unwrap_or(60)
 }
 
-/// Where an effect of a state passes through zero with a change of sign, m; jumps do not count.
-pub(super) fn zeros(record: &Record, member: &str, effect: Effect, state: &str) -> Vec<f64> {
+/// Where an effect of a state passes through zero with a change of sign, m; jumps do not count, nor do
+/// values up to `nothing`.
+pub(super) fn zeros(
+    record: &Record,
+    member: &str,
+    effect: Effect,
+    state: &str,
+    nothing: f64,
+) -> Vec<f64> {
     let mut found = Vec::new();
-    // The last place with a value other than zero, and the first zero since.
+    // The last place with a value that counts, and the first zero since.
     let mut last: Option<Point> = None;
     let mut touched: Option<f64> = None;
     for piece in record.along(member, effect, state).unwrap_or_default() {
@@ -67,7 +74,7 @@ pub(super) fn zeros(record: &Record, member: &str, effect: Effect, state: &str) 
         for i in 0..=16 {
             let x = piece.from + (piece.to - piece.from) * f64::from(i) / 16.0;
             let here = value(x);
-            if here.abs() <= 0.0 {
+            if here.abs() <= nothing {
                 touched = touched.or(Some(x));
                 continue;
             }

@@ -104,25 +104,26 @@ impl Drawing<'_> {
         let id = format!("member-{}.{}", slug(self.name), self.purpose.name());
         let names: Vec<&str> = effects.iter().map(|effect| super::names::words(*effect)).collect();
         let title = format!("Effects along member {}, {}", self.name, self.purpose.name());
-        let capped = match self.combinations.len() {
-            n if n > COMBINATIONS => {
-                format!(
-                    " Of {n} combinations the first {COMBINATIONS} are drawn one by one; the envelope covers all."
-                )
-            }
-            _ => String::new(),
-        };
-        let caption = format!(
-            "Member {}, {} combinations: {}.{}{capped}",
+        let mut caption = format!(
+            "Member {}, {} combinations: {}.",
             self.name,
             self.purpose.name(),
             names.join(", "),
-            if effects.iter().any(|effect| is_bending(*effect)) {
-                format!(" Moments on the {}.", self.sheet.record.model.package.moments)
-            } else {
-                String::new()
-            },
         );
+        if effects.iter().any(|effect| is_bending(*effect)) {
+            caption += &format!(" Moments on the {}.", self.sheet.record.model.package.moments);
+        }
+        if effects.iter().any(|effect| effect.kind() == Kind::Deflection) {
+            caption += " Deflections from the chord of each span, of a span with a free end from the \
+                        undeformed line through its support.";
+        }
+        if self.combinations.len() > COMBINATIONS {
+            caption += &format!(
+                " Of {} combinations the first {COMBINATIONS} are drawn one by one; the envelope \
+                 covers all.",
+                self.combinations.len()
+            );
+        }
         let description = format!(
             "Diagrams under a sketch of the member with its supports, from its start at the left to its \
              end at the right, with the envelope over all combinations and the extremes marked. {caption}"
@@ -261,8 +262,9 @@ impl Drawing<'_> {
         if effect.kind() == Kind::Deflection {
             return zeros;
         }
+        let nothing = NOTHING * self.size(effect);
         for state in [&extremes.max.state, &extremes.min.state] {
-            zeros.extend(curve::zeros(self.sheet.record, self.name, effect, state));
+            zeros.extend(curve::zeros(self.sheet.record, self.name, effect, state, nothing));
         }
         zeros.sort_by(f64::total_cmp);
         zeros.dedup_by(|a, b| (*a - *b).abs() < 1e-6 * self.member.length);

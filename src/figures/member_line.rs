@@ -18,10 +18,17 @@ impl Drawing<'_> {
             let support =
                 self.sheet.structure.nodes.get(node).and_then(|node| node.support.as_ref());
             if let Some(support) = support {
-                let end = if *station <= 0.0 { [-1.0, 0.0] } else { [1.0, 0.0] };
-                let inner = *station > 0.0 && *station < self.member.length;
-                let away = if inner { [0.0, 1.0] } else { end };
-                symbols::support(canvas, at, support, direction, away, self.sheet.view.space);
+                let start = *station <= 0.0;
+                let end = *station >= self.member.length;
+                let both = [[1.0, 0.0], [-1.0, 0.0]];
+                let members = if start {
+                    &both[..1]
+                } else if end {
+                    &both[1..]
+                } else {
+                    &both[..]
+                };
+                symbols::support(canvas, at, support, direction, members, self.sheet.view.space);
             }
             canvas.label(at, [0.0, -1.0], 0, Text::new(node.as_str()).strong());
         }

@@ -1,7 +1,7 @@
 //! A structure on a sheet: its lines, and what its drawings share.
 
 use super::canvas::{Align, Canvas, Pen};
-use super::plane::{Point, add, length, moved, scaled, sub, unit};
+use super::plane::{Point, add, length, moved, sub, unit};
 use super::symbols;
 use super::text::Text;
 use super::view::View;
@@ -50,7 +50,7 @@ impl<'a> Sheet<'a> {
                     self.view.point(node.at),
                     support,
                     |vector| self.view.direction(vector),
-                    self.away(name),
+                    &self.members_at(name),
                     self.view.space,
                 );
             }
@@ -78,23 +78,22 @@ impl<'a> Sheet<'a> {
         }
     }
 
-    /// Points from a node to where no member is, on the paper.
-    pub(super) fn away(&self, node: &str) -> Point {
+    /// Directions of the members at a node, on the paper.
+    fn members_at(&self, node: &str) -> Vec<Point> {
         let at = self.node(node);
-        let mut sum = [0.0; 2];
+        let mut directions = Vec::new();
         for member in self.structure.members.values() {
             let Some(place) = member.along.iter().position(|name| name == node) else { continue };
             let neighbours = [place.checked_sub(1), Some(place + 1)];
-            for other in neighbours.into_iter().flatten().filter_map(|i| member.along.get(i)) {
-                sum = add(sum, unit(sub(self.node(other), at)));
-            }
+            let others = neighbours.into_iter().flatten().filter_map(|i| member.along.get(i));
+            directions.extend(others.map(|other| unit(sub(self.node(other), at))));
         }
-        if length(sum) < 0.2 { [0.0, 1.0] } else { scaled(unit(sum), -1.0) }
+        directions
     }
 
     pub(super) fn node_names(&self, canvas: &mut Canvas) {
         for name in self.structure.nodes.keys() {
-            let away = self.away(name);
+            let away = symbols::away(&self.members_at(name));
             // Beside a support's symbol rather than on it.
             let side = if away[1] > 0.5 { [-0.8, -0.6] } else { away };
             canvas.label(self.node(name), side, 1, Text::new(name.as_str()).strong());

@@ -18,21 +18,22 @@ fn spring(freedom: FreedomRecord) -> bool {
     matches!(freedom, FreedomRecord::Spring(_))
 }
 
-/// A support. `direction` brings a vector of space to the paper; `away` points from the node to where
-/// no member is; in space the freedoms out of the paper count too.
+/// A support. `direction` brings a vector of space to the paper; `members` are the directions of the
+/// members at the node; in space the freedoms out of the paper count too.
 pub(super) fn support(
     canvas: &mut Canvas,
     at: Point,
     support: &SupportRecord,
     direction: impl Fn([f64; 3]) -> Point,
-    away: Point,
+    members: &[Point],
     space: bool,
 ) {
+    let away = away(members);
     let free = support.freedoms;
     let axes = support.axes.map(direction);
     let held = |range: std::ops::Range<usize>| range.clone().all(|i| fixed(free[i]));
     if space && held(0..6) {
-        return ground(canvas, at, DOWN, 3.0);
+        return ground(canvas, at, away, 3.0);
     }
     if space && held(0..3) {
         triangle(canvas, at, DOWN);
@@ -61,10 +62,10 @@ pub(super) fn support(
         }
         (along_x, along_z) => {
             for (axis, freedom, here) in [(0, free[0], along_x), (2, free[2], along_z)] {
-                if here {
-                    roller(canvas, at, side(axes[axis]));
-                } else if spring(freedom) {
-                    zigzag(canvas, at, side(axes[axis]));
+                let down = side(axes[axis]);
+                if here || spring(freedom) {
+                    let at = beside(canvas, at, down, members);
+                    if here { roller(canvas, at, down) } else { zigzag(canvas, at, down) }
                 }
             }
             if fixed(turn) {
@@ -78,6 +79,28 @@ pub(super) fn support(
     if spring(turn) {
         curl(canvas, at, [1.0, 0.0], [0.0, 1.0], 2.4, false);
     }
+}
+
+/// Where to start a symbol that would lie on a member: off the node, joined to it by a line.
+fn beside(canvas: &mut Canvas, at: Point, down: Point, members: &[Point]) -> Point {
+    if members.iter().all(|member| member[0] * down[0] + member[1] * down[1] < 0.9) {
+        return at;
+    }
+    let start = moved(at, away(members), 2.8);
+    canvas.line(at, start, Pen::Axis);
+    start
+}
+
+/// Points from a node to where no member is.
+pub(super) fn away(members: &[Point]) -> Point {
+    let sum = members.iter().fold([0.0; 2], |sum, member| add(sum, *member));
+    if length(sum) >= 0.2 {
+        return scaled(unit(sum), -1.0);
+    }
+    // Members go on straight: below them, to the left of upright ones.
+    let across = turned(members.first().copied().unwrap_or([1.0, 0.0]));
+    let keep = if across[1].abs() > 0.3 { across[1] > 0.0 } else { across[0] < 0.0 };
+    if keep { across } else { scaled(across, -1.0) }
 }
 
 /// The sense of an axis in which a support is drawn: down on the paper unless members are there.
