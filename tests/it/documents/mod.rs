@@ -1,1 +1,2 @@
-//! See the files beside this one.
+//! What the program writes: drawings and packages.
+mod figures;
