@@ -6,7 +6,7 @@ use rayon::prelude::*;
 use super::Figure;
 use super::canvas::{Canvas, Pen};
 use super::curve;
-use super::names::{slug, words};
+use super::names::{COMBINATIONS, NOTHING, is_bending, slug, words};
 use super::plane::{Point, add, length, scaled, sub, unit};
 use super::sheet::{Sample, Sheet, extreme, legend};
 use super::text::Text;
@@ -23,10 +23,6 @@ const MOVEMENT: f64 = 10.0;
 const VALUES: usize = 60;
 /// Values below this share of the greatest are not written.
 const SMALL: f64 = 0.05;
-/// So many combinations are drawn one by one.
-const COMBINATIONS: usize = 40;
-/// Below this share of the greatest related value an effect is round-off and not drawn.
-const NOTHING: f64 = 1e-9;
 
 /// Draws a structure's effects for each purpose; nothing for members that do not meet.
 pub(super) fn figures(sheet: &Sheet<'_>) -> Vec<Figure> {
@@ -221,10 +217,6 @@ impl Frame<'_> {
     }
 }
 
-fn is_bending(effect: Effect) -> bool {
-    matches!(effect, Effect::My | Effect::Mz)
-}
-
 /// The displaced shape of every combination; the one that moves a node most is drawn strongly.
 fn displaced(sheet: &Sheet<'_>, purpose: Purpose, combinations: &[&str]) -> Option<Figure> {
     let record = sheet.record;
@@ -275,8 +267,8 @@ fn displaced(sheet: &Sheet<'_>, purpose: Purpose, combinations: &[&str]) -> Opti
         .collect();
     let unit = &sheet.printer.units.get(Kind::Deflection).label;
     let number = record.combinations.get(state).map_or("", |found| found.number.as_str());
-    let words = format!("{node} ({number}): {} {unit}", components.join(", "));
-    canvas.label(at, [0.5, -0.8], 2, Text::new(words.as_str()));
+    let movement = format!("{node} ({number}): {} {unit}", components.join(", "));
+    canvas.label(at, [0.5, -0.8], 2, Text::new(movement.as_str()));
     let top = canvas.bottom() + 6.0;
     let mut entries = vec![
         (Sample::Line(Pen::Second), Text::new("undisplaced")),
@@ -302,7 +294,7 @@ fn displaced(sheet: &Sheet<'_>, purpose: Purpose, combinations: &[&str]) -> Opti
         sheet.name,
         purpose.name()
     );
-    let description = format!("The frame before and after it displaces. {words}. {caption}");
+    let description = format!("The frame before and after it displaces. {movement}. {caption}");
     Some(Figure {
         svg: canvas.finish(&id, &title, &description),
         id,

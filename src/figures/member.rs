@@ -3,7 +3,7 @@
 use super::Figure;
 use super::canvas::{Align, Canvas, Pen};
 use super::curve;
-use super::names::slug;
+use super::names::{COMBINATIONS, NOTHING, is_bending, slug, words};
 use super::plane::Point;
 use super::sheet::{Sample, Sheet, extreme, legend, zero};
 use super::text::Text;
@@ -23,10 +23,6 @@ const HEIGHTS: f64 = 195.0;
 const MINOR: f64 = 0.02;
 /// Clear height between two effects, mm.
 const GAP: f64 = 11.0;
-/// So many combinations are drawn one by one.
-const COMBINATIONS: usize = 40;
-/// Below this part of the greatest related value an effect is not drawn: round-off.
-const NOTHING: f64 = 1e-9;
 
 pub(super) struct Drawing<'a> {
     pub(super) sheet: &'a Sheet<'a>,
@@ -102,7 +98,7 @@ impl Drawing<'_> {
         self.legend(&mut canvas, top - GAP + 7.0, zeros);
 
         let id = format!("member-{}.{}", slug(self.name), self.purpose.name());
-        let names: Vec<&str> = effects.iter().map(|effect| super::names::words(*effect)).collect();
+        let names: Vec<&str> = effects.iter().map(|effect| words(*effect)).collect();
         let title = format!("Effects along member {}, {}", self.name, self.purpose.name());
         let mut caption = format!(
             "Member {}, {} combinations: {}.",
@@ -325,8 +321,4 @@ impl Drawing<'_> {
         }
         legend(canvas, top, &entries);
     }
-}
-
-fn is_bending(effect: Effect) -> bool {
-    matches!(effect, Effect::My | Effect::Mz)
 }

@@ -3,6 +3,7 @@
 use super::canvas::{Canvas, Pen};
 use super::member::{Drawing, ENDS};
 use super::plane::{Point, length, scaled, unit};
+use super::sheet::hinge_offset;
 use super::symbols;
 use super::text::Text;
 use super::view::dot;
@@ -34,8 +35,9 @@ impl Drawing<'_> {
         }
         canvas.line([ENDS[0], 0.0], [ENDS[1], 0.0], Pen::Member);
         for hinge in &self.member.hinges {
-            let by = if hinge.x >= self.member.length * (1.0 - 1e-9) { -1.5 } else { 1.5 };
-            symbols::hinge(canvas, [self.x(hinge.x) + by, 0.0]);
+            if let Some(by) = hinge_offset(self.member, hinge) {
+                symbols::hinge(canvas, [self.x(hinge.x) + by, 0.0]);
+            }
         }
         let y = canvas.bottom() + 5.0;
         let written: Vec<Text> = self

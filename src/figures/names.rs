@@ -1,6 +1,16 @@
-//! Ids of drawings, and words for effects.
+//! Ids of drawings, words for effects, and what is drawn of them.
 
 use crate::model::Effect;
+
+/// So many combinations are drawn one by one.
+pub(super) const COMBINATIONS: usize = 40;
+/// Up to this share of the greatest value of its kind an effect is round-off and not drawn.
+pub(super) const NOTHING: f64 = 1e-9;
+
+/// A moment drawn on the tension or the compression side.
+pub(super) const fn is_bending(effect: Effect) -> bool {
+    matches!(effect, Effect::My | Effect::Mz)
+}
 
 /// A name as part of an id: lower case; different names never give the same part, nor do joined parts
 /// (they are joined by `.`, which no part holds).

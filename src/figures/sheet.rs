@@ -6,7 +6,7 @@ use super::symbols;
 use super::text::Text;
 use super::view::View;
 use crate::quantity::{Kind, Printer};
-use crate::record::{MemberRecord, Record, StructureRecord};
+use crate::record::{HingeRecord, MemberRecord, Record, StructureRecord};
 
 /// What is drawn: one structure of a record, and how.
 pub(super) struct Sheet<'a> {
@@ -67,14 +67,10 @@ impl<'a> Sheet<'a> {
 
     fn hinges(&self, canvas: &mut Canvas, member: &MemberRecord) {
         for hinge in &member.hinges {
-            if !hinge.releases.keys().any(|force| force.starts_with('M')) {
-                continue;
+            if let Some(by) = hinge_offset(member, hinge) {
+                let along = unit(self.view.direction(member.axes[0]));
+                symbols::hinge(canvas, moved(self.paper(member, hinge.x), along, by));
             }
-            // Beside the node, in the piece that is released.
-            let last = hinge.x > member.length * (1.0 - 1e-9);
-            let along = unit(self.view.direction(member.axes[0]));
-            let by = if last { -1.5 } else { 1.5 };
-            symbols::hinge(canvas, moved(self.paper(member, hinge.x), along, by));
         }
     }
 
@@ -122,6 +118,14 @@ impl<'a> Sheet<'a> {
     pub(super) fn length(&self, metres: f64) -> String {
         self.printer.with_unit(Kind::Length, metres)
     }
+}
+
+/// How far a hinge's circle stands from its node along the member, mm: in the piece that is released.
+/// `None` where no bending moment is released.
+pub(super) fn hinge_offset(member: &MemberRecord, hinge: &HingeRecord) -> Option<f64> {
+    let last = hinge.x > member.length * (1.0 - 1e-9);
+    let bends = hinge.releases.keys().any(|force| force.starts_with('M'));
+    bends.then_some(if last { -1.5 } else { 1.5 })
 }
 
 /// A row of samples with their meaning, below the drawing.
