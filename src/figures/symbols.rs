@@ -33,6 +33,9 @@ pub(super) fn support(
     let axes = support.axes.map(direction);
     let held = |range: std::ops::Range<usize>| range.clone().all(|i| fixed(free[i]));
     if space && held(0..6) {
+        // Level or upright: several members seldom lean alike.
+        let level = away[0].abs() > away[1].abs();
+        let away = if level { [away[0].signum(), 0.0] } else { [0.0, away[1].signum()] };
         return ground(canvas, at, away, 3.0);
     }
     if space && held(0..3) {
