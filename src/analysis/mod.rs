@@ -6,6 +6,7 @@
 //! - Mechanisms and unrestrained parts are refused with the node and direction named, never solved.
 //! - Never reads files, never rounds for printing.
 
+mod combine;
 mod element;
 mod fields;
 mod frame;
@@ -18,6 +19,7 @@ mod solve;
 mod span;
 mod sparse;
 
+pub use combine::superpose;
 pub use fields::{Fields, Polynomial, evaluate};
 pub use solution::{
     Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,

@@ -1,0 +1,18 @@
+//! Superposition: the only place where effects of load cases are added up.
+
+use super::Fields;
+use crate::model::EFFECTS;
+
+/// Σ factor · fields, in the order given; nothing given is zero.
+///
+/// A plain loop over the coefficients in fixed order, so that the same factors give the same bits.
+#[must_use]
+pub fn superpose<'f>(terms: impl IntoIterator<Item = (f64, &'f Fields)>) -> Fields {
+    let mut sum = Fields([[0.0; 6]; EFFECTS.len()]);
+    for (factor, fields) in terms {
+        for (into, from) in sum.0.as_flattened_mut().iter_mut().zip(fields.0.as_flattened()) {
+            *into += factor * from;
+        }
+    }
+    sum
+}
