@@ -195,7 +195,7 @@ impl Frame {
         (own, scale)
     }
 
-    /// Lower triangle of the stiffness of all equations.
+    /// Upper triangle of the stiffness of all equations.
     fn entries(&self, model: &Model) -> Entries {
         let mut entries = Entries::new();
         for element in &self.elements {
@@ -210,7 +210,7 @@ impl Frame {
                     else {
                         continue;
                     };
-                    if i >= j {
+                    if i <= j {
                         entries.push(faer::sparse::Triplet::new(i, j, stiffness[(row, column)]));
                     }
                 }

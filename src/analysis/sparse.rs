@@ -46,7 +46,8 @@ pub(super) enum Singular {
     Unusable,
 }
 
-/// Entries of the lower triangle, diagonal included; duplicates add up.
+/// Entries of the upper triangle (row ≤ column), diagonal included; duplicates add up. In the given
+/// order the symbolic analysis reads the upper triangle only, whatever side it is told.
 pub(super) type Entries = Vec<Triplet<usize, usize, f64>>;
 
 impl Factor {
@@ -167,7 +168,7 @@ fn factorise(
     };
     let symbolic = factorize_symbolic_cholesky(
         matrix.symbolic(),
-        Side::Lower,
+        Side::Upper,
         SymmetricOrdering::Identity,
         CholeskySymbolicParams {
             supernodal_flop_ratio_threshold: threshold,
@@ -183,7 +184,7 @@ fn factorise(
         .factorize_numeric_llt(
             &mut values,
             matrix.as_ref(),
-            Side::Lower,
+            Side::Upper,
             LltRegularization::default(),
             Par::Seq,
             MemStack::new(&mut memory),

@@ -1,4 +1,5 @@
 //! See the files beside this one.
 
+mod frames;
 mod module_order;
 mod quantities;

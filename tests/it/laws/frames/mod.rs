@@ -1,0 +1,7 @@
+//! The analysis held against signs, published formulas and laws, on models built by hand.
+
+mod build;
+mod hinges;
+mod imposed;
+mod sections;
+mod signs;
