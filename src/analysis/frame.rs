@@ -9,6 +9,7 @@ use nalgebra::{Matrix3, SymmetricEigen, Vector3};
 use super::element::{Ends, Flexibility, Matrix12, Vector12};
 use super::hinge::{Joined, Loose};
 use super::mechanism;
+use super::parts;
 use super::sparse::{Entries, Factor, Singular, node_order};
 use crate::diagnostic::Diagnostic;
 use crate::model::{
@@ -97,6 +98,10 @@ impl Frame {
             equations: 0,
             factor: None,
         };
+        let problems = parts::not_held(model, structure, &frame);
+        if !problems.is_empty() {
+            return Err(problems);
+        }
         frame.place(model, structure);
         let entries = frame.entries(model);
         if frame.equations > 0 {
@@ -303,7 +308,9 @@ fn elements_of(
     for piece in 0..last {
         let (from, to) = (member.stations[piece], member.stations[piece + 1]);
         let ends = Ends::new(&flexibility, to - from).ok_or_else(weak)?;
-        let releases = [released(member, piece, true), released(member, piece + 1, false)];
+        let kind = model[member.structure].frame;
+        let releases =
+            [released(member, kind, piece, true), released(member, kind, piece + 1, false)];
         let joined =
             Joined::new(&ends.stiffness, &releases).map_err(|loose| spins(member, loose))?;
         let node = |station: usize| nodes.iter().position(|id| *id == member.along[station]);
@@ -315,8 +322,9 @@ fn elements_of(
 
 /// Releases of the element end at a station. A hinge at an inner node releases the piece after it; at
 /// the end of the member, the piece before it. A member that carries axial force only is hinged at both
-/// ends, and free to twist at one, so that it still holds itself.
-fn released(member: &Member, station: usize, element_starts: bool) -> [Release; 6] {
+/// ends, and free to twist at one, so that it still holds itself. In a plane frame releases out of the
+/// plane mean nothing.
+fn released(member: &Member, kind: Kind, station: usize, element_starts: bool) -> [Release; 6] {
     let first = station == 0;
     let last = station + 1 == member.along.len();
     if !element_starts && !last {
@@ -329,8 +337,11 @@ fn released(member: &Member, station: usize, element_starts: bool) -> [Release; 
     if member.axial_only.is_some() && (first || last) {
         out[Effect::My.index()] = Release::Free;
         out[Effect::Mz.index()] = Release::Free;
-        if last {
-            out[Effect::T.index()] = Release::Free;
+        out[Effect::T.index()] = if last { Release::Free } else { Release::Rigid };
+    }
+    if kind == Kind::Plane {
+        for effect in [Effect::Vy, Effect::T, Effect::Mz] {
+            out[effect.index()] = Release::Rigid;
         }
     }
     out

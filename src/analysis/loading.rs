@@ -119,8 +119,7 @@ impl CaseLoads {
         force: &[f64; 3],
         moment: &[f64; 3],
     ) {
-        let near = |station: &f64| (station - at).abs() <= SAME_PLACE * member.length;
-        match member.stations.iter().position(near) {
+        match station_at(member, at) {
             Some(station) => self.nodal.push((member.along[station], joined(force, moment))),
             None => self.members[place].points.push(PointLoad {
                 at,
@@ -184,6 +183,12 @@ pub(super) fn cuts<'l>(member: &Member, cases: impl Iterator<Item = &'l MemberLo
     }
     out.sort_by(f64::total_cmp);
     out
+}
+
+/// The station of a member at a position, if there is one.
+pub(super) fn station_at(member: &Member, at: f64) -> Option<usize> {
+    let margin = SAME_PLACE * member.length;
+    member.stations.iter().position(|station| (station - at).abs() <= margin)
 }
 
 /// Components of a global vector along the local axes.

@@ -1,8 +1,9 @@
-//! Names a mechanism: which node moves, which way, with the members there.
+//! Names a mechanism inside a structure that is held as a whole (see `parts`): which node moves, which
+//! way, with the members there.
 
 use super::frame::{Frame, Place};
 use crate::diagnostic::Diagnostic;
-use crate::model::{Frame as Kind, Model, NodeId, StructureId};
+use crate::model::{Model, NodeId, StructureId};
 
 /// Translations below this share of the largest rotation times the structure's size do not count:
 /// the node only turns.
@@ -33,35 +34,16 @@ pub(super) fn named(
     } else {
         (frame.nodes[turning], format!("rotate about {}", ["X", "Y", "Z"][about]))
     };
-    let problem = if moves && together(&motions, axis) {
-        Diagnostic::error(
-            "mechanism",
-            format!(
-                "structure `{}` is not held: all of it can move along {}",
-                model[structure].name,
-                ["X", "Y", "Z"][axis]
-            ),
-        )
-    } else {
-        Diagnostic::error(
-            "mechanism",
-            format!(
-                "structure `{}` is a mechanism: node `{}` can {way}",
-                model[structure].name, model[node].name
-            ),
-        )
-    };
-    problem
-        .at(model[node].origin.clone())
-        .label(format!("{} here", members_at(model, frame, node)))
-        .hint(match model[structure].frame {
-            Kind::Plane => {
-                "hold it with a support, or take away a hinge; a plane frame needs at least three restraints that do not meet in one point".to_owned()
-            }
-            Kind::Space => {
-                "hold it with a support, or take away a hinge; a space frame needs at least six restraints, and a member whose ends both pass on no torque spins about its own axis".to_owned()
-            }
-        })
+    Diagnostic::error(
+        "mechanism",
+        format!(
+            "structure `{}` is a mechanism: node `{}` can {way}",
+            model[structure].name, model[node].name
+        ),
+    )
+    .at(model[node].origin.clone())
+    .label(format!("{} here", members_at(model, frame, node)))
+    .hint("take away a hinge, give it a spring, or hold the node with a support".to_owned())
 }
 
 /// The members that meet at a node, as a phrase.
@@ -91,12 +73,6 @@ fn largest(motions: &[[f64; 6]], offset: usize) -> (usize, usize, f64) {
         }
     }
     best
-}
-
-/// Every node moves alike along the axis.
-fn together(motions: &[[f64; 6]], axis: usize) -> bool {
-    let first = motions[0][axis];
-    motions.iter().all(|motion| (motion[axis] - first).abs() <= 1e-3 * first.abs())
 }
 
 /// Greatest extent of the structure, m.

@@ -14,6 +14,7 @@ mod hinge;
 mod loading;
 mod mechanism;
 mod member;
+mod parts;
 mod solution;
 mod solve;
 mod span;

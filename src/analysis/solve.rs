@@ -2,16 +2,18 @@
 
 use super::element::{Particular, Vector12};
 use super::frame::{Frame, Place, spring};
-use super::loading::{CaseLoads, cuts, gather};
+use super::loading::{CaseLoads, cuts, gather, station_at};
 use super::mechanism;
 use super::member::{Stretch, fields, particular, stretches};
 use super::span::deflections;
 use super::{Arithmetic, HandedForce, MemberSolution, NodeSolution, Segment, Solution};
 use crate::diagnostic::Diagnostic;
-use crate::model::{CaseId, Freedom, LoadKind, Model, NodeId, StructureId};
+use crate::model::{CaseId, Frame as Kind, Freedom, LoadKind, Model, NodeId, StructureId, Target};
 
 /// Largest left-over of K u = f, relative to the forces, that is taken for round-off.
 const RESIDUAL: f64 = 1e-6;
+/// A component below this share of the largest is round-off of turning vectors.
+const ROUND_OFF: f64 = 1e-9;
 
 pub(super) fn solve(model: &Model) -> Result<Solution, Vec<Diagnostic>> {
     let mut problems = Vec::new();
@@ -49,6 +51,10 @@ fn run(
         solution.arithmetic = Arithmetic::Fast;
     }
     let handed = handed_forces(model, structure, solution);
+    let strays = out_of_plane(model, structure, &handed);
+    if !strays.is_empty() {
+        return Err(strays);
+    }
     let cases: Vec<CaseLoads> = solution
         .states
         .iter()
@@ -219,13 +225,13 @@ impl Side {
         for (node, id) in frame.nodes.iter().enumerate() {
             let loaded = (3..6).any(|k| {
                 frame.places[node][k] == Place::Unattached
-                    && self.applied[node][k].abs() > 1e-9 * scale
+                    && self.applied[node][k].abs() > ROUND_OFF * scale
             });
             if loaded {
                 let origin = model[case]
                     .loads
                     .iter()
-                    .find(|load| matches!(&load.kind, LoadKind::Node { node, .. } if node == id))
+                    .find(|load| turns_node(model, &load.kind, *id))
                     .map_or(&model[case].origin, |load| &load.origin);
                 problems.push(
                     Diagnostic::error(
@@ -285,7 +291,23 @@ impl Side {
             .flat_map(|node| (0..6).map(move |k| (node, k)))
             .map(|(node, k)| left(node, k))
             .fold(0.0_f64, f64::max);
-        if scale.is_finite() && worst <= RESIDUAL * scale {
+        // `max` passes over NaN, so every number is looked at.
+        let finite = resisting.iter().chain(&self.applied).flatten().all(|force| force.is_finite())
+            && self.held.iter().flat_map(|held| held.iter()).all(|force| force.is_finite());
+        if !finite {
+            return Err(vec![
+                Diagnostic::error(
+                    "not-solvable",
+                    format!(
+                        "structure `{}` cannot be solved for case `{}`: the numbers grow too large",
+                        model[structure].name, model[case].name
+                    ),
+                )
+                .at(model[case].origin.clone())
+                .hint("look for a load or a stiffness with the wrong unit".to_owned()),
+            ]);
+        }
+        if worst <= RESIDUAL * scale {
             return Ok(());
         }
         Err(vec![
@@ -329,6 +351,53 @@ fn file_nodes(
     }
 }
 
+/// The load puts a moment on the node.
+fn turns_node(model: &Model, load: &LoadKind, id: NodeId) -> bool {
+    match load {
+        LoadKind::Node { node, moment, .. } => *node == id && moment.iter().any(|m| *m != 0.0),
+        LoadKind::Point { member, at, moment, .. } => {
+            station_at(&model[*member], *at)
+                .is_some_and(|station| model[*member].along[station] == id)
+                && moment.iter().any(|m| *m != 0.0)
+        }
+        LoadKind::Handed(handed) => match handed.to {
+            Target::Node(node) => node == id,
+            Target::Member(member) => handed.at.iter().any(|at| {
+                station_at(&model[member], *at)
+                    .is_some_and(|station| model[member].along[station] == id)
+            }),
+        },
+        _ => false,
+    }
+}
+
+/// Reactions handed on to a plane frame that would push it out of its plane.
+fn out_of_plane(model: &Model, structure: StructureId, handed: &[HandedForce]) -> Vec<Diagnostic> {
+    if model[structure].frame == Kind::Space {
+        return Vec::new();
+    }
+    let size = |values: &[f64]| values.iter().fold(0.0_f64, |most, value| most.max(value.abs()));
+    handed
+        .iter()
+        .filter(|own| {
+            let out = [own.force[1], own.moment[0], own.moment[2]];
+            size(&out) > ROUND_OFF * size(&own.force).max(size(&own.moment))
+        })
+        .map(|own| {
+            let load = &model[own.case].loads[own.load];
+            Diagnostic::error(
+                "out-of-plane",
+                format!(
+                    "the reaction handed on in case `{}` pushes plane frame `{}` out of its plane",
+                    model[own.case].name, model[structure].name
+                ),
+            )
+            .at(load.origin.clone())
+            .hint("write the receiving structure as a space frame, or hold the giving one so that it reacts in X-Z only".to_owned())
+        })
+        .collect()
+}
+
 /// The reactions that loads of this structure take from structures already solved.
 fn handed_forces(model: &Model, structure: StructureId, solution: &Solution) -> Vec<HandedForce> {
     let mut out = Vec::new();
@@ -336,8 +405,8 @@ fn handed_forces(model: &Model, structure: StructureId, solution: &Solution) -> 
         for (load, written) in model[*case].loads.iter().enumerate() {
             let LoadKind::Handed(handed) = &written.kind else { continue };
             let receiver = match handed.to {
-                crate::model::Target::Member(member) => model[member].structure,
-                crate::model::Target::Node(node) => model[node].structure,
+                Target::Member(member) => model[member].structure,
+                Target::Node(node) => model[node].structure,
             };
             if receiver != structure {
                 continue;

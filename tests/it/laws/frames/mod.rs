@@ -3,5 +3,6 @@
 mod build;
 mod hinges;
 mod imposed;
+mod mechanisms;
 mod sections;
 mod signs;
