@@ -67,6 +67,11 @@ impl Joined {
         Ok(Self { stiffness, element: *element, motion, released, compliance })
     }
 
+    /// Forces of the nodes on the element, from their displacements and its own held forces.
+    pub(super) fn forces(&self, nodes: &Vector12, element: &Vector12) -> Vector12 {
+        self.stiffness * nodes + self.held(element)
+    }
+
     /// Forces that the nodes must give the element when they are held and its loads act.
     pub(super) fn held(&self, element: &Vector12) -> Vector12 {
         element + self.element * self.relaxed(element)

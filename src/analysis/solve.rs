@@ -1,19 +1,22 @@
 //! Structures in order of dependency: right-hand sides, solution, reactions, fields.
 
-use super::element::{Particular, Vector12};
-use super::frame::{Frame, Place, spring};
-use super::loading::{CaseLoads, cuts, gather, station_at};
-use super::mechanism;
-use super::member::{Stretch, fields, particular, stretches};
+use std::cmp::Ordering;
+
+use super::fields::Fields;
+use super::frame::Frame;
+use super::handed::{handed_forces, out_of_plane};
+use super::loading::{CaseLoads, cuts, gather};
+use super::member::{Stretch, fields, stretches};
+use super::side::Side;
 use super::span::deflections;
-use super::{Arithmetic, HandedForce, MemberSolution, NodeSolution, Segment, Solution};
+use super::{Arithmetic, MemberSolution, NodeSolution, Segment, Solution};
 use crate::diagnostic::Diagnostic;
-use crate::model::{CaseId, Frame as Kind, Freedom, LoadKind, Model, NodeId, StructureId, Target};
+use crate::model::{CaseId, Freedom, Model, StructureId};
 
 /// Largest left-over of K u = f, relative to the forces, that is taken for round-off.
 const RESIDUAL: f64 = 1e-6;
 /// A component below this share of the largest is round-off of turning vectors.
-const ROUND_OFF: f64 = 1e-9;
+pub(super) const ROUND_OFF: f64 = 1e-9;
 
 pub(super) fn solve(model: &Model) -> Result<Solution, Vec<Diagnostic>> {
     let mut problems = Vec::new();
@@ -99,33 +102,32 @@ fn run(
     for (place, (loads, side)) in cases.iter().zip(&sides).enumerate() {
         let displacement = side.displacements(frame, &columns[place * frame.equations..]);
         let mut resisting = vec![[0.0; 6]; frame.nodes.len()];
+        let mut finite = true;
         for (index, element) in frame.elements.iter().enumerate() {
-            let turn = frame.turn(model, element);
             let nodes = frame.at_ends(model, element, &displacement);
             let held = &side.held[index];
             let forces =
-                turn.transpose() * (element.joined.stiffness * nodes + element.joined.held(held));
+                frame.turn(model, element).transpose() * element.joined.forces(&nodes, held);
             for k in 0..12 {
                 resisting[element.nodes[k / 6]][k % 6] += forces[k];
             }
             let ends = element.joined.ends(&nodes, held);
-            let start = element.ends.start(&ends, &side.particular[index]);
-            let member = &model[frame.members[element.member]];
-            let flexibility = &frame.flexibility[element.member];
             let own = fields(
-                &start,
+                &element.ends.start(&ends, &side.particular[index]),
                 &stretches[index],
                 &loads.members[element.member],
-                member.length,
-                flexibility,
+                model[frame.members[element.member]].length,
+                &frame.flexibility[element.member],
             );
-            let into = &mut segments[element.member];
-            let offset = into.iter().position(|segment| segment.from >= element.from).unwrap_or(0);
-            for (segment, polynomials) in into[offset..].iter_mut().zip(own) {
-                segment.states.push(polynomials);
-            }
+            finite &= own.iter().flat_map(|f| f.0.as_flattened()).all(|c| c.is_finite());
+            file_fields(&mut segments[element.member], element.from, own);
         }
-        side.sound(model, structure, frame, &resisting, solution.states[place])?;
+        let left = side.left_over(model, frame, &displacement, &resisting);
+        let left = if finite { left } else { f64::NAN };
+        // Written so that NaN is refused as well.
+        if !matches!(left.partial_cmp(&RESIDUAL), Some(Ordering::Less)) {
+            return Err(vec![refused(model, structure, solution.states[place], left)]);
+        }
         file_nodes(model, frame, &displacement, &resisting, side, solution);
     }
     for (place, id) in frame.members.iter().enumerate() {
@@ -136,193 +138,32 @@ fn run(
     Ok(())
 }
 
-/// One case's right-hand side, with what is needed to come back from the solution.
-struct Side {
-    equations: Vec<f64>,
-    /// Applied nodal forces along nodal axes.
-    applied: Vec<[f64; 6]>,
-    /// Prescribed displacements of held freedoms and movements of springs' ground ends.
-    ground: Vec<[f64; 6]>,
-    /// By element: end forces with the ends held, before hinges; and the particular solution.
-    held: Vec<Vector12>,
-    particular: Vec<Particular>,
+/// Files one case's fields of the element that starts at `from`.
+fn file_fields(segments: &mut [Segment], from: f64, fields: Vec<Fields>) {
+    let first = segments.partition_point(|segment| segment.from < from);
+    for (segment, own) in segments[first..].iter_mut().zip(fields) {
+        segment.states.push(own);
+    }
 }
 
-impl Side {
-    fn new(model: &Model, frame: &Frame, loads: &CaseLoads, stretches: &[Vec<Stretch>]) -> Self {
-        let place = |id: NodeId| frame.nodes.iter().position(|node| *node == id);
-        let mut applied = vec![[0.0; 6]; frame.nodes.len()];
-        for (id, force) in &loads.nodal {
-            if let Some(node) = place(*id) {
-                let own = frame.along(node, force);
-                for k in 0..6 {
-                    applied[node][k] += own[k];
-                }
-            }
-        }
-        let mut ground = vec![[0.0; 6]; frame.nodes.len()];
-        for (id, by) in &loads.displaced {
-            if let Some(node) = place(*id) {
-                for k in 0..6 {
-                    ground[node][k] += by[k].unwrap_or(0.0);
-                }
-            }
-        }
-        let mut out = Self {
-            equations: vec![0.0; frame.equations],
-            applied,
-            ground,
-            held: Vec::with_capacity(frame.elements.len()),
-            particular: Vec::with_capacity(frame.elements.len()),
-        };
-        let mut right = out.applied.clone();
-        for (node, id) in frame.nodes.iter().enumerate() {
-            for k in 0..6 {
-                right[node][k] += spring(model, *id, k) * out.ground[node][k];
-            }
-        }
-        for (index, element) in frame.elements.iter().enumerate() {
-            let member = &model[frame.members[element.member]];
-            let own = particular(
-                &stretches[index],
-                &loads.members[element.member],
-                member.length,
-                &frame.flexibility[element.member],
-            );
-            let held = element.ends.held(&own);
-            let turn = frame.turn(model, element);
-            let moved = Vector12::from_fn(|k, _| {
-                let (node, freedom) = (element.nodes[k / 6], k % 6);
-                if frame.places[node][freedom] == Place::Held {
-                    out.ground[node][freedom]
-                } else {
-                    0.0
-                }
-            });
-            let forces = turn.transpose()
-                * (element.joined.stiffness * (turn * moved) + element.joined.held(&held));
-            for k in 0..12 {
-                right[element.nodes[k / 6]][k % 6] -= forces[k];
-            }
-            out.held.push(held);
-            out.particular.push(own);
-        }
-        for (node, places) in frame.places.iter().enumerate() {
-            for (k, place) in places.iter().enumerate() {
-                if let Place::Equation(row) = place {
-                    out.equations[*row] = right[node][k];
-                }
-            }
-        }
-        out
-    }
-
-    /// Moments on nodes that nothing holds in that direction.
-    fn loose(&self, model: &Model, frame: &Frame, case: CaseId) -> Vec<Diagnostic> {
-        let scale =
-            self.applied.iter().flatten().fold(0.0_f64, |most, force| most.max(force.abs()));
-        let mut problems = Vec::new();
-        for (node, id) in frame.nodes.iter().enumerate() {
-            let loaded = (3..6).any(|k| {
-                frame.places[node][k] == Place::Unattached
-                    && self.applied[node][k].abs() > ROUND_OFF * scale
-            });
-            if loaded {
-                let origin = model[case]
-                    .loads
-                    .iter()
-                    .find(|load| turns_node(model, &load.kind, *id))
-                    .map_or(&model[case].origin, |load| &load.origin);
-                problems.push(
-                    Diagnostic::error(
-                        "load-on-hinge",
-                        format!(
-                            "case `{}` puts a moment on node `{}`, where every member is hinged",
-                            model[case].name, model[*id].name
-                        ),
-                    )
-                    .at(origin.clone())
-                    .label(format!(
-                        "{} here pass on no moment",
-                        mechanism::members_at(model, frame, *id)
-                    )),
-                );
-            }
-        }
-        problems
-    }
-
-    /// Displacements of all nodes along nodal axes.
-    fn displacements(&self, frame: &Frame, column: &[f64]) -> Vec<[f64; 6]> {
-        let own = |node: usize, k: usize| match frame.places[node][k] {
-            Place::Equation(row) => column[row],
-            Place::Held => self.ground[node][k],
-            Place::Unattached => 0.0,
-        };
-        (0..frame.nodes.len()).map(|node| std::array::from_fn(|k| own(node, k))).collect()
-    }
-
-    /// Refuses a solution that does not satisfy its own equations.
-    fn sound(
-        &self,
-        model: &Model,
-        structure: StructureId,
-        frame: &Frame,
-        resisting: &[[f64; 6]],
-        case: CaseId,
-    ) -> Result<(), Vec<Diagnostic>> {
-        let scale = resisting
-            .iter()
-            .chain(&self.applied)
-            .flatten()
-            .chain(self.held.iter().flat_map(|held| held.iter()))
-            .fold(0.0_f64, |most, force| most.max(force.abs()));
-        let left = |node: usize, k: usize| {
-            let spring = spring(model, frame.nodes[node], k);
-            match frame.places[node][k] {
-                // A spring's force is found from this very equation; see `file_nodes`.
-                Place::Equation(_) if spring <= 0.0 => {
-                    (resisting[node][k] - self.applied[node][k]).abs()
-                }
-                _ => 0.0,
-            }
-        };
-        let worst = (0..frame.nodes.len())
-            .flat_map(|node| (0..6).map(move |k| (node, k)))
-            .map(|(node, k)| left(node, k))
-            .fold(0.0_f64, f64::max);
-        // `max` passes over NaN, so every number is looked at.
-        let finite = resisting.iter().chain(&self.applied).flatten().all(|force| force.is_finite())
-            && self.held.iter().flat_map(|held| held.iter()).all(|force| force.is_finite());
-        if !finite {
-            return Err(vec![
-                Diagnostic::error(
-                    "not-solvable",
-                    format!(
-                        "structure `{}` cannot be solved for case `{}`: the numbers grow too large",
-                        model[structure].name, model[case].name
-                    ),
-                )
-                .at(model[case].origin.clone())
-                .hint("look for a load or a stiffness with the wrong unit".to_owned()),
-            ]);
-        }
-        if worst <= RESIDUAL * scale {
-            return Ok(());
-        }
-        Err(vec![
-            Diagnostic::error(
-                "not-solvable",
-                format!(
-                    "structure `{}` cannot be solved accurately for case `{}`: forces out of balance by {:.1e} of the largest",
-                    model[structure].name,
-                    model[case].name,
-                    worst / scale
-                ),
-            )
-            .at(model[structure].origin.clone())
-            .hint("stiffnesses that differ by too many orders of magnitude, or nearly a mechanism".to_owned()),
-        ])
+/// Why a solution is not given.
+fn refused(model: &Model, structure: StructureId, case: CaseId, left_over: f64) -> Diagnostic {
+    let (structure, case) = (&model[structure], &model[case]);
+    let whose = format!("structure `{}` cannot be solved for case `{}`", structure.name, case.name);
+    if left_over.is_finite() {
+        Diagnostic::error(
+            "not-solvable",
+            format!("{whose}: forces out of balance by {left_over:.1e} of the largest"),
+        )
+        .at(structure.origin.clone())
+        .hint(
+            "its stiffnesses differ by too many orders of magnitude, or it is nearly a mechanism"
+                .to_owned(),
+        )
+    } else {
+        Diagnostic::error("not-solvable", format!("{whose}: the numbers grow too large"))
+            .at(case.origin.clone())
+            .hint("look for a load or a stiffness with the wrong unit".to_owned())
     }
 }
 
@@ -349,82 +190,6 @@ fn file_nodes(
             }));
         }
     }
-}
-
-/// The load puts a moment on the node.
-fn turns_node(model: &Model, load: &LoadKind, id: NodeId) -> bool {
-    match load {
-        LoadKind::Node { node, moment, .. } => *node == id && moment.iter().any(|m| *m != 0.0),
-        LoadKind::Point { member, at, moment, .. } => {
-            station_at(&model[*member], *at)
-                .is_some_and(|station| model[*member].along[station] == id)
-                && moment.iter().any(|m| *m != 0.0)
-        }
-        LoadKind::Handed(handed) => match handed.to {
-            Target::Node(node) => node == id,
-            Target::Member(member) => handed.at.iter().any(|at| {
-                station_at(&model[member], *at)
-                    .is_some_and(|station| model[member].along[station] == id)
-            }),
-        },
-        _ => false,
-    }
-}
-
-/// Reactions handed on to a plane frame that would push it out of its plane.
-fn out_of_plane(model: &Model, structure: StructureId, handed: &[HandedForce]) -> Vec<Diagnostic> {
-    if model[structure].frame == Kind::Space {
-        return Vec::new();
-    }
-    let size = |values: &[f64]| values.iter().fold(0.0_f64, |most, value| most.max(value.abs()));
-    handed
-        .iter()
-        .filter(|own| {
-            let out = [own.force[1], own.moment[0], own.moment[2]];
-            size(&out) > ROUND_OFF * size(&own.force).max(size(&own.moment))
-        })
-        .map(|own| {
-            let load = &model[own.case].loads[own.load];
-            Diagnostic::error(
-                "out-of-plane",
-                format!(
-                    "the reaction handed on in case `{}` pushes plane frame `{}` out of its plane",
-                    model[own.case].name, model[structure].name
-                ),
-            )
-            .at(load.origin.clone())
-            .hint("write the receiving structure as a space frame, or hold the giving one so that it reacts in X-Z only".to_owned())
-        })
-        .collect()
-}
-
-/// The reactions that loads of this structure take from structures already solved.
-fn handed_forces(model: &Model, structure: StructureId, solution: &Solution) -> Vec<HandedForce> {
-    let mut out = Vec::new();
-    for (place, case) in solution.states.iter().enumerate() {
-        for (load, written) in model[*case].loads.iter().enumerate() {
-            let LoadKind::Handed(handed) = &written.kind else { continue };
-            let receiver = match handed.to {
-                Target::Member(member) => model[member].structure,
-                Target::Node(node) => model[node].structure,
-            };
-            if receiver != structure {
-                continue;
-            }
-            let Some(own) = solution.nodes[handed.from.0].reaction.get(place) else { continue };
-            let axes = model[handed.from].support.as_ref().map(|support| support.axes);
-            let turned = |offset: usize| -> [f64; 3] {
-                std::array::from_fn(|axis| match axes {
-                    Some(rows) => {
-                        -(0..3).map(|row| rows[row][axis] * own[offset + row]).sum::<f64>()
-                    }
-                    None => -own[offset + axis],
-                })
-            };
-            out.push(HandedForce { case: *case, load, force: turned(0), moment: turned(3) });
-        }
-    }
-    out
 }
 
 fn empty_segments(model: &Model, frame: &Frame, stretches: &[Vec<Stretch>]) -> Vec<Vec<Segment>> {

@@ -4,5 +4,7 @@ mod build;
 mod hinges;
 mod imposed;
 mod mechanisms;
+mod plan;
+mod random;
 mod sections;
 mod signs;
