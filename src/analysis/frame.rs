@@ -82,7 +82,7 @@ impl Frame {
                     flexibility.push(section);
                     elements.extend(pieces);
                 }
-                Err(problem) => problems.push(problem),
+                Err(more) => problems.extend(more),
             }
         }
         if !problems.is_empty() {
@@ -159,10 +159,9 @@ impl Frame {
                     }
                 }
             } else {
-                for k in (0..3).filter(|k| free[3 + k]) {
-                    if block[(k, k)] <= UNATTACHED * scale[node] {
-                        self.places[node][3 + k] = Place::Unattached;
-                    }
+                let limit = UNATTACHED * scale[node];
+                for k in left_over(block, [free[3], free[4], free[5]], limit) {
+                    self.places[node][3 + k] = Place::Unattached;
                 }
             }
         }
@@ -269,6 +268,28 @@ fn free_freedoms(model: &Model, structure: StructureId, node: NodeId) -> [bool; 
     })
 }
 
+/// The free rotations that stay without stiffness when the others are eliminated, largest pivot first.
+/// Held at nothing, they change no force: the same force follows from any choice of what is not resisted.
+fn left_over(mut block: Matrix3<f64>, free: [bool; 3], limit: f64) -> Vec<usize> {
+    let mut open: Vec<usize> = (0..3).filter(|k| free[*k]).collect();
+    while let Some(place) = (0..open.len())
+        .max_by(|a, b| block.diagonal()[open[*a]].total_cmp(&block.diagonal()[open[*b]]))
+    {
+        let pivot = open[place];
+        if block[(pivot, pivot)] <= limit {
+            break;
+        }
+        open.remove(place);
+        for row in &open {
+            let factor = block[(*row, pivot)] / block[(pivot, pivot)];
+            for column in &open {
+                block[(*row, *column)] -= factor * block[(pivot, *column)];
+            }
+        }
+    }
+    open
+}
+
 fn node_axes(model: &Model, node: NodeId) -> NodeAxes {
     let own = model[node].support.as_ref().map_or(Matrix3::identity(), |s| rows(&s.axes));
     NodeAxes { translation: own, rotation: own }
@@ -290,16 +311,16 @@ fn elements_of(
     member: &Member,
     place: usize,
     nodes: &[NodeId],
-) -> Result<(Flexibility, Vec<Element>), Diagnostic> {
+) -> Result<(Flexibility, Vec<Element>), Vec<Diagnostic>> {
     let weak = || {
-        Diagnostic::error(
+        vec![Diagnostic::error(
             "no-stiffness",
             format!(
                 "member `{}` has no usable stiffness: section `{}` and material `{}` give values that cannot be inverted",
                 member.name, model[member.section].name, model[member.material].name
             ),
         )
-        .at(member.origin.clone())
+        .at(member.origin.clone())]
     };
     let flexibility =
         Flexibility::new(&model[member.section], &model[member.material]).ok_or_else(weak)?;
@@ -312,7 +333,7 @@ fn elements_of(
         let releases =
             [released(member, kind, piece, true), released(member, kind, piece + 1, false)];
         let joined =
-            Joined::new(&ends.stiffness, &releases).map_err(|loose| spins(member, loose))?;
+            Joined::new(&ends.stiffness, &releases).map_err(|loose| vec![spins(member, loose)])?;
         let node = |station: usize| nodes.iter().position(|id| *id == member.along[station]);
         let (Some(start), Some(end)) = (node(piece), node(piece + 1)) else { return Err(weak()) };
         elements.push(Element { member: place, nodes: [start, end], from, to, ends, joined });

@@ -159,7 +159,7 @@ impl Side {
         }
         let mut worst = 0.0_f64;
         for (node, id) in frame.nodes.iter().enumerate() {
-            for k in (0..6).filter(|k| matches!(frame.places[node][*k], Place::Equation(_))) {
+            for k in (0..6).filter(|k| frame.places[node][*k] != Place::Held) {
                 let sprung = spring(model, *id, k) * (displacement[node][k] - self.ground[node][k]);
                 worst = worst.max((resisting[node][k] + sprung - self.applied[node][k]).abs());
             }

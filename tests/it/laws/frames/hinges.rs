@@ -154,3 +154,22 @@ fn a_spring_support_gives_way_by_force_over_stiffness() {
     // Deflection from the chord does not feel the support give way.
     close(beam.after(0, Effect::Dz, 3.0), -5.0 * 10.0 * 1296.0 / (384.0 * EI), 0.0);
 }
+
+#[test]
+fn a_node_held_against_twist_needs_no_further_hold_where_an_oblique_member_is_hinged() {
+    // What the hinge still passes on is torque about an oblique axis: one direction out of the two free ones.
+    let release = [(Effect::My, Release::Free), (Effect::Mz, Release::Free)];
+    let beam = space()
+        .node("A", [0.0; 3])
+        .node("B", [2.0, 2.0, 1.0])
+        .support("A", FORK)
+        .support("B", FIXED)
+        .member("B1", &["A", "B"])
+        .hinge(0, &release)
+        .case(vec![point(0, 1.5, [0.0, 0.0, -9.0])])
+        .solve();
+    // A propped cantilever of length 3, a = b = 1.5, force across the member 9·√8/3: R = 5 P/16.
+    let across = 9.0 * 8.0_f64.sqrt() / 3.0;
+    close(beam.after(0, Effect::Vz, 0.0), 5.0 / 16.0 * across, 0.0);
+    close(beam.after(0, Effect::T, 0.0), 0.0, 9.0);
+}

@@ -25,13 +25,13 @@ impl Plan {
     }
 
     pub(super) fn build(&self) -> Build {
-        self.build_with(&|_, build, name, along| build.member(name, &along))
+        self.build_with(|_, build, name, along| build.member(name, &along))
     }
 
     /// `member` adds one member (index, name, its two nodes).
     pub(super) fn build_with(
         &self,
-        member: &dyn Fn(usize, Build, &str, [&str; 2]) -> Build,
+        member: impl Fn(usize, Build, &str, [&str; 2]) -> Build,
     ) -> Build {
         let names: Vec<String> = (0..self.nodes.len()).map(|k| format!("N{k}")).collect();
         let mut build = space().section(skew());

@@ -303,7 +303,7 @@ proptest! {
             }
         }
         // The section is the same body: seen along the other way its product of inertia changes sign.
-        let mut mirrored = turned.build_with(&|index, build, name, [a, b]| {
+        let mut mirrored = turned.build_with(|index, build, name, [a, b]| {
             if index == first { build.member(name, &[b, a]) } else { build.member(name, &[a, b]) }
         });
         let model = &mut mirrored.0;

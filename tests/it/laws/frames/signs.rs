@@ -54,7 +54,7 @@ fn a_column_pushed_along_x_has_tension_on_its_minus_z_face() {
         .member("C1", &["A", "B"])
         .case(vec![on_node(1, [5.0, 0.0, 0.0], [0.0; 3])])
         .solve();
-    assert_eq!(column.model.members[0].axes[2], [-1.0, 0.0, 0.0]);
+    close(column.model.members[0].axes[2][0], -1.0, 0.0);
     close(column.after(0, Effect::My, 0.0), -15.0, 0.0);
     close(column.after(0, Effect::Vz, 0.0), 5.0, 0.0);
     assert!(column.before(0, Effect::W, 3.0) < 0.0);
