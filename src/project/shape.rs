@@ -118,14 +118,15 @@ impl Walk<'_> {
                 Some(most) => format!("{least} to {most}"),
                 None => format!("at least {least}"),
             };
-            let entries = if wanted == "at least 1" { "entry" } else { "entries" };
+            let entries = |one: bool| if one { "entry" } else { "entries" };
+            let (given, wants) = (entries(items.len() == 1), entries(wanted == "at least 1"));
             self.found.push(
                 self.error(
                     "wrong-count",
-                    format!("{} has {} entries, not {wanted}", spot.what, items.len()),
+                    format!("{} has {} {given}, not {wanted}", spot.what, items.len()),
                     &node.range,
                 )
-                .label(format!("expected {wanted} {entries}")),
+                .label(format!("expected {wanted} {wants}")),
             );
         }
         let what = format!("an entry of {}", spot.what);

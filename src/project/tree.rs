@@ -267,6 +267,10 @@ impl Builder<'_> {
 
     fn syntax(&self, error: &ScanError) -> Diagnostic {
         let at = self.bytes.at(error.marker().index());
+        // Of brackets the scanner reads on ahead and stops at its own limit, which is higher than ours.
+        if error.info() == "recursion limit exceeded" {
+            return too_deep(at..at);
+        }
         let open = self.open.iter().rev().find(|open| open.flow).map(|open| {
             let start = open.node.range.start;
             let bracket = &self.bytes.text[start..=start];

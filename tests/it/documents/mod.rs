@@ -1,2 +1,6 @@
-//! What the program writes: drawings and packages.
+//! Files that the program reads and writes: project files, drawings and packages.
+
 mod figures;
+mod project_file;
+mod project_schema;
+mod project_untrusted;
