@@ -196,7 +196,7 @@ impl Walk<'_> {
     fn form(&mut self, entries: &Map<Node>, table: &Table, at: &Range<usize>) {
         let here = |key: &&str| entries.contains_key(*key);
         let deciding: Vec<&Form> =
-            table.forms.iter().filter(|form| form.when.iter().any(|key| here(&key))).collect();
+            table.forms.iter().filter(|form| form.when.iter().any(here)).collect();
         let Some(first) = deciding.first() else {
             let mut names: Vec<&str> =
                 table.forms.iter().flat_map(|form| form.when).copied().collect();

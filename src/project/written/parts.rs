@@ -202,7 +202,7 @@ pub enum Support {
     /// pinned, fork or fixed.
     Word(Word<SupportKind>),
     /// A kind with more said about it, or per freedom.
-    Map(SupportMap),
+    Map(Box<SupportMap>),
 }
 
 /// Each freedom is `fixed` or a spring; a freedom not named is free, or as the kind has it.

@@ -19,7 +19,6 @@ macro_rules! plain {
     ($($(#[$doc:meta])* $name:ident { $($variant:ident),* $(,)? })*) => {$(
         $(#[$doc])*
         #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-        #[expect(missing_docs, reason = "the words below say what each is")]
         pub enum $name { $($variant),* }
     )*};
 }

@@ -8,12 +8,12 @@ use spanfolio::project;
 use super::project_file::{GOOD, SHAPE_ERRORS, edited};
 
 fn validator() -> jsonschema::Validator {
-    jsonschema::draft202012::new(&project::schema()).unwrap()
+    jsonschema::draft202012::new(&project::schema()).expect("the schema is one")
 }
 
 /// As a YAML reader without our care sees it.
 fn json(yaml: &str) -> Value {
-    serde_yaml::from_str(yaml).unwrap()
+    serde_yaml::from_str(yaml).expect("the file is YAML")
 }
 
 #[test]
@@ -64,4 +64,23 @@ fn every_key_has_its_help() {
         without(name, definition, &mut found);
     }
     assert!(found.is_empty(), "{found:?}");
+}
+
+#[test]
+fn every_key_stands_in_some_form() {
+    let schema = project::schema();
+    let material = &schema["properties"]["materials"]["additionalProperties"];
+    let tabled = schema["$defs"].as_object().unwrap().values().chain([&schema, material]);
+    for definition in tabled.filter(|definition| definition["oneOf"].is_array()) {
+        let forms = definition["oneOf"].as_array().unwrap();
+        for key in definition["properties"].as_object().unwrap().keys() {
+            let takes = |form: &Value| {
+                form["propertyNames"]["enum"]
+                    .as_array()
+                    .unwrap()
+                    .contains(&Value::from(key.as_str()))
+            };
+            assert!(forms.iter().any(takes), "{key} of {}", definition["description"]);
+        }
+    }
 }
