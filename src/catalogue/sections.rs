@@ -187,6 +187,19 @@ impl Rule {
                 },
                 ..properties
             },
+            Self::BritishI | Self::AmericanI => {
+                let arm = row.number("h")? - row.number("t_f")?;
+                Properties {
+                    i_w: Some(properties.i_z * arm * arm / 4.0),
+                    methods: section::Methods {
+                        warping: Some(
+                            "I_w = I_z (h - t_f)²/4, as the British and US tables have it; shear centre by symmetry",
+                        ),
+                        ..properties.methods
+                    },
+                    ..properties
+                }
+            }
             Self::Channel => Properties {
                 i_t: row.number("I_t")?,
                 i_w: Some(row.number("I_w")?),

@@ -15,22 +15,23 @@ pub(super) fn polygon(
     if points.len() + holes.iter().map(Vec::len).sum::<usize>() > MOST_POINTS {
         return Err(ShapeError::new("points", format!("more than {MOST_POINTS} points")));
     }
-    let mut loops = vec![lines("points", points, false)?];
+    let mut loops = vec![ordered("points", points, false)?];
     for hole in holes {
-        loops.push(lines("holes", hole, true)?);
+        loops.push(ordered("holes", hole, true)?);
     }
     simple(&loops)?;
     for hole in &loops[1..] {
-        if !inside(start(&hole[0]), &loops[0]) {
+        if !inside(hole[0], &loops[0]) {
             return Err(ShapeError::new("holes", "a hole lies outside the polygon"));
         }
     }
     for (i, hole) in loops[1..].iter().enumerate() {
-        if loops[1..].iter().enumerate().any(|(j, o)| i != j && inside(start(&hole[0]), o)) {
+        if loops[1..].iter().enumerate().any(|(j, o)| i != j && inside(hole[0], o)) {
             return Err(ShapeError::new("holes", "a hole lies inside another"));
         }
     }
-    let section = integral::properties(&loops);
+    let section =
+        integral::properties(&loops.iter().map(|corners| lines(corners)).collect::<Vec<_>>());
     let (i_t, method) = match torsion_constant {
         Some(given) if given > 0.0 && given.is_finite() => (given, None),
         Some(_) => {
@@ -49,8 +50,8 @@ pub(super) fn polygon(
     Ok(Properties { i_t, methods: Methods { torsion: method, ..Methods::default() }, ..section })
 }
 
-/// Edges of one loop, turned the right way round.
-fn lines(key: &'static str, points: &[Point], hole: bool) -> Result<Vec<Edge>, ShapeError> {
+/// Corners of one loop, turned the right way round.
+fn ordered(key: &'static str, points: &[Point], hole: bool) -> Result<Vec<Point>, ShapeError> {
     let n = points.len();
     if n < 3 {
         return Err(ShapeError::new(key, format!("`{key}` needs at least three points to a loop")));
@@ -70,17 +71,23 @@ fn lines(key: &'static str, points: &[Point], hole: bool) -> Result<Vec<Edge>, S
     if (area < 0.0) != hole {
         ordered.reverse();
     }
-    Ok((0..n).map(|i| Edge::Line(ordered[i], ordered[(i + 1) % n])).collect())
+    Ok(ordered)
+}
+
+fn sides(corners: &[Point]) -> impl Iterator<Item = (Point, Point)> {
+    (0..corners.len()).map(|i| (corners[i], corners[(i + 1) % corners.len()]))
+}
+
+fn lines(corners: &[Point]) -> Vec<Edge> {
+    sides(corners).map(|(a, b)| Edge::Line(a, b)).collect()
 }
 
 /// No edge crosses or touches another that is not its neighbour, in and between loops.
-fn simple(loops: &[Vec<Edge>]) -> Result<(), ShapeError> {
+fn simple(loops: &[Vec<Point>]) -> Result<(), ShapeError> {
     let all: Vec<(usize, usize, Point, Point)> = loops
         .iter()
         .enumerate()
-        .flat_map(|(l, edges)| {
-            edges.iter().enumerate().map(move |(i, edge)| (l, i, start(edge), end(edge)))
-        })
+        .flat_map(|(l, corners)| sides(corners).enumerate().map(move |(i, (a, b))| (l, i, a, b)))
         .collect();
     for (k, &(l, i, a, b)) in all.iter().enumerate() {
         for &(m, j, c, d) in &all[k + 1..] {
@@ -110,20 +117,6 @@ fn simple(loops: &[Vec<Edge>]) -> Result<(), ShapeError> {
     Ok(())
 }
 
-fn start(edge: &Edge) -> Point {
-    match *edge {
-        Edge::Line(a, _) => a,
-        Edge::Arc { centre, .. } => centre,
-    }
-}
-
-fn end(edge: &Edge) -> Point {
-    match *edge {
-        Edge::Line(_, b) => b,
-        Edge::Arc { centre, .. } => centre,
-    }
-}
-
 /// Twice the signed area of a triangle.
 fn cross(a: Point, b: Point, c: Point) -> f64 {
     (b[0] - a[0]) * (c[1] - a[1]) - (b[1] - a[1]) * (c[0] - a[0])
@@ -139,12 +132,10 @@ fn crosses(a: Point, b: Point, c: Point, d: Point) -> bool {
     [0, 1].into_iter().all(|k| a[k].min(b[k]) <= c[k].max(d[k]) && c[k].min(d[k]) <= a[k].max(b[k]))
 }
 
-/// Counts the edges crossed on the way out along +y.
-fn inside(point: Point, edges: &[Edge]) -> bool {
-    edges
-        .iter()
-        .filter(|edge| {
-            let (a, b) = (start(edge), end(edge));
+/// Counts the sides crossed on the way out along +y.
+fn inside(point: Point, corners: &[Point]) -> bool {
+    sides(corners)
+        .filter(|(a, b)| {
             (a[1] > point[1]) != (b[1] > point[1])
                 && a[0] + (point[1] - a[1]) * (b[0] - a[0]) / (b[1] - a[1]) > point[0]
         })

@@ -3,3 +3,4 @@
 mod frames;
 mod module_order;
 mod quantities;
+mod sections;

@@ -1,6 +1,7 @@
 //! Printed values from outside the project, run through the real project-file path.
 
 mod case;
+mod catalogue;
 mod compare;
 mod families;
 mod sections;
