@@ -1,7 +1,28 @@
 //! From the file as written to the Model: quantities parsed, names resolved, everything wrong collected.
+//!
+//! Invariants
+//! - One run reports every problem; whatever depends on something already reported stays silent.
+//! - A Model is built only when nothing was found.
+//! - Axes, spans, positions and dimensions are checked here, once; nothing later checks them again.
 
+mod about;
+mod cases;
+mod combinations;
+mod geometry;
+mod loads;
+mod materials;
+mod members;
+mod names;
+mod order;
+mod reader;
+mod sections;
+mod structures;
+mod supports;
+mod warnings;
+
+use self::reader::Reader;
 use super::written;
-use crate::diagnostic::Diagnostic;
+use crate::diagnostic::{Diagnostic, Severity};
 use crate::model::Model;
 
 /// Resolves a project without shape problems.
@@ -11,5 +32,44 @@ use crate::model::Model;
 pub(super) fn resolve(
     project: &written::Project,
 ) -> Result<(Model, Vec<Diagnostic>), Vec<Diagnostic>> {
-    todo!("{}", project.format)
+    let mut reader = Reader::default();
+    about::format(&mut reader, &project.format);
+    let (units, significant) = about::printing(&mut reader, project);
+    let mut model = Model {
+        project: about::project(&mut reader, &project.project),
+        basis: about::basis(&mut reader, &project.basis),
+        units,
+        significant,
+        shear_deformation: project.shear_deformation.unwrap_or(true),
+        analysis: about::analysis(),
+        package: about::package(project.package.as_ref()),
+        values: about::values(&mut reader, &project.values),
+        build_ups: about::build_ups(&mut reader, &project.build_ups),
+        materials: materials::materials(&mut reader, &project.materials),
+        sections: Vec::new(),
+        structures: Vec::new(),
+        solve_order: Vec::new(),
+        nodes: Vec::new(),
+        members: Vec::new(),
+        cases: Vec::new(),
+        combinations: Vec::new(),
+    };
+    model.sections =
+        sections::sections(&mut reader, &project.sections, model.shear_deformation);
+    structures::structures(&mut reader, project, &mut model);
+    about::drawn(&mut reader, project.package.as_ref(), &model);
+    cases::cases(&mut reader, &project.load_cases, &mut model);
+    combinations::combinations(&mut reader, &project.combinations, &mut model);
+    order::solve_order(&mut reader, &mut model);
+
+    let mut found = reader.found;
+    if found.is_empty() {
+        let warnings = warnings::warnings(&model);
+        return Ok((model, warnings));
+    }
+    found.sort_by_key(|problem| {
+        (problem.severity != Severity::Error, problem.place.as_ref().map(|place| place.range.start))
+    });
+    found.dedup();
+    Err(found)
 }
