@@ -25,7 +25,11 @@ pub(super) fn format(reader: &mut Reader, format: &Text) {
             .at(format.place())
             .hint("use a newer version of the program".to_owned()),
         ),
-        _ => reader.error("format", format!("`{format}` is not a format of this file: write 1"), format.place()),
+        _ => reader.error(
+            "format",
+            format!("`{format}` is not a format of this file: write 1"),
+            format.place(),
+        ),
     }
 }
 
@@ -121,7 +125,10 @@ pub(super) fn basis(reader: &mut Reader, written: &written::Basis) -> Basis {
 /// Units and significant digits.
 pub(super) fn printing(reader: &mut Reader, project: &written::Project) -> (Units, usize) {
     let system = project.units.get("system").map_or(System::Si, |word| {
-        System::WORDS.iter().find(|(name, _)| *name == word.as_str()).map_or(System::Si, |(_, is)| *is)
+        System::WORDS
+            .iter()
+            .find(|(name, _)| *name == word.as_str())
+            .map_or(System::Si, |(_, is)| *is)
     });
     let mut units = Units::new(system);
     for (name, unit) in project.units.iter().filter(|(name, _)| name.as_str() != "system") {
@@ -130,8 +137,11 @@ pub(super) fn printing(reader: &mut Reader, project: &written::Project) -> (Unit
             Ok(parsed) => {
                 if units.set(kind, parsed).is_err() {
                     reader.problem(
-                        Diagnostic::error("wrong-dimension", format!("`{unit}` is not a unit of {}", kind.description()))
-                            .at(unit.place()),
+                        Diagnostic::error(
+                            "wrong-dimension",
+                            format!("`{unit}` is not a unit of {}", kind.description()),
+                        )
+                        .at(unit.place()),
                     );
                 }
             }
@@ -166,7 +176,9 @@ pub(super) fn package(written: Option<&written::Package>) -> PackageSettings {
             Some(written::Draw::List(names)) => {
                 Draw::Named(names.iter().map(ToString::to_string).collect())
             }
-            Some(written::Draw::Word(word)) if word.is == words::DrawWord::Governing => Draw::Governing,
+            Some(written::Draw::Word(word)) if word.is == words::DrawWord::Governing => {
+                Draw::Governing
+            }
             _ => Draw::All,
         },
         moments: written

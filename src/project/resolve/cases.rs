@@ -4,9 +4,7 @@ use super::about::words;
 use super::loads;
 use super::names::Names;
 use super::reader::Reader;
-use crate::model::{
-    Direction, Load, LoadCase, LoadForm, LoadKind, MemberId, Model, Per, Written,
-};
+use crate::model::{Direction, Load, LoadCase, LoadForm, LoadKind, MemberId, Model, Per, Written};
 use crate::project::text::{Map, Text};
 use crate::project::written;
 use crate::quantity::STANDARD_GRAVITY;
@@ -39,19 +37,17 @@ fn weighted(reader: &mut Reader, case: &written::LoadCase, model: &Model) -> Vec
     match &case.self_weight {
         None | Some(written::SelfWeight::Word(false)) => Vec::new(),
         Some(written::SelfWeight::Word(true)) => (0..model.members.len()).map(MemberId).collect(),
-        Some(written::SelfWeight::List(names)) => names
-            .iter()
-            .filter_map(|name| loads::member(reader, model, name))
-            .collect(),
+        Some(written::SelfWeight::List(names)) => {
+            names.iter().filter_map(|name| loads::member(reader, model, name)).collect()
+        }
     }
 }
 
 /// ρ A g, downward over the whole member.
 fn self_weight(model: &Model, id: MemberId, case: &Text) -> Load {
     let member = &model[id];
-    let weight = model[member.material].density
-        * model[member.section].properties.area
-        * STANDARD_GRAVITY;
+    let weight =
+        model[member.material].density * model[member.section].properties.area * STANDARD_GRAVITY;
     Load {
         kind: LoadKind::Line {
             member: id,

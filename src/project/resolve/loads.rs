@@ -24,8 +24,7 @@ pub(super) fn load(
     written: &Located<written::Load>,
 ) -> Vec<Load> {
     let names = written.member.iter().chain(written.members.iter().flatten());
-    let members: Vec<MemberId> =
-        names.filter_map(|name| member(reader, model, name)).collect();
+    let members: Vec<MemberId> = names.filter_map(|name| member(reader, model, name)).collect();
     let node = written.node.as_ref().and_then(|name| any_node(reader, model, name));
     let source = super::about::words(written.source.as_ref());
     let mut out = Vec::new();
@@ -82,7 +81,8 @@ fn on_node(
     let plane = model[model[node].structure].frame == Frame::Plane;
     if let Some(from) = &written.reaction_of {
         let giver = giver(reader, model, from, model[node].structure)?;
-        for text in [&written.at, &written.every, &written.from, &written.to].into_iter().flatten() {
+        for text in [&written.at, &written.every, &written.from, &written.to].into_iter().flatten()
+        {
             reader.error(
                 "off-member",
                 "a reaction handed to a node has no place along a member",
@@ -130,7 +130,10 @@ fn displaced(
             reader.problem(
                 Diagnostic::error(
                     "free-direction",
-                    format!("node `{}` is free along {axis}: no ground moves it there", model[node].name),
+                    format!(
+                        "node `{}` is free along {axis}: no ground moves it there",
+                        model[node].name
+                    ),
                 )
                 .at(text.place())
                 .hint("displace a fixed or sprung freedom of a support".to_owned()),
@@ -154,7 +157,10 @@ fn on_member(
         reader.problem(
             Diagnostic::error(
                 "axial-only",
-                format!("member `{}` carries axial force only: it takes no load along its length", model[id].name),
+                format!(
+                    "member `{}` carries axial force only: it takes no load along its length",
+                    model[id].name
+                ),
             )
             .at(written.place())
             .hint("put the load on its nodes".to_owned()),
@@ -166,7 +172,10 @@ fn on_member(
     }
     if let Some(text) = &written.lack_of_fit {
         let length = reader.quantity(text, Kind::Deflection)?;
-        return Some((LoadKind::LackOfFit { member: id, length }, said(LoadForm::LackOfFit, vec![length])));
+        return Some((
+            LoadKind::LackOfFit { member: id, length },
+            said(LoadForm::LackOfFit, vec![length]),
+        ));
     }
     let stretch = stretch(reader, model, written, id)?;
     if let Some(from) = &written.reaction_of {
@@ -178,7 +187,11 @@ fn on_member(
         let direction = direction(reader, model, written, id)?;
         let (value, at) = (value?, at?);
         let force = scaled(direction.1, value);
-        let said = Written { direction: direction.0, span: stretch.span, ..said(LoadForm::Point, vec![value]) };
+        let said = Written {
+            direction: direction.0,
+            span: stretch.span,
+            ..said(LoadForm::Point, vec![value])
+        };
         return Some((LoadKind::Point { member: id, at, force, moment: [0.0; 3] }, said));
     }
     if let Some(text) = &written.point_moment {
@@ -242,11 +255,15 @@ fn line(
             let along = dot(model[id].axes[0], direction.1);
             let ratio = (1.0 - along * along).max(0.0).sqrt();
             if ratio <= 1e-6 {
-                let place = written.per.as_ref().map_or_else(|| written.place(), |word| word.place());
+                let place =
+                    written.per.as_ref().map_or_else(|| written.place(), |word| word.place());
                 reader.problem(
                     Diagnostic::error(
                         "no-projection",
-                        format!("member `{}` runs along the load: its projected length is zero", model[id].name),
+                        format!(
+                            "member `{}` runs along the load: its projected length is zero",
+                            model[id].name
+                        ),
                     )
                     .at(place),
                 );
@@ -262,7 +279,11 @@ fn line(
     let from = from.unwrap_or(Some(stretch.from))?;
     let to = to.unwrap_or(Some(stretch.to))?;
     if to - from <= END * model[id].length {
-        let place = written.to.as_ref().or(written.from.as_ref()).map_or_else(|| written.place(), Text::place);
+        let place = written
+            .to
+            .as_ref()
+            .or(written.from.as_ref())
+            .map_or_else(|| written.place(), Text::place);
         reader.error("empty-stretch", "the load ends where it begins, or before", place);
         return None;
     }
@@ -301,8 +322,11 @@ fn handed(
         }
         _ => {
             reader.problem(
-                Diagnostic::error("missing-key", "a reaction on a member needs `at`, or `every` with `from` and `to`")
-                    .at(from.place()),
+                Diagnostic::error(
+                    "missing-key",
+                    "a reaction on a member needs `at`, or `every` with `from` and `to`",
+                )
+                .at(from.place()),
             );
             return None;
         }
@@ -321,7 +345,11 @@ fn repeated(
     length: f64,
 ) -> Option<Vec<f64>> {
     if (last - first) / spacing > MOST {
-        reader.error("too-many", format!("more than {MOST} reactions on one member"), every.place());
+        reader.error(
+            "too-many",
+            format!("more than {MOST} reactions on one member"),
+            every.place(),
+        );
         return None;
     }
     let mut out = Vec::new();
@@ -345,16 +373,22 @@ fn giver(
     let id = any_node(reader, model, name)?;
     if model[id].support.is_none() {
         reader.problem(
-            Diagnostic::error("no-reaction", format!("node `{name}` has no support, so it has no reaction"))
-                .at(name.place()),
+            Diagnostic::error(
+                "no-reaction",
+                format!("node `{name}` has no support, so it has no reaction"),
+            )
+            .at(name.place()),
         );
         return None;
     }
     if model[id].structure == receiver {
         reader.problem(
-            Diagnostic::error("own-reaction", format!("node `{name}` belongs to the structure that is loaded"))
-                .at(name.place())
-                .hint("reactions are handed on from another structure".to_owned()),
+            Diagnostic::error(
+                "own-reaction",
+                format!("node `{name}` belongs to the structure that is loaded"),
+            )
+            .at(name.place())
+            .hint("reactions are handed on from another structure".to_owned()),
         );
         return None;
     }
@@ -427,7 +461,10 @@ fn stretch(
         reader.problem(
             Diagnostic::error(
                 "spans",
-                format!("member `{}` has no `spans`, and another member frames in between its supports", member.name),
+                format!(
+                    "member `{}` has no `spans`, and another member frames in between its supports",
+                    member.name
+                ),
             )
             .at(text.place())
             .hint("say which nodes bound its spans: `spans: [...]`".to_owned()),
@@ -437,9 +474,12 @@ fn stretch(
     let number = reader.whole(text)?;
     let Some(span) = number.checked_sub(1).and_then(|place| member.spans.get(place)) else {
         reader.problem(
-            Diagnostic::error("unknown-span", format!("member `{}` has no span {number}", member.name))
-                .at(text.place())
-                .label(format!("it has {}", member.spans.len())),
+            Diagnostic::error(
+                "unknown-span",
+                format!("member `{}` has no span {number}", member.name),
+            )
+            .at(text.place())
+            .label(format!("it has {}", member.spans.len())),
         );
         return None;
     };
@@ -497,8 +537,11 @@ fn direction(
 
 fn out_of_plane(reader: &mut Reader, text: &Text) {
     reader.problem(
-        Diagnostic::error("out-of-plane", "this acts out of the plane of a plane frame, which lies in X-Z")
-            .at(text.place())
-            .hint("make it `frame: space`, or turn the load into the plane".to_owned()),
+        Diagnostic::error(
+            "out-of-plane",
+            "this acts out of the plane of a plane frame, which lies in X-Z",
+        )
+        .at(text.place())
+        .hint("make it `frame: space`, or turn the load into the plane".to_owned()),
     );
 }

@@ -15,7 +15,16 @@ use crate::quantity::Kind;
 const FAMILIES: [&str; 5] = ["steel", "timber", "aluminium", "concrete", "other"];
 /// Keys that are no strengths.
 const PLAIN: [&str; 10] = [
-    "grade", "thickness", "service_class", "title", "source", "family", "E", "G", "density", "expansion",
+    "grade",
+    "thickness",
+    "service_class",
+    "title",
+    "source",
+    "family",
+    "E",
+    "G",
+    "density",
+    "expansion",
 ];
 
 pub(super) fn materials(reader: &mut Reader, written: &Map<written::Material>) -> Vec<Material> {
@@ -63,7 +72,9 @@ fn from_catalogue(
                 Diagnostic::error("unknown-grade", format!("no grade `{grade}` in the catalogue"))
                     .at(grade.place())
                     .hint(near)
-                    .hint("give E, G, density and expansion in full for other materials".to_owned()),
+                    .hint(
+                        "give E, G, density and expansion in full for other materials".to_owned(),
+                    ),
             );
             None
         }
@@ -107,7 +118,8 @@ fn in_full(reader: &mut Reader, name: &Text, written: &written::Material) -> Opt
         expansion: expansion?,
         strengths,
         service_class: words(written.get("service_class")),
-        source: words(written.get("source")).unwrap_or_else(|| "given in the project file".to_owned()),
+        source: words(written.get("source"))
+            .unwrap_or_else(|| "given in the project file".to_owned()),
         origin: name.place(),
     })
 }

@@ -70,7 +70,13 @@ fn member(
     let axes = axes(reader, model, structure, name, written, &along, x)?;
     let hinges = hinges(reader, name, written);
     let held = Held {
-        top: edge(reader, model, structure, written.held.as_ref().and_then(|held| held.top.as_ref()), &along),
+        top: edge(
+            reader,
+            model,
+            structure,
+            written.held.as_ref().and_then(|held| held.top.as_ref()),
+            &along,
+        ),
         bottom: edge(
             reader,
             model,
@@ -80,7 +86,8 @@ fn member(
         ),
     };
     let lengths = written.buckling_length.as_ref();
-    let mut buckling = |text: Option<&Text>| text.and_then(|text| reader.positive(text, Kind::Length));
+    let mut buckling =
+        |text: Option<&Text>| text.and_then(|text| reader.positive(text, Kind::Length));
     let buckling_length = [
         buckling(lengths.and_then(|lengths| lengths.y.as_ref())),
         buckling(lengths.and_then(|lengths| lengths.z.as_ref())),
@@ -134,7 +141,10 @@ fn line(
         reader.problem(
             Diagnostic::error("zero-length", format!("member `{name}` has no length"))
                 .at(written.along[0].place())
-                .label(format!("`{}` and `{}` are the same place", model[*first].name, model[*last].name)),
+                .label(format!(
+                    "`{}` and `{}` are the same place",
+                    model[*first].name, model[*last].name
+                )),
         );
         return None;
     }
@@ -155,9 +165,12 @@ fn line(
         }
         if stations.last().is_some_and(|before| s <= before + 1e-9) {
             reader.problem(
-                Diagnostic::error("zero-length", format!("the nodes of member `{name}` do not follow one another"))
-                    .at(written.along[place].place())
-                    .label("this node does not lie beyond the one before it"),
+                Diagnostic::error(
+                    "zero-length",
+                    format!("the nodes of member `{name}` do not follow one another"),
+                )
+                .at(written.along[place].place())
+                .label("this node does not lie beyond the one before it"),
             );
             return None;
         }
@@ -231,10 +244,13 @@ fn hinges(reader: &mut Reader, name: &Text, written: &written::Member) -> Vec<Hi
         let Some(station) = station else {
             let inner = written.along.iter().map(Text::as_str).chain(["start", "end"]);
             reader.problem(
-                Diagnostic::error("unknown-node", format!("member `{name}` has no place named `{key}`"))
-                    .at(key.place())
-                    .label("expected `start`, `end` or a node of this member")
-                    .hint(super::about::meant(key, inner)),
+                Diagnostic::error(
+                    "unknown-node",
+                    format!("member `{name}` has no place named `{key}`"),
+                )
+                .at(key.place())
+                .label("expected `start`, `end` or a node of this member")
+                .hint(super::about::meant(key, inner)),
             );
             continue;
         };
@@ -280,7 +296,11 @@ fn edge(
                 if along.contains(&id) {
                     nodes.push(id);
                 } else {
-                    reader.error("off-member", format!("node `{name}` is not on this member"), name.place());
+                    reader.error(
+                        "off-member",
+                        format!("node `{name}` is not on this member"),
+                        name.place(),
+                    );
                 }
             }
             HeldAlong::At(nodes)
@@ -289,12 +309,7 @@ fn edge(
 }
 
 /// Spans as written, or the stretches between the ends and the supported nodes.
-fn spans(
-    reader: &mut Reader,
-    model: &Model,
-    index: usize,
-    written: &written::Member,
-) -> Vec<Span> {
+fn spans(reader: &mut Reader, model: &Model, index: usize, written: &written::Member) -> Vec<Span> {
     let member = &model.members[index];
     let mut bounds: Vec<usize> = Vec::new();
     match &written.spans {
@@ -310,9 +325,12 @@ fn spans(
                         name.place(),
                     ),
                     None => reader.problem(
-                        Diagnostic::error("unknown-node", format!("`{name}` is not a node of member `{}`", member.name))
-                            .at(name.place())
-                            .hint(super::about::meant(name, written.along.iter().map(Text::as_str))),
+                        Diagnostic::error(
+                            "unknown-node",
+                            format!("`{name}` is not a node of member `{}`", member.name),
+                        )
+                        .at(name.place())
+                        .hint(super::about::meant(name, written.along.iter().map(Text::as_str))),
                     ),
                 }
             }

@@ -54,8 +54,7 @@ pub(super) fn resolve(
         cases: Vec::new(),
         combinations: Vec::new(),
     };
-    model.sections =
-        sections::sections(&mut reader, &project.sections, model.shear_deformation);
+    model.sections = sections::sections(&mut reader, &project.sections, model.shear_deformation);
     structures::structures(&mut reader, project, &mut model);
     about::drawn(&mut reader, project.package.as_ref(), &model);
     cases::cases(&mut reader, &project.load_cases, &mut model);

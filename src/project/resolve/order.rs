@@ -31,8 +31,7 @@ pub(super) fn solve_order(reader: &mut Reader, model: &mut Model) {
         model.solve_order.push(left.remove(place));
     }
     if let Some(chain) = cycle(&left, &handed) {
-        let names: Vec<String> =
-            chain.iter().map(|id| format!("`{}`", model[*id].name)).collect();
+        let names: Vec<String> = chain.iter().map(|id| format!("`{}`", model[*id].name)).collect();
         let pair = (chain[0], chain[1]);
         let place = places.iter().find(|(other, _)| *other == pair).map(|(_, place)| place.clone());
         reader.problem(

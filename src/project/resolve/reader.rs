@@ -42,16 +42,20 @@ impl Reader {
         match parse(text) {
             Ok(quantity) if quantity.value.abs() > HUGE => {
                 self.problem(
-                    Diagnostic::error("huge-number", format!("`{text}` is too large to compute with"))
-                        .at(text.place())
-                        .hint("check the unit and the power of ten".to_owned()),
+                    Diagnostic::error(
+                        "huge-number",
+                        format!("`{text}` is too large to compute with"),
+                    )
+                    .at(text.place())
+                    .hint("check the unit and the power of ten".to_owned()),
                 );
                 None
             }
             Ok(quantity) => Some(quantity),
             Err(error) => {
                 let values = self.values.keys().map(String::as_str);
-                let near = nearest(text, values).map(|name| format!("did you mean the value `{name}`?"));
+                let near =
+                    nearest(text, values).map(|name| format!("did you mean the value `{name}`?"));
                 self.problem(
                     Diagnostic::error("quantity", error.message)
                         .at(text.place())

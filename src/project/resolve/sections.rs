@@ -7,8 +7,8 @@ use crate::catalogue;
 use crate::diagnostic::Diagnostic;
 use crate::model::Section;
 use crate::project::text::{Map, Text};
-use crate::project::written::words::ShapeKind;
 use crate::project::written;
+use crate::project::written::words::ShapeKind;
 use crate::quantity::Kind;
 use crate::section::{Properties, Shape, ShapeError, Taper};
 
@@ -52,17 +52,25 @@ fn from_catalogue(reader: &mut Reader, designation: &Text) -> Read {
         Err(missing) => {
             let near = missing.nearest.first().map(|near| format!("did you mean `{near}`?"));
             reader.problem(
-                Diagnostic::error("unknown-section", format!("no section `{designation}` in the catalogue"))
-                    .at(designation.place())
-                    .hint(near)
-                    .hint("`spanfolio catalogue` lists the families".to_owned()),
+                Diagnostic::error(
+                    "unknown-section",
+                    format!("no section `{designation}` in the catalogue"),
+                )
+                .at(designation.place())
+                .hint(near)
+                .hint("`spanfolio catalogue` lists the families".to_owned()),
             );
             None
         }
     }
 }
 
-fn from_shape(reader: &mut Reader, name: &Text, written: &written::Section, kind: ShapeKind) -> Read {
+fn from_shape(
+    reader: &mut Reader,
+    name: &Text,
+    written: &written::Section,
+    kind: ShapeKind,
+) -> Read {
     let shape = shape(reader, written, kind)?;
     match shape.properties() {
         Ok(properties) => {
@@ -242,9 +250,10 @@ fn given(reader: &mut Reader, name: &Text, written: &written::Section) -> Read {
         y_minus: value(&["y_minus"], Kind::SectionLength).or(width.map(|w| w / 2.0)),
         ..Properties::default()
     };
-    properties.i_yz =
-        reader.optional(given.get("I_yz"), Kind::SecondMoment).unwrap_or_default();
-    for (key, value) in [("A", area), ("I_y or I_major", i_y), ("I_z or I_minor", i_z), ("I_t", i_t)] {
+    properties.i_yz = reader.optional(given.get("I_yz"), Kind::SecondMoment).unwrap_or_default();
+    for (key, value) in
+        [("A", area), ("I_y or I_major", i_y), ("I_z or I_minor", i_z), ("I_t", i_t)]
+    {
         let written = key.split(" or ").any(|key| given.contains_key(key));
         if value.is_none() && !written {
             reader.error("missing-key", format!("section `{name}` gives no {key}"), name.place());
@@ -252,17 +261,25 @@ fn given(reader: &mut Reader, name: &Text, written: &written::Section) -> Read {
     }
     (properties.area, properties.i_y, properties.i_z, properties.i_t) = (area?, i_y?, i_z?, i_t?);
     if properties.i_y < properties.i_z && written.axes.is_none() {
-        let place = given.get("I_y").or(given.get("I_major")).map_or_else(|| name.place(), Text::place);
+        let place =
+            given.get("I_y").or(given.get("I_major")).map_or_else(|| name.place(), Text::place);
         reader.problem(
-            Diagnostic::error("axes", format!("section `{name}` has I_y below I_z, but y is the major axis"))
-                .at(place)
-                .hint("exchange the two, or say `axes: as written` if this is meant".to_owned()),
+            Diagnostic::error(
+                "axes",
+                format!("section `{name}` has I_y below I_z, but y is the major axis"),
+            )
+            .at(place)
+            .hint("exchange the two, or say `axes: as written` if this is meant".to_owned()),
         );
         return None;
     }
     if properties.i_yz * properties.i_yz >= properties.i_y * properties.i_z {
         let place = given.get("I_yz").map_or_else(|| name.place(), Text::place);
-        reader.error("axes", format!("section `{name}` has a product moment that no shape can have"), place);
+        reader.error(
+            "axes",
+            format!("section `{name}` has a product moment that no shape can have"),
+            place,
+        );
         return None;
     }
     Some(("given properties".to_owned(), properties, "given in the project file".to_owned()))

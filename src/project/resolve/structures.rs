@@ -84,7 +84,8 @@ fn one(
 }
 
 fn position(reader: &mut Reader, node: &Text, at: &[Text], frame: Frame) -> Option<[f64; 3]> {
-    let read: Vec<Option<f64>> = at.iter().map(|text| reader.quantity(text, Kind::Length)).collect();
+    let read: Vec<Option<f64>> =
+        at.iter().map(|text| reader.quantity(text, Kind::Length)).collect();
     let expected = match frame {
         Frame::Plane => "[x, z]",
         Frame::Space => "[x, y, z]",

@@ -31,7 +31,8 @@ pub(super) fn supports(
         if let Some(map) = map {
             for (k, text) in map.freedoms().into_iter().enumerate() {
                 if let Some(freedom) = text.and_then(|text| freedom(reader, text, k)) {
-                    if frame == Frame::Plane && !matches!(k, 0 | 2 | 4) && freedom != Freedom::Fixed {
+                    if frame == Frame::Plane && !matches!(k, 0 | 2 | 4) && freedom != Freedom::Fixed
+                    {
                         out_of_plane(reader, text, NAMES[k]);
                     }
                     freedoms[k] = freedom;
@@ -70,7 +71,8 @@ pub(super) fn forks(
     }
     for (name, written) in blocks.supports.into_iter().flatten() {
         let Some(kind) = fork(written) else { continue };
-        let Some(id) = model[structure].nodes.iter().copied().find(|id| model[*id].name == name.as_str())
+        let Some(id) =
+            model[structure].nodes.iter().copied().find(|id| model[*id].name == name.as_str())
         else {
             continue;
         };
@@ -126,11 +128,7 @@ fn freedom(reader: &mut Reader, text: &Text, k: usize) -> Option<Freedom> {
     }
 }
 
-fn turning(
-    reader: &mut Reader,
-    frame: Frame,
-    written: &written::Turned,
-) -> Option<(Axes, String)> {
+fn turning(reader: &mut Reader, frame: Frame, written: &written::Turned) -> Option<(Axes, String)> {
     let (axis, by) = match written {
         written::Turned::Word(by) => (Axis::Y, by),
         written::Turned::Map(map) => (map.about.is, &map.by),

@@ -6,7 +6,10 @@ use crate::model::{CaseId, MaterialId, Model, SectionId};
 pub(super) fn warnings(model: &Model) -> Vec<Diagnostic> {
     let mut out = Vec::new();
     let mut unused = |code, what: &str, name: &str, place: &Place| {
-        out.push(Diagnostic::warning(code, format!("{what} `{name}` is used by nothing")).at(place.clone()));
+        out.push(
+            Diagnostic::warning(code, format!("{what} `{name}` is used by nothing"))
+                .at(place.clone()),
+        );
     };
     for (index, node) in model.nodes.iter().enumerate() {
         if !model.members.iter().any(|member| member.along.iter().any(|id| id.0 == index)) {
@@ -36,8 +39,11 @@ pub(super) fn warnings(model: &Model) -> Vec<Diagnostic> {
             .any(|combination| combination.factors.iter().any(|(case, _)| *case == CaseId(index)));
         if !combined {
             out.push(
-                Diagnostic::warning("uncombined-case", format!("load case `{}` is in no combination", case.name))
-                    .at(case.origin.clone()),
+                Diagnostic::warning(
+                    "uncombined-case",
+                    format!("load case `{}` is in no combination", case.name),
+                )
+                .at(case.origin.clone()),
             );
         }
     }

@@ -1,5 +1,6 @@
 //! Files that the program reads and writes: project files, drawings and packages.
 
+mod demos;
 mod figures;
 mod project_file;
 mod project_schema;
