@@ -168,10 +168,12 @@ impl Family {
     }
 }
 
+const TORSION_OF_TABLE: &str = "I_t from the catalogue's table, computed there by a finite-element warping function over the nominal shape";
+const WARPING_OF_TABLE: &str = "I_w and shear centre from the catalogue's table, computed there by a finite-element warping function over the nominal shape";
+
 impl Rule {
     fn properties(self, row: &Row<'_>) -> Option<Properties> {
         let properties = self.shape(row)?.properties().ok()?;
-        let computed_by_elements = "from the catalogue's table, where a finite-element warping function over the nominal shape gave it";
         Some(match self {
             Self::EuropeanI => Properties {
                 i_t: section::european_i_torsion(
@@ -205,18 +207,15 @@ impl Rule {
                 i_w: Some(row.number("I_w")?),
                 shear_centre: Some([-row.number("y_m")?, 0.0]),
                 methods: section::Methods {
-                    torsion: Some(computed_by_elements),
-                    warping: Some(computed_by_elements),
+                    torsion: Some(TORSION_OF_TABLE),
+                    warping: Some(WARPING_OF_TABLE),
                     ..properties.methods
                 },
                 ..properties
             },
             Self::EqualAngle => Properties {
                 i_t: row.number("I_t")?,
-                methods: section::Methods {
-                    torsion: Some(computed_by_elements),
-                    ..properties.methods
-                },
+                methods: section::Methods { torsion: Some(TORSION_OF_TABLE), ..properties.methods },
                 ..properties
             },
             _ => properties,

@@ -1,1 +1,3 @@
 //! Commands: parse arguments, call the library, print, pick the exit status.
+
+pub mod catalogue;

@@ -9,7 +9,7 @@
 //!
 //! Areas, second moments, elastic and plastic moduli are exact for the nominal shape, fillets included.
 //! Torsion and warping constants and shear areas follow published approximations, each named in
-//! [`Methods`]. Nothing here knows tables, materials or units.
+//! [`Methods`]. Nothing here knows tables or materials.
 
 mod closed;
 mod edge;
@@ -25,6 +25,8 @@ pub use shape::{Shape, ShapeError, Taper};
 use std::f64::consts::FRAC_PI_2;
 
 use indexmap::IndexMap;
+
+use crate::quantity::Kind;
 
 /// Closed loops of (y, z) about the centroid; the first is the outer edge, the others are holes.
 /// For drawing and for polygon integration.
@@ -88,6 +90,13 @@ pub struct Methods {
 /// Text for [`Methods::torsion`] where [`european_i_torsion`] is used.
 pub const EUROPEAN_TORSION: &str = torsion::EUROPEAN;
 
+impl Methods {
+    /// Those that are known, as sentences in a fixed order.
+    pub fn texts(&self) -> impl Iterator<Item = &'static str> {
+        [self.torsion, self.warping, self.shear_area, self.shear_resistance].into_iter().flatten()
+    }
+}
+
 impl Properties {
     /// Principal second moments (I_u ≥ I_v) and the angle α from local y to axis u, rad,
     /// right-handed about +x.
@@ -118,6 +127,46 @@ impl Properties {
     #[must_use]
     pub fn radii(&self) -> [f64; 2] {
         [self.i_y, self.i_z].map(|second| libm::sqrt(second / self.area))
+    }
+
+    /// Every known value by symbol, with what it is, in printing order; I_yz and the principal values
+    /// only where the local axes are not principal.
+    #[must_use]
+    pub fn by_symbol(&self) -> Vec<(&'static str, Kind, f64)> {
+        let (i_u, i_v, alpha) = self.principal();
+        let skew = |value| self.is_skew().then_some(value);
+        let [i_y, i_z] = self.radii();
+        let [y_s, z_s] = [0, 1].map(|k| self.shear_centre.map(|centre| centre[k]));
+        [
+            ("A", Kind::Area, Some(self.area)),
+            ("I_y", Kind::SecondMoment, Some(self.i_y)),
+            ("I_z", Kind::SecondMoment, Some(self.i_z)),
+            ("I_t", Kind::SecondMoment, Some(self.i_t)),
+            ("I_w", Kind::Warping, self.i_w),
+            ("I_yz", Kind::SecondMoment, skew(self.i_yz)),
+            ("I_u", Kind::SecondMoment, skew(i_u)),
+            ("I_v", Kind::SecondMoment, skew(i_v)),
+            ("alpha", Kind::Angle, skew(alpha)),
+            ("W_el_y", Kind::SectionModulus, self.w_el_y),
+            ("W_el_z", Kind::SectionModulus, self.w_el_z),
+            ("W_pl_y", Kind::SectionModulus, self.w_pl_y),
+            ("W_pl_z", Kind::SectionModulus, self.w_pl_z),
+            ("i_y", Kind::SectionLength, Some(i_y)),
+            ("i_z", Kind::SectionLength, Some(i_z)),
+            ("A_sy", Kind::Area, self.a_sy),
+            ("A_sz", Kind::Area, self.a_sz),
+            ("A_vy", Kind::Area, self.a_vy),
+            ("A_vz", Kind::Area, self.a_vz),
+            ("z_top", Kind::SectionLength, self.z_top),
+            ("z_bottom", Kind::SectionLength, self.z_bottom),
+            ("y_plus", Kind::SectionLength, self.y_plus),
+            ("y_minus", Kind::SectionLength, self.y_minus),
+            ("y_s", Kind::SectionLength, y_s),
+            ("z_s", Kind::SectionLength, z_s),
+        ]
+        .into_iter()
+        .filter_map(|(symbol, kind, value)| Some((symbol, kind, value?)))
+        .collect()
     }
 
     /// Overall depth along z, m.

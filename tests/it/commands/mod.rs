@@ -1,1 +1,3 @@
 //! See the files beside this one.
+
+mod catalogue;

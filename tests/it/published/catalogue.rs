@@ -22,7 +22,7 @@ fn used(section: &CatalogueSection, symbol: &str) -> Option<f64> {
         "W_pl_z" => properties.w_pl_z,
         "i_y" => Some(properties.radii()[0]),
         "i_z" => Some(properties.radii()[1]),
-        "y_s" | "c" => properties.y_minus,
+        "c" => properties.y_minus,
         "y_m" => properties.shear_centre.map(|[y, _]| -y),
         _ => None,
     }
@@ -51,7 +51,7 @@ fn allowed(family: &str, symbol: &str) -> f64 {
 const APART: [(&str, &str, f64, &str); 21] = [
     ("IPE 80", "I_w", 0.017, "two figures are printed"),
     ("UB 305x102x25", "I_w", 0.012, "two figures are printed"),
-    ("UPN 400", "y_s", 0.011, "rounding and the toe"),
+    ("UPN 400", "c", 0.011, "rounding and the toe"),
     ("W12X19", "I_w", 0.013, DEPTH),
     ("W12X87", "I_w", 0.012, DEPTH),
     ("W14X68", "W_pl_y", 0.011, DEPTH),
@@ -140,7 +140,7 @@ fn an_unknown_name_brings_the_nearest() {
     assert_eq!(material("C23", None).unwrap_err().nearest[..2], ["C24", "C22"]);
 }
 
-/// EN 10365 and the German sales tables of it, from memory: UPN 200 has y_s = 2.01 cm and its shear
+/// EN 10365 and the German sales tables of it, from memory: UPN 200 has its centroid 2.01 cm from the back of its web and its shear
 /// centre beyond the web.
 #[test]
 fn a_channel_points_to_plus_y() {
