@@ -204,3 +204,16 @@ fn a_dimension_that_cannot_be_is_named() {
         assert_eq!(problem(shape), (dimension, message.to_owned()));
     }
 }
+
+proptest! {
+    #[test]
+    fn any_text_may_be_asked_of_the_catalogue(name in ".{0,24}", size in "[A-Z]{0,4}[0-9x×./]{0,12}") {
+        for text in [&name, &size] {
+            if let Ok(section) = spanfolio::catalogue::section(text) {
+                prop_assert!(section.properties.area > 0.0);
+            }
+            let _ = spanfolio::catalogue::material(text, None);
+            let _ = spanfolio::catalogue::find(std::slice::from_ref(text));
+        }
+    }
+}
