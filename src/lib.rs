@@ -18,3 +18,29 @@ pub mod project;
 pub mod quantity;
 pub mod record;
 pub mod section;
+
+use diagnostic::Diagnostic;
+use files::Sources;
+use record::Record;
+
+/// A project read, solved and settled.
+#[derive(Clone, Debug)]
+pub struct Solved {
+    pub record: Record,
+    /// What is odd but not wrong.
+    pub warnings: Vec<Diagnostic>,
+}
+
+/// Sources → Record: reads the project file, solves every structure, finds what governs, checks itself.
+/// Whether the self-check holds stands in the Record.
+///
+/// # Errors
+/// Every problem of the project, located.
+pub fn solve(sources: &Sources) -> Result<Solved, Vec<Diagnostic>> {
+    let (model, warnings) = project::read(sources)?;
+    let solution = analysis::solve(&model)?;
+    let governing = analysis::govern(&model, &solution);
+    let self_check = analysis::self_check(&model, &solution);
+    let record = record::record(&model, &solution, &governing, &self_check, &sources.fingerprint());
+    Ok(Solved { record, warnings })
+}

@@ -1,11 +1,21 @@
 //! The only module that reads or writes the disk.
 //!
 //! Invariants
-//! - A project is read once, whole, before anything is computed; text has LF line ends.
+//! - A project is read once, whole, before anything is computed; text has LF line ends and no byte-order
+//!   mark.
 //! - Nothing outside the project's own folder is read: no `..`, no absolute path, no link out.
 //! - Writing is all or nothing: beside the old package, then exchanged by two renames.
 
+mod read;
+mod write;
+
 use std::collections::BTreeMap;
+use std::io;
+
+pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, folder, read};
+pub use write::{CONTENTS, PACKAGE, create, heal, write};
+
+use sha2::{Digest, Sha256};
 
 /// Everything a project brings, read once.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
@@ -27,4 +37,30 @@ impl Sources {
     pub fn text(&self, path: &str) -> Option<&str> {
         self.files.get(path).and_then(|bytes| std::str::from_utf8(bytes).ok())
     }
+
+    /// SHA-256 in hexadecimal over every path and content in order of path, each led by its length in
+    /// bytes (64 bits, least significant byte first), so that no two sets of files read alike.
+    #[must_use]
+    pub fn fingerprint(&self) -> String {
+        let mut hash = Sha256::new();
+        for (path, content) in &self.files {
+            for part in [path.as_bytes(), content] {
+                hash.update((part.len() as u64).to_le_bytes());
+                hash.update(part);
+            }
+        }
+        hexadecimal(&hash.finalize())
+    }
+}
+
+fn hexadecimal(bytes: &[u8]) -> String {
+    bytes.iter().map(|byte| format!("{byte:02x}")).collect()
+}
+
+/// The system's words for a failure in the style of our messages: lower case, without its number.
+fn reason(error: &io::Error) -> String {
+    let text = error.to_string();
+    let text = text.split(" (os error").next().unwrap_or_default();
+    let mut chars = text.chars();
+    chars.next().map(|first| first.to_lowercase().chain(chars).collect()).unwrap_or_default()
 }

@@ -5,8 +5,8 @@ use std::collections::BTreeMap;
 use spanfolio::diagnostic::Diagnostic;
 use spanfolio::files::Sources;
 use spanfolio::model::Model;
+use spanfolio::project;
 use spanfolio::record::Record;
-use spanfolio::{analysis, project, record};
 
 /// Sources that hold nothing but this project file.
 pub(crate) fn sources(yaml: &str) -> Sources {
@@ -20,14 +20,8 @@ pub(crate) fn model(yaml: &str) -> Result<Model, Vec<Diagnostic>> {
 
 /// YAML text in, Record out; panics with the problems where there are any.
 pub(crate) fn solved(yaml: &str) -> Record {
-    let result = model(yaml).and_then(|model| {
-        let solution = analysis::solve(&model)?;
-        let governing = analysis::govern(&model, &solution);
-        let self_check = analysis::self_check(&model, &solution);
-        Ok(record::record(&model, &solution, &governing, &self_check, "test"))
-    });
-    match result {
-        Ok(record) => record,
+    match spanfolio::solve(&sources(yaml)) {
+        Ok(solved) => solved.record,
         Err(problems) => panic!("{problems:#?}\nin\n{yaml}"),
     }
 }

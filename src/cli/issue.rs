@@ -1,0 +1,53 @@
+//! `spanfolio issue`
+
+use super::{Project, Status, render, wrong};
+use crate::files;
+use crate::package::package;
+use crate::solve;
+
+#[derive(Debug, clap::Args)]
+pub(super) struct Arguments {
+    #[command(flatten)]
+    project: Project,
+}
+
+pub(super) fn run(arguments: &Arguments) -> Status {
+    let folder = arguments.project.folder();
+    let sources = match arguments.project.read() {
+        Ok(sources) => sources,
+        Err(problems) => return wrong(&problems, &folder, None),
+    };
+    let solved = match solve(&sources) {
+        Ok(solved) => solved,
+        Err(problems) => return wrong(&problems, &folder, Some(&sources)),
+    };
+    render::print(&solved.warnings, &folder, Some(&sources));
+    if !solved.record.self_check.satisfied {
+        anstream::eprintln!("the self-check is out of tolerance; nothing was written");
+        return Status::CouldNot;
+    }
+    let package = match package(&solved.record, &sources) {
+        Ok(package) => package,
+        Err(problems) => return wrong(&problems, &folder, Some(&sources)),
+    };
+    if let Err(problem) = files::write(&folder, &package) {
+        let status =
+            if problem.code == "foreign-package" { Status::Wrong } else { Status::CouldNot };
+        render::print(&[problem], &folder, None);
+        return status;
+    }
+    let into = folder.join(files::PACKAGE);
+    anstream::eprintln!(
+        "wrote {} files into `{}`; open `{}`",
+        package.len() + 1,
+        into.display(),
+        into.join("package.html").display()
+    );
+    let open = solved.record.registers.open_items.len();
+    match open {
+        0 => {}
+        1 => anstream::eprintln!("1 open item stands on the first page"),
+        _ => anstream::eprintln!("{open} open items stand on the first page"),
+    }
+    Status::Done
+}

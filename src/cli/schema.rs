@@ -1,0 +1,8 @@
+//! `spanfolio schema`
+
+use super::Status;
+
+pub(super) fn run() -> Status {
+    anstream::println!("{:#}", crate::project::schema());
+    Status::Done
+}
