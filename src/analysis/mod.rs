@@ -8,14 +8,17 @@
 
 mod combine;
 mod element;
+mod extremes;
 mod fields;
 mod frame;
+mod govern;
 mod handed;
 mod hinge;
 mod loading;
 mod mechanism;
 mod member;
 mod parts;
+mod roots;
 mod side;
 mod solution;
 mod solve;
@@ -23,7 +26,9 @@ mod span;
 mod sparse;
 
 pub use combine::superpose;
+pub use extremes::{Found, Stretch, extremes};
 pub use fields::{Fields, Polynomial, evaluate};
+pub use roots::{derivative, sign_changes};
 pub use solution::{
     Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,
     Independent, MemberSolution, NodeSolution, Residual, Runner, Segment, SelfCheck, Solution,
@@ -45,7 +50,7 @@ pub fn solve(model: &Model) -> Result<Solution, Vec<Diagnostic>> {
 /// Superposes every combination and finds the governing values with their positions.
 #[must_use]
 pub fn govern(model: &Model, solution: &Solution) -> Governing {
-    todo!("{} {}", model.nodes.len(), solution.states.len())
+    govern::govern(model, solution)
 }
 
 /// Holds the solution against equilibrium, energy and an independent integration.
