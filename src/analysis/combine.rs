@@ -1,6 +1,6 @@
 //! Superposition: the only place where effects of load cases are added up.
 
-use super::Fields;
+use super::{Fields, Polynomial};
 use crate::model::EFFECTS;
 
 /// Σ factor · fields, in the order given; nothing given is zero.
@@ -11,6 +11,18 @@ pub fn superpose<'f>(terms: impl IntoIterator<Item = (f64, &'f Fields)>) -> Fiel
     let mut sum = Fields([[0.0; 6]; EFFECTS.len()]);
     for (factor, fields) in terms {
         for (into, from) in sum.0.as_flattened_mut().iter_mut().zip(fields.0.as_flattened()) {
+            *into += factor * from;
+        }
+    }
+    sum
+}
+
+/// Σ factor · polynomial: one effect of [`superpose`], with the same bits.
+#[must_use]
+pub fn superpose_one<'p>(terms: impl IntoIterator<Item = (f64, &'p Polynomial)>) -> Polynomial {
+    let mut sum = [0.0; 6];
+    for (factor, polynomial) in terms {
+        for (into, from) in sum.iter_mut().zip(polynomial) {
             *into += factor * from;
         }
     }

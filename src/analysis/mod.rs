@@ -25,7 +25,7 @@ mod solve;
 mod span;
 mod sparse;
 
-pub use combine::superpose;
+pub use combine::{superpose, superpose_one};
 pub use extremes::{Found, Stretch, extremes};
 pub use fields::{Fields, Polynomial, evaluate};
 pub use roots::{derivative, sign_changes};
@@ -34,7 +34,7 @@ pub use solution::{
     Independent, MemberSolution, NodeSolution, Residual, Runner, Segment, SelfCheck, Solution,
     StructureCheck,
 };
-pub use span::deflections;
+pub use span::{Chord, deflections};
 
 use crate::diagnostic::Diagnostic;
 use crate::model::Model;

@@ -8,7 +8,7 @@ use super::handed::{handed_forces, out_of_plane};
 use super::loading::{CaseLoads, cuts, gather};
 use super::member::{Stretch, fields, stretches};
 use super::side::Side;
-use super::span::deflections;
+use super::span::{Chord, deflections};
 use super::{Arithmetic, MemberSolution, NodeSolution, Segment, Solution};
 use crate::diagnostic::Diagnostic;
 use crate::model::{CaseId, Freedom, Model, StructureId};
@@ -132,7 +132,9 @@ fn run(
     }
     for (place, id) in frame.members.iter().enumerate() {
         let mut own = std::mem::take(&mut segments[place]);
-        deflections(&model[*id], &mut own);
+        let member = &model[*id];
+        let spans: Vec<Chord> = member.spans.iter().map(Chord::from).collect();
+        deflections(&spans, member.length, &mut own);
         solution.members[id.0].segments = own;
     }
     Ok(())

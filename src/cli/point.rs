@@ -18,7 +18,7 @@ pub(super) fn table(record: &Record, place: &str) -> Result<String, Diagnostic> 
     let head: Vec<(&str, Align)> =
         head.iter().map(|(title, align)| (title.as_str(), *align)).collect();
     let mut table = Table::new(&head);
-    for state in record.model.cases.keys().chain(record.combinations.keys()) {
+    for state in record.states() {
         let cells = |side: Side| -> Vec<String> {
             EFFECTS
                 .iter()
@@ -55,12 +55,7 @@ fn split<'r>(record: &'r Record, place: &str) -> Result<(&'r str, f64), Diagnost
         }
         let x = parse_as(rest.trim(), Kind::Length)
             .map_err(|error| Diagnostic::error("quantity", error.message).hint(error.hint))?;
-        let length = record
-            .model
-            .structures
-            .values()
-            .find_map(|structure| structure.members.get(name))
-            .map_or(0.0, |member| member.length);
+        let length = record.member(name).map_or(0.0, |member| member.length);
         if !(0.0..=length).contains(&x) {
             let printer = record.model.units.printer();
             return Err(Diagnostic::error(

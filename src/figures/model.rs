@@ -8,7 +8,7 @@ use super::sheet::{Sample, Sheet, legend};
 use super::symbols;
 use super::text::Text;
 use crate::quantity::Kind;
-use crate::record::{FreedomRecord, MemberRecord, SectionValue, SupportRecord};
+use crate::record::{FreedomRecord, MemberRecord, SupportRecord};
 
 /// Size of the largest section's outline on the paper, mm.
 const OUTLINE: f64 = 8.0;
@@ -152,10 +152,8 @@ fn local_axes(canvas: &mut Canvas, sheet: &Sheet<'_>, member: &MemberRecord) {
 /// Sections of members in space, all at one scale, turned as they lie.
 fn section_outlines(canvas: &mut Canvas, sheet: &Sheet<'_>) {
     let outline = |member: &MemberRecord| -> Option<&Vec<Vec<[f64; 2]>>> {
-        match sheet.record.model.sections.get(&member.section)?.properties.get("outline")? {
-            SectionValue::Outline(loops) => Some(loops),
-            _ => None,
-        }
+        let section = sheet.record.model.sections.get(&member.section)?;
+        Some(&section.outline).filter(|loops| !loops.is_empty())
     };
     let largest = sheet
         .structure

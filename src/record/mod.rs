@@ -5,7 +5,11 @@
 //! - Downstream (figures, package, cli) asks the Record and computes no structural value itself.
 //! - Maps keep the order of the project file; no hash order is ever visible.
 
+mod build;
+mod json;
 mod look_up;
+mod registers;
+mod settle;
 mod types;
 
 pub use look_up::{Band, Piece};
@@ -23,21 +27,5 @@ pub fn record(
     self_check: &SelfCheck,
     fingerprint: &str,
 ) -> Record {
-    todo!("{model:?} {solution:?} {governing:?} {self_check:?} {fingerprint}")
-}
-
-impl Record {
-    /// The text of record.json: one line per segment, governing value and step.
-    #[must_use]
-    pub fn to_json(&self) -> String {
-        todo!()
-    }
-
-    /// Reads a record.
-    ///
-    /// # Errors
-    /// When the text is not a record, or its format is newer than this program.
-    pub fn from_json(text: &str) -> Result<Self, String> {
-        todo!("{text}")
-    }
+    build::build(model, solution, governing, self_check, fingerprint)
 }

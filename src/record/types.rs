@@ -125,27 +125,21 @@ pub struct MaterialRecord {
     pub source: String,
 }
 
-/// Properties by symbol; `None` is not known (not written).
+/// A section as used.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct SectionRecord {
     pub title: String,
-    /// Symbol → value, SI, in printing order: A I_y I_z I_t I_w I_yz I_u I_v alpha W_el_y W_el_z
-    /// W_pl_y W_pl_z i_y i_z A_sy A_sz A_vy A_vz z_top z_bottom y_plus y_minus y_s z_s.
+    /// Symbol → value, SI, in printing order: A I_y I_z I_t I_w … as `section::Properties::by_symbol`.
     #[serde(flatten)]
-    pub properties: Map<SectionValue>,
-}
-
-/// A property, or the text or lists that stand beside them.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(untagged)]
-pub enum SectionValue {
-    Number(f64),
-    /// `source`.
-    Text(String),
-    /// `dimensions`.
-    Dimensions(Map<f64>),
-    /// `outline`: loops of (y, z).
-    Outline(Vec<Vec<[f64; 2]>>),
+    pub properties: Map<f64>,
+    /// Nominal dimensions by symbol, m.
+    pub dimensions: Map<f64>,
+    /// Loops of (y, z) about the centroid, m; empty where only properties are known.
+    pub outline: Vec<Vec<[f64; 2]>>,
+    /// How the values that are not exact were found.
+    #[serde(default)]
+    pub methods: Vec<String>,
+    pub source: String,
 }
 
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]

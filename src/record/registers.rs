@@ -1,0 +1,137 @@
+//! Open items: what a reader of the first page must know is not settled.
+
+use super::{OpenItem, Record, Registers};
+use crate::model::Effect;
+use crate::quantity::Kind;
+
+/// A force below this share of the structure's largest is round-off, not uplift or compression.
+const NOTHING: f64 = 1e-9;
+
+pub(super) fn registers(record: &Record) -> Registers {
+    let mut open_items = Vec::new();
+    open_items.extend(assumptions(record));
+    open_items.extend(uplift(record));
+    open_items.extend(compression(record));
+    open_items.extend(unchecked(record));
+    Registers { open_items }
+}
+
+fn item(kind: &str, text: String) -> OpenItem {
+    OpenItem { kind: kind.to_owned(), text }
+}
+
+fn assumptions(record: &Record) -> impl Iterator<Item = OpenItem> {
+    record.basis.assumptions.iter().filter(|assumption| assumption.status != "confirmed").map(
+        |assumption| {
+            let by = assumption.by.as_ref().map(|by| format!(" (by {by})")).unwrap_or_default();
+            item(
+                "assumption",
+                format!("Assumption {} is to be confirmed{by}: {}", assumption.id, assumption.text),
+            )
+        },
+    )
+}
+
+/// Supports that some combination lifts without `uplift: anchored`.
+fn uplift(record: &Record) -> Vec<OpenItem> {
+    let printer = record.model.units.printer();
+    let mut out = Vec::new();
+    for (name, node) in record.model.structures.values().flat_map(|structure| &structure.nodes) {
+        let Some(support) = node.support.as_ref().filter(|support| !support.uplift_anchored) else {
+            continue;
+        };
+        // The part of a reaction along global Z, from the support's own axes.
+        let up = |state: &str| -> f64 {
+            record
+                .reaction(name, state)
+                .map_or(0.0, |own| (0..3).map(|axis| support.axes[axis][2] * own[axis]).sum())
+        };
+        let scale = record.states().map(|state| up(state).abs()).fold(0.0, f64::max);
+        let least = record.combinations.iter().map(|(state, c)| (up(state), &c.number)).fold(
+            None,
+            |least: Option<(f64, &String)>, (value, number)| match least {
+                Some((so_far, _)) if so_far <= value => least,
+                _ => Some((value, number)),
+            },
+        );
+        if let Some((value, number)) = least
+            && value < -NOTHING * scale
+        {
+            let force = printer.with_unit(Kind::Force, -value);
+            out.push(item(
+                "uplift",
+                format!("Support {name} must hold down {force} in {number} and is not said to be anchored"),
+            ));
+        }
+    }
+    out
+}
+
+/// Compressed members: those that carry axial force only without its acceptance, and all others while
+/// the analysis is of first order without imperfections.
+fn compression(record: &Record) -> Vec<OpenItem> {
+    let printer = record.model.units.printer();
+    let mut slender = Vec::new();
+    let mut first_order = Vec::new();
+    for structure in record.model.structures.values() {
+        for (name, member) in &structure.members {
+            let Some(result) = record.results.members.get(name) else { continue };
+            let n = Effect::N.name();
+            let extremes = || result.governing.values().filter_map(|effects| effects.get(n));
+            let scale = extremes()
+                .map(|extremes| extremes.max.value.abs().max(extremes.min.value.abs()))
+                .fold(0.0, f64::max);
+            let Some(least) = extremes()
+                .map(|extremes| &extremes.min)
+                .min_by(|a, b| a.value.total_cmp(&b.value))
+                .filter(|least| least.value < -NOTHING * scale)
+            else {
+                continue;
+            };
+            let number = record.combinations.get(&least.state).map_or("", |c| c.number.as_str());
+            let said =
+                format!("{name} {} in {number}", printer.with_unit(Kind::Force, least.value));
+            match &member.axial_only {
+                Some(only) if !only.compression_accepted => slender.push(said.clone()),
+                _ => {}
+            }
+            first_order.push(said);
+        }
+    }
+    let mut out = Vec::new();
+    if !slender.is_empty() {
+        out.push(item(
+            "compression",
+            format!(
+                "Members said to carry axial force only are compressed, which is not said to be accepted: {}",
+                slender.join(", ")
+            ),
+        ));
+    }
+    let analysis = &record.model.analysis;
+    if !first_order.is_empty() && analysis.order == "first" && analysis.imperfections == "none" {
+        out.push(item(
+            "first order",
+            format!(
+                "The analysis is of first order without imperfections; stability and second-order effects of compressed members are not shown: {}",
+                first_order.join(", ")
+            ),
+        ));
+    }
+    out
+}
+
+/// Members without any check of strength, stability or deflection.
+fn unchecked(record: &Record) -> Option<OpenItem> {
+    if !record.checks.is_empty() {
+        return None;
+    }
+    let names: Vec<&str> = record.results.members.keys().map(String::as_str).collect();
+    Some(item(
+        "members without checks",
+        format!(
+            "This package gives effects of actions only: strength, stability and deflection of {} are to be checked elsewhere",
+            names.join(", ")
+        ),
+    ))
+}
