@@ -19,6 +19,7 @@ mod mechanism;
 mod member;
 mod parts;
 mod roots;
+mod self_check;
 mod side;
 mod solution;
 mod solve;
@@ -56,5 +57,5 @@ pub fn govern(model: &Model, solution: &Solution) -> Governing {
 /// Holds the solution against equilibrium, energy and an independent integration.
 #[must_use]
 pub fn self_check(model: &Model, solution: &Solution) -> SelfCheck {
-    todo!("{} {}", model.nodes.len(), solution.states.len())
+    self_check::self_check(model, solution)
 }
