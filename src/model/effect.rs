@@ -86,6 +86,18 @@ impl Effect {
         }
     }
 
+    /// 0 for forces, 1 for moments, 2 for displacements and deflections, 3 for rotations: effects of a
+    /// group are of one kind and can be compared.
+    #[must_use]
+    pub const fn group(self) -> usize {
+        match self {
+            Self::N | Self::Vy | Self::Vz => 0,
+            Self::T | Self::My | Self::Mz => 1,
+            Self::U | Self::V | Self::W | Self::Dy | Self::Dz => 2,
+            Self::ThetaX | Self::ThetaY | Self::ThetaZ => 3,
+        }
+    }
+
     /// The effect of a name.
     #[must_use]
     pub fn from_name(name: &str) -> Option<Self> {

@@ -40,14 +40,8 @@ pub(super) fn independent(model: &Model, solution: &Solution) -> Option<Independ
             path.jump(&mut state, end, member.length);
         }
     }
-    // Effects of a kind share a scale: forces, moments, displacements, rotations.
-    let scale = |k: usize| {
-        let kind = EFFECTS[k].kind();
-        (0..STORED)
-            .filter(|other| EFFECTS[*other].kind() == kind)
-            .map(|other| largest[other])
-            .fold(0.0, f64::max)
-    };
+    let scales = path.scales(&largest);
+    let scale = |k: usize| scales[EFFECTS[k].group()];
     let differences: Vec<(Effect, f64)> =
         (0..STORED).map(|k| (EFFECTS[k], relative(errors[k], scale(k)))).collect();
     Some(Independent {
@@ -151,6 +145,24 @@ impl<'m> Path<'m> {
             bending: [section.i_y, section.i_z, section.i_yz].map(|second| material.e * second),
             shear: [shear(section.a_sy), shear(section.a_sz)],
         })
+    }
+
+    /// Scales of forces, moments, displacements and rotations from the largest of each effect. A field
+    /// that vanishes is judged by what the others of the member would make of it.
+    fn scales(&self, largest: &State) -> [f64; 4] {
+        let of = |group: usize| {
+            let members = (0..STORED).filter(|k| EFFECTS[*k].group() == group);
+            members.map(|k| largest[k]).fold(0.0, f64::max)
+        };
+        let length = self.member.length;
+        let softest = self.bending[0].min(self.bending[1]);
+        let force = of(0).max(of(1) / length);
+        let moment = of(1).max(of(0) * length);
+        let rotation = of(3)
+            .max(largest[Effect::My.index()].max(largest[Effect::Mz.index()]) * length / softest);
+        let displacement =
+            of(2).max(rotation * length).max(largest[Effect::N.index()] * length / self.axial);
+        [force, moment, displacement, rotation]
     }
 
     /// Ends of the stretches between breaks inside (from, to], ascending.
