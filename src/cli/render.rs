@@ -58,10 +58,10 @@ fn render(problem: &Diagnostic, folder: &Path, sources: Option<&Sources>) -> Str
         }
         _ => Group::with_title(title),
     };
-    if place.is_none() || text.is_none() {
-        if let Some(label) = &problem.label {
-            group = group.element(Level::NOTE.message(label.as_str()));
-        }
+    if (place.is_none() || text.is_none())
+        && let Some(label) = &problem.label
+    {
+        group = group.element(Level::NOTE.message(label.as_str()));
     }
     for hint in &problem.hints {
         group = group.element(Level::HELP.message(hint.as_str()));

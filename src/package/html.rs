@@ -15,6 +15,9 @@ use crate::record::Record;
 
 const STYLE: &str = include_str!("../../styles/page.css");
 
+/// Tables of at most so many rows stay on one sheet.
+const TOGETHER: usize = 14;
+
 /// The whole page.
 pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> String {
     let body = Body::new(markdown, drawings);
@@ -31,15 +34,18 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> Stri
         escaped(&title),
         sheet(record, mark),
     );
-    let _ = write!(
+    let _ = writeln!(
         out,
-        "<header class=\"head\"><span>{}</span> <span>{}</span> <span>Revision {}</span></header>\n",
+        "<header class=\"head\"><span>{}</span> <span>{}</span> <span>Revision {}</span></header>",
         escaped(&project.number),
         escaped(&project.title),
         escaped(mark),
     );
+    // The cover comes first, then the contents.
+    let (cover, rest) = body.html.split_at(body.contents_at());
+    let _ = write!(out, "<div class=\"cover\">\n{cover}</div>\n");
     out += "<nav class=\"contents\" aria-label=\"Contents\">\n<h2>Contents</h2>\n<ol>\n";
-    for entry in &body.contents {
+    for entry in body.contents.iter().skip(1) {
         let _ = writeln!(
             out,
             "<li class=\"level-{}\"><a href=\"#{}\">{}</a></li>",
@@ -47,7 +53,7 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> Stri
         );
     }
     out += "</ol>\n</nav>\n<main>\n";
-    out += &body.html;
+    out += rest;
     out += "</main>\n</body>\n</html>\n";
     out
 }
@@ -102,6 +108,8 @@ pub(super) fn escaped(text: &str) -> String {
 /// A line of the table of contents.
 struct Entry {
     level: u8,
+    /// Where its heading begins in the body.
+    at: usize,
     id: String,
     /// HTML.
     title: String,
@@ -119,6 +127,9 @@ struct Body<'d> {
     caption: Option<String>,
     alignments: Vec<Alignment>,
     column: usize,
+    /// Where the present table begins, and how many rows it has.
+    table: usize,
+    rows: usize,
     in_head: bool,
     /// An image whose description is being read: where it goes, and its text.
     image: Option<(String, String)>,
@@ -138,6 +149,8 @@ impl<'d> Body<'d> {
             caption: None,
             alignments: Vec::new(),
             column: 0,
+            table: 0,
+            rows: 0,
             in_head: false,
             image: None,
             in_code: false,
@@ -148,6 +161,12 @@ impl<'d> Body<'d> {
             body.take(event);
         }
         body
+    }
+
+    /// Where the first chapter behind the cover begins.
+    fn contents_at(&self) -> usize {
+        let chapters = self.contents.iter().filter(|entry| entry.level == 1);
+        chapters.map(|entry| entry.at).nth(1).unwrap_or(self.html.len())
     }
 
     fn take(&mut self, event: Event<'_>) {
@@ -218,6 +237,8 @@ impl<'d> Body<'d> {
             Tag::Strong => self.html += "<strong>",
             Tag::Table(alignments) => {
                 self.alignments = alignments;
+                self.table = self.html.len();
+                self.rows = 0;
                 self.html += "<div class=\"table\">\n<table>\n";
                 if let Some(caption) = self.caption.take() {
                     let _ = writeln!(self.html, "<caption>{caption}</caption>");
@@ -230,6 +251,7 @@ impl<'d> Body<'d> {
             }
             Tag::TableRow => {
                 self.column = 0;
+                self.rows += 1;
                 self.html += "<tr>";
             }
             Tag::TableCell => {
@@ -268,7 +290,13 @@ impl<'d> Body<'d> {
             TagEnd::BlockQuote(_) => self.html += "</blockquote>\n",
             TagEnd::Emphasis => self.html += "</em>",
             TagEnd::Strong => self.html += "</strong>",
-            TagEnd::Table => self.html += "</tbody>\n</table>\n</div>\n",
+            TagEnd::Table => {
+                self.html += "</tbody>\n</table>\n</div>\n";
+                if self.rows <= TOGETHER {
+                    let opening = "<div class=\"table";
+                    self.html.insert_str(self.table + opening.len(), " short");
+                }
+            }
             TagEnd::TableHead => {
                 self.in_head = false;
                 self.html += "</tr>\n</thead>\n<tbody>\n";
@@ -300,9 +328,10 @@ impl<'d> Body<'d> {
         let Some((level, start)) = self.heading.take() else { return };
         let title = self.html.split_off(start);
         let id = self.id(&title);
+        let at = self.html.len();
         let _ = writeln!(self.html, "<h{level} id=\"{id}\">{title}</h{level}>");
         if level < 3 {
-            self.contents.push(Entry { level, id, title });
+            self.contents.push(Entry { level, at, id, title });
         }
     }
 
@@ -353,9 +382,9 @@ impl<'d> Body<'d> {
 }
 
 /// Letters that begin a symbol with a subscript.
-const SYMBOLS: [&str; 20] = [
-    "N", "V", "M", "T", "I", "W", "A", "E", "G", "F", "f", "i", "d", "w", "t", "r", "y", "z",
-    "theta", "q",
+const SYMBOLS: [&str; 22] = [
+    "h", "b", "N", "V", "M", "T", "I", "W", "A", "E", "G", "F", "f", "i", "d", "w", "t", "r", "y",
+    "z", "theta", "q",
 ];
 
 /// Text with `M_y`, `theta_y`, `W_el_y` and the like set as symbols with subscripts.

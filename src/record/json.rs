@@ -58,22 +58,26 @@ impl Record {
 
 /// What stands on one line: a value whose parts nobody compares one by one.
 fn on_one_line(path: &[&str]) -> bool {
-    match path {
-        ["program"] | ["basis" | "project", _, _] => true,
-        ["model", "units" | "analysis" | "package" | "solve_order"] => true,
-        ["model", "materials" | "sections" | "values" | "build_ups", _] => true,
-        ["model", "structures", _, "nodes" | "members", _] => true,
-        ["model", "cases", _, "loads", _] | ["model", "cases", _, "resultant"] => true,
-        ["combinations" | "checks", _] | ["registers", _, _] => true,
-        ["results", "nodes", _] => true,
-        ["results", "members", _, "segments", _] => true,
-        ["results", "members", _, "governing", _, _, _] => true,
-        ["results", "members", _, "spans", _, "governing", _, _, _] => true,
-        ["results", "reactions", _, _, _, _] => true,
-        ["self_check", "structures", _, _, _] => true,
-        ["self_check", "independent"] | ["self_check", "strain_energy", _] => true,
-        _ => false,
-    }
+    matches!(
+        path,
+        ["program"]
+            | ["basis" | "project", _, _]
+            | ["model", "units" | "analysis" | "package" | "solve_order"]
+            | ["model", "materials" | "sections" | "values" | "build_ups", _]
+            | ["model", "structures", _, "nodes" | "members", _]
+            | ["model", "cases", _, "loads", _]
+            | ["model", "cases", _, "resultant"]
+            | ["combinations" | "checks", _]
+            | ["registers", _, _]
+            | ["results", "nodes", _]
+            | ["results", "members", _, "segments", _]
+            | ["results", "members", _, "governing", _, _, _]
+            | ["results", "members", _, "spans", _, "governing", _, _, _]
+            | ["results", "reactions", _, _, _, _]
+            | ["self_check", "structures", _, _, _]
+            | ["self_check", "independent"]
+            | ["self_check", "strain_energy", _]
+    )
 }
 
 fn write<'v>(out: &mut String, value: &'v Value, path: &mut Vec<&'v str>) {

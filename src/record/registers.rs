@@ -16,8 +16,9 @@ pub(super) fn registers(record: &Record) -> Registers {
     Registers { open_items }
 }
 
+/// A sentence, ended once however the project's own words end.
 fn item(kind: &str, text: String) -> OpenItem {
-    OpenItem { kind: kind.to_owned(), text }
+    OpenItem { kind: kind.to_owned(), text: format!("{}.", text.trim_end_matches(['.', ' '])) }
 }
 
 fn assumptions(record: &Record) -> impl Iterator<Item = OpenItem> {

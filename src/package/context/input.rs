@@ -42,7 +42,7 @@ pub(super) fn settings(record: &Record) -> Settings<'_> {
 
 #[derive(Serialize)]
 pub(super) struct UnitRow<'r> {
-    what: &'static str,
+    what: String,
     unit: &'r str,
 }
 
@@ -54,7 +54,7 @@ pub(super) fn units(record: &Record) -> Vec<UnitRow<'_>> {
         .iter()
         .filter_map(|(name, (unit, _))| {
             let kind = Kind::from_name(name)?;
-            Some(UnitRow { what: kind.description(), unit })
+            Some(UnitRow { what: kind.name().replace('_', " "), unit })
         })
         .filter(|row| !row.unit.is_empty())
         .collect()

@@ -31,10 +31,10 @@ pub(super) fn load(
     let mut file = |kind: LoadKind, said: Written| {
         out.push(Load { kind, written: said, source: source.clone(), origin: written.place() });
     };
-    if let Some(node) = node {
-        if let Some((kind, said)) = on_node(reader, model, written, node) {
-            file(kind, said);
-        }
+    if let Some(node) = node
+        && let Some((kind, said)) = on_node(reader, model, written, node)
+    {
+        file(kind, said);
     }
     for id in members {
         if let Some((kind, said)) = on_member(reader, model, written, id) {
@@ -227,10 +227,7 @@ fn line(
     id: MemberId,
     stretch: &Stretch,
 ) -> Resolved {
-    let width = match &written.width {
-        Some(text) => Some(reader.positive(text, Kind::Length)),
-        None => None,
-    };
+    let width = written.width.as_ref().map(|text| reader.positive(text, Kind::Length));
     let (form, values, build_up) = if let Some(text) = &written.uniform {
         (LoadForm::Uniform, vec![reader.quantity(text, Kind::LineLoad)?], None)
     } else if let Some([start, end]) = &written.varying {
