@@ -382,9 +382,9 @@ impl<'d> Body<'d> {
 }
 
 /// Letters that begin a symbol with a subscript.
-const SYMBOLS: [&str; 22] = [
+const SYMBOLS: [&str; 21] = [
     "h", "b", "N", "V", "M", "T", "I", "W", "A", "E", "G", "F", "f", "i", "d", "w", "t", "r", "y",
-    "z", "theta", "q",
+    "z", "theta",
 ];
 
 /// Text with `M_y`, `theta_y`, `W_el_y` and the like set as symbols with subscripts.
