@@ -14,25 +14,6 @@ use crate::quantity::{Kind, System, Units, parse_unit};
 
 const SIGNIFICANT: std::ops::RangeInclusive<usize> = 3..=8;
 
-pub(super) fn format(reader: &mut Reader, format: &Text) {
-    match format.as_str().parse::<u64>() {
-        Ok(1) => {}
-        Ok(newer) if newer > 1 => reader.problem(
-            Diagnostic::error(
-                "newer-format",
-                format!("this file has format {newer}; this program reads format 1"),
-            )
-            .at(format.place())
-            .hint("use a newer version of the program".to_owned()),
-        ),
-        _ => reader.error(
-            "format",
-            format!("`{format}` is not a format of this file: write 1"),
-            format.place(),
-        ),
-    }
-}
-
 pub(super) fn project(reader: &mut Reader, written: &written::ProjectInfo) -> ProjectInfo {
     let mut marks = Names::default();
     if written.revisions.is_empty() {

@@ -33,7 +33,6 @@ pub(super) fn resolve(
     project: &written::Project,
 ) -> Result<(Model, Vec<Diagnostic>), Vec<Diagnostic>> {
     let mut reader = Reader::default();
-    about::format(&mut reader, &project.format);
     let (units, significant) = about::printing(&mut reader, project);
     let mut model = Model {
         project: about::project(&mut reader, &project.project),

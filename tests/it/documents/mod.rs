@@ -5,3 +5,4 @@ mod figures;
 mod project_file;
 mod project_schema;
 mod project_untrusted;
+mod resolve;
