@@ -26,7 +26,7 @@ pub(super) fn escaped(text: &str) -> String {
             '#' | '>' | '+' | '-' | '=' if before.is_none() => {
                 let _ = write!(out, "\\{c}");
             }
-            '.' | ')' if text_is_number(&out) => {
+            '.' | ')' if is_number(&out) && rest.peek().is_none_or(|c| c.is_whitespace()) => {
                 let _ = write!(out, "\\{c}");
             }
             _ => out.push(c),
@@ -36,8 +36,8 @@ pub(super) fn escaped(text: &str) -> String {
     out
 }
 
-/// Digits alone before a point or bracket would begin a numbered list.
-fn text_is_number(so_far: &str) -> bool {
+/// Digits alone before a point or bracket and a space would begin a numbered list.
+fn is_number(so_far: &str) -> bool {
     !so_far.is_empty() && so_far.chars().all(|c| c.is_ascii_digit())
 }
 

@@ -2,6 +2,7 @@
 
 mod demos;
 mod figures;
+mod package;
 mod project_file;
 mod project_schema;
 mod project_untrusted;
