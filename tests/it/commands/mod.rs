@@ -1,3 +1,9 @@
-//! See the files beside this one.
+//! The built program, run the way an engineer runs it.
 
 mod catalogue;
+mod files;
+mod help;
+mod issue;
+mod project;
+mod solve;
+mod start;
