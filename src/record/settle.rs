@@ -20,7 +20,10 @@ type Scales = [f64; EFFECTS.len()];
 impl Record {
     /// Rounds all results; doing it twice changes nothing.
     pub(super) fn settle(&mut self) {
-        let structures = std::mem::take(&mut self.model.structures);
+        let mut structures = std::mem::take(&mut self.model.structures);
+        for member in structures.values_mut().flat_map(|structure| structure.members.values_mut()) {
+            settle_places(member);
+        }
         for structure in structures.values() {
             let scales = self.scales(structure.members.keys());
             for (name, member) in &structure.members {
@@ -36,6 +39,8 @@ impl Record {
                 settle_vector(resultant);
             }
             for load in &mut case.loads {
+                let places = load.from.iter_mut().chain(&mut load.to).chain(&mut load.at);
+                places.for_each(|x| *x = rounded(*x));
                 let scale = largest(load.start.iter().chain(&load.end));
                 settle_values(load.start.iter_mut().chain(&mut load.end), scale);
                 let scale = largest(&load.moment);
@@ -66,6 +71,7 @@ impl Record {
     fn settle_member(&mut self, name: &str, member: &MemberRecord, scales: &Scales) {
         let Some(result) = self.results.members.get_mut(name) else { return };
         for segment in &mut result.segments {
+            (segment.from, segment.to) = (rounded(segment.from), rounded(segment.to));
             let length = segment.to - segment.from;
             for fields in segment.fields.values_mut() {
                 for (polynomial, scale) in fields.0.iter_mut().zip(scales).take(STORED) {
@@ -169,6 +175,16 @@ impl Record {
             settle_values(energies.values_mut(), scale);
         }
     }
+}
+
+/// Places along a member are rounded alike wherever they stand, so that a governing place at a jump is
+/// still on the side that it names.
+fn settle_places(member: &mut MemberRecord) {
+    member.length = rounded(member.length);
+    let stations = member.stations.iter_mut();
+    let hinges = member.hinges.iter_mut().map(|hinge| &mut hinge.x);
+    let spans = member.spans.iter_mut().flat_map(|span| [&mut span.from, &mut span.to]);
+    stations.chain(hinges).chain(spans).for_each(|x| *x = rounded(*x));
 }
 
 /// Fills `d_y` and `d_z` from the displacements, as the analysis does.

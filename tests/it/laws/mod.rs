@@ -1,6 +1,9 @@
 //! See the files beside this one.
 
 mod frames;
+mod governing;
 mod module_order;
 mod quantities;
+mod record;
 mod sections;
+mod self_check;
