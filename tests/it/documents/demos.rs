@@ -103,7 +103,7 @@ fn the_portal_thrusts_as_published() {
 #[test]
 fn the_beam_under_the_pump_is_a_simple_beam() {
     let record = solved(&text("pump-platform"));
-    const KIP: f64 = 4448.221_615_260_5;
+    const KIP: f64 = 4_448.221_615_260_5;
     const FOOT: f64 = 0.3048;
     let (length, force) = (8.0 * FOOT, |kip: f64| kip * KIP);
     let load = record.model.cases["DL"].loads.iter().find(|load| {
