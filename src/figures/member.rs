@@ -21,6 +21,8 @@ const HEIGHT: f64 = 19.0;
 const HEIGHTS: f64 = 195.0;
 /// An effect below this share of the greatest related one is drawn half as high.
 const MINOR: f64 = 0.02;
+/// With more spans than these only the extremes of the whole member are written, not those of each span.
+const WRITTEN: usize = 8;
 /// Clear height between two effects, mm.
 const GAP: f64 = 11.0;
 
@@ -120,6 +122,9 @@ impl Drawing<'_> {
                 self.combinations.len()
             );
         }
+        if self.crowded() {
+            caption += " Values of single spans stand in the tables.";
+        }
         let description = format!(
             "Diagrams under a sketch of the member with its supports, from its start at the left to its \
              end at the right, with the envelope over all combinations and the extremes marked. {caption}"
@@ -133,6 +138,11 @@ impl Drawing<'_> {
             purpose: Some(self.purpose.name().to_owned()),
             ..Figure::default()
         }
+    }
+
+    /// There are too many spans to write a value at each.
+    pub(super) fn crowded(&self) -> bool {
+        self.member.spans.len() > WRITTEN
     }
 
     fn scale(&self) -> f64 {
@@ -171,13 +181,18 @@ impl Drawing<'_> {
         let zeros = self.zeros(effect, extremes);
         for x in &zeros {
             zero(canvas, [self.x(*x), axis]);
-            let text = Text::new(self.sheet.printer.number(Kind::Length, *x));
-            canvas.label([self.x(*x), axis], [0.5, -sign], 5, text);
+            if !self.crowded() {
+                let text = Text::new(self.sheet.printer.number(Kind::Length, *x));
+                canvas.label([self.x(*x), axis], [0.5, -sign], 5, text);
+            }
         }
         for (found, rank) in self.marked(effect) {
             let Some(x) = found.x else { continue };
             let at = place([x, found.value]);
             extreme(canvas, at);
+            if self.crowded() && rank > 2 {
+                continue;
+            }
             let outwards = if (found.value > 0.0) == down { 1.0 } else { -1.0 };
             let text = self.extreme_text(effect, found, rank);
             canvas.label(at, [0.2, outwards], rank, text);

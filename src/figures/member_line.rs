@@ -13,6 +13,13 @@ impl Drawing<'_> {
     pub(super) fn member_line(&self, canvas: &mut Canvas) {
         let axes = self.member.axes;
         let direction = |vector: [f64; 3]| [dot(axes[0], vector), -dot(axes[2], vector)];
+        // Between neighbouring nodes where they stand closest.
+        let room = self
+            .member
+            .stations
+            .windows(2)
+            .map(|pair| self.x(pair[1]) - self.x(pair[0]))
+            .fold(f64::INFINITY, f64::min);
         for (node, station) in self.member.along.iter().zip(&self.member.stations) {
             let at = [self.x(*station), 0.0];
             self.neighbours(canvas, node, at, direction);
@@ -31,7 +38,11 @@ impl Drawing<'_> {
                 };
                 symbols::support(canvas, at, support, direction, members, self.sheet.view.space);
             }
-            canvas.label(at, [0.0, -1.0], 0, Text::new(node.as_str()).strong());
+            let name = Text::new(node.as_str()).strong();
+            let outer = *station <= 0.0 || *station >= self.member.length;
+            if outer || !self.crowded() || name.width() < room {
+                canvas.label(at, [0.0, -1.0], 0, name);
+            }
         }
         canvas.line([ENDS[0], 0.0], [ENDS[1], 0.0], Pen::Member);
         for hinge in &self.member.hinges {
@@ -50,6 +61,8 @@ impl Drawing<'_> {
             let [a, b] = [self.x(span.from), self.x(span.to)];
             if text.width() < b - a {
                 symbols::dimension(canvas, [a, y], [b, y], text);
+            } else if self.crowded() {
+                symbols::dimension(canvas, [a, y], [b, y], &Text::new(""));
             } else {
                 canvas.line([a, y], [b, y], Pen::Hair);
                 canvas.label([(a + b) / 2.0, y], [0.0, 1.0], 2, text.clone());

@@ -7,7 +7,7 @@ use crate::record::StructureRecord;
 /// Clear width left and right of a structure, mm.
 const MARGIN: f64 = 24.0;
 /// Greatest height of a structure on the paper, mm.
-const HEIGHT: f64 = 105.0;
+const HEIGHT: f64 = 78.0;
 
 /// A parallel projection at a scale.
 #[derive(Clone, Copy, Debug)]
