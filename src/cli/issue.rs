@@ -3,7 +3,6 @@
 use super::{Project, Status, render, wrong};
 use crate::files;
 use crate::package::package;
-use crate::solve;
 
 #[derive(Debug, clap::Args)]
 pub(super) struct Arguments {
@@ -13,15 +12,10 @@ pub(super) struct Arguments {
 
 pub(super) fn run(arguments: &Arguments) -> Status {
     let folder = arguments.project.folder();
-    let sources = match arguments.project.read() {
-        Ok(sources) => sources,
-        Err(problems) => return wrong(&problems, &folder, None),
+    let (sources, solved) = match arguments.project.solve() {
+        Ok(both) => both,
+        Err(status) => return status,
     };
-    let solved = match solve(&sources) {
-        Ok(solved) => solved,
-        Err(problems) => return wrong(&problems, &folder, Some(&sources)),
-    };
-    render::print(&solved.warnings, &folder, Some(&sources));
     if !solved.record.self_check.satisfied {
         anstream::eprintln!("the self-check is out of tolerance; nothing was written");
         return Status::CouldNot;

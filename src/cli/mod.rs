@@ -19,6 +19,7 @@ use std::path::{Path, PathBuf};
 
 use clap::{CommandFactory, Parser, Subcommand};
 
+use crate::Solved;
 use crate::diagnostic::Diagnostic;
 use crate::files::{self, Sources};
 
@@ -105,11 +106,20 @@ impl Project {
         files::folder(&self.path)
     }
 
-    /// Reads the sources, mending first what an interrupted command left behind.
-    fn read(&self) -> Result<Sources, Vec<Diagnostic>> {
-        let sources = files::read(&self.path)?;
-        files::heal(&self.folder()).map_err(|problem| vec![problem])?;
-        Ok(sources)
+    /// Reads and solves the project, mending first what an interrupted command left behind; prints
+    /// problems and warnings.
+    fn solve(&self) -> Result<(Sources, Solved), Status> {
+        let folder = self.folder();
+        let sources =
+            files::read(&self.path).map_err(|problems| wrong(&problems, &folder, None))?;
+        files::heal(&folder).map_err(|problem| {
+            render::print(&[problem], &folder, None);
+            Status::CouldNot
+        })?;
+        let solved =
+            crate::solve(&sources).map_err(|problems| wrong(&problems, &folder, Some(&sources)))?;
+        render::print(&solved.warnings, &folder, Some(&sources));
+        Ok((sources, solved))
     }
 }
 

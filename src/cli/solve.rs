@@ -1,11 +1,10 @@
 //! `spanfolio solve`
 
 use super::table::{Align, Table};
-use super::{Project, Status, point, render, wrong};
+use super::{Project, Status, point, wrong};
 use crate::model::Effect;
 use crate::quantity::{Kind, Printer};
 use crate::record::{ExtremeRecord, ExtremesRecord, MemberResult, Record};
-use crate::solve;
 
 #[derive(Debug, clap::Args)]
 pub(super) struct Arguments {
@@ -20,23 +19,17 @@ pub(super) struct Arguments {
 }
 
 pub(super) fn run(arguments: &Arguments) -> Status {
-    let folder = arguments.project.folder();
-    let sources = match arguments.project.read() {
-        Ok(sources) => sources,
-        Err(problems) => return wrong(&problems, &folder, None),
+    let solved = match arguments.project.solve() {
+        Ok((_, solved)) => solved,
+        Err(status) => return status,
     };
-    let solved = match solve(&sources) {
-        Ok(solved) => solved,
-        Err(problems) => return wrong(&problems, &folder, Some(&sources)),
-    };
-    render::print(&solved.warnings, &folder, Some(&sources));
     let record = &solved.record;
     if arguments.json {
         anstream::print!("{}", record.to_json());
     } else if let Some(place) = &arguments.at {
         match point::table(record, place) {
             Ok(table) => anstream::print!("{table}"),
-            Err(problem) => return wrong(&[problem], &folder, None),
+            Err(problem) => return wrong(&[problem], &arguments.project.folder(), None),
         }
     } else {
         anstream::print!("{}", summary(record));

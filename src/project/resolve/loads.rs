@@ -1,8 +1,10 @@
 //! One load as written → what acts, in global axes.
 
 use super::geometry::{Vector, dot, scaled};
-use super::members::{frame, spans_unclear};
+use super::handed::{giver, handed};
+use super::members::frame;
 use super::reader::Reader;
+use super::stretch::{Stretch, stretch};
 use crate::diagnostic::Diagnostic;
 use crate::model::{
     BuildUpId, Direction, Frame, Freedom, Handed, Load, LoadForm, LoadKind, MemberId, Model,
@@ -13,9 +15,7 @@ use crate::project::written;
 use crate::quantity::Kind;
 
 /// Positions may pass an end by this share of the member's length, for round-off.
-const END: f64 = 1e-9;
-/// Most repeated reactions of one load.
-const MOST: f64 = 10_000.0;
+pub(super) const END: f64 = 1e-9;
 
 /// The loads that one written load makes: one for each member it names.
 pub(super) fn load(
@@ -50,14 +50,17 @@ pub(super) fn member(reader: &mut Reader, model: &Model, name: &Text) -> Option<
     reader.find(name, "member", "unknown-member", known).map(MemberId)
 }
 
-fn any_node(reader: &mut Reader, model: &Model, name: &Text) -> Option<NodeId> {
+/// The node of a name, anywhere in the project.
+pub(super) fn any_node(reader: &mut Reader, model: &Model, name: &Text) -> Option<NodeId> {
     let known = model.nodes.iter().map(|node| node.name.as_str());
     reader.find(name, "node", "unknown-node", known).map(NodeId)
 }
 
-type Resolved = Option<(LoadKind, Written)>;
+/// What acts and how it was written; `None` where something was wrong and reported.
+pub(super) type Resolved = Option<(LoadKind, Written)>;
 
-fn said(form: LoadForm, values: Vec<f64>) -> Written {
+/// How a load was written, downward and per length; the callers set the rest.
+pub(super) fn said(form: LoadForm, values: Vec<f64>) -> Written {
     Written {
         form,
         direction: Direction::DOWN,
@@ -298,100 +301,6 @@ fn line(
     Some((LoadKind::Line { member: id, from, to, start, end }, said))
 }
 
-fn handed(
-    reader: &mut Reader,
-    model: &Model,
-    written: &Located<written::Load>,
-    from: &Text,
-    id: MemberId,
-    stretch: &Stretch,
-) -> Resolved {
-    let giver = giver(reader, model, from, model[id].structure)?;
-    let at = match (&written.at, &written.every) {
-        (Some(at), None) => vec![stretch.position(reader, at)?],
-        (None, Some(every)) => {
-            let spacing = reader.positive(every, Kind::Length);
-            let first = written.from.as_ref().map(|text| stretch.position(reader, text));
-            let last = written.to.as_ref().map(|text| stretch.position(reader, text));
-            let first = first.unwrap_or(Some(stretch.from))?;
-            let last = last.unwrap_or(Some(stretch.to))?;
-            repeated(reader, every, first, last, spacing?, model[id].length)?
-        }
-        _ => {
-            reader.problem(
-                Diagnostic::error(
-                    "missing-key",
-                    "a reaction on a member needs `at`, or `every` with `from` and `to`",
-                )
-                .at(from.place()),
-            );
-            return None;
-        }
-    };
-    let every = written.every.as_ref().and_then(|text| reader.quantity(text, Kind::Length));
-    let said = Written { every, span: stretch.span, ..said(LoadForm::ReactionOf, Vec::new()) };
-    Some((LoadKind::Handed(Handed { from: giver, to: Target::Member(id), at }), said))
-}
-
-fn repeated(
-    reader: &mut Reader,
-    every: &Text,
-    first: f64,
-    last: f64,
-    spacing: f64,
-    length: f64,
-) -> Option<Vec<f64>> {
-    if (last - first) / spacing > MOST {
-        reader.error(
-            "too-many",
-            format!("more than {MOST} reactions on one member"),
-            every.place(),
-        );
-        return None;
-    }
-    let mut out = Vec::new();
-    loop {
-        #[expect(clippy::cast_precision_loss, reason = "at most ten thousand positions")]
-        let x = first + out.len() as f64 * spacing;
-        if x > last + END * length {
-            return Some(out);
-        }
-        out.push(x.min(last));
-    }
-}
-
-/// The node whose reaction is handed on: supported, and of another structure.
-fn giver(
-    reader: &mut Reader,
-    model: &Model,
-    name: &Text,
-    receiver: crate::model::StructureId,
-) -> Option<NodeId> {
-    let id = any_node(reader, model, name)?;
-    if model[id].support.is_none() {
-        reader.problem(
-            Diagnostic::error(
-                "no-reaction",
-                format!("node `{name}` has no support, so it has no reaction"),
-            )
-            .at(name.place()),
-        );
-        return None;
-    }
-    if model[id].structure == receiver {
-        reader.problem(
-            Diagnostic::error(
-                "own-reaction",
-                format!("node `{name}` belongs to the structure that is loaded"),
-            )
-            .at(name.place())
-            .hint("reactions are handed on from another structure".to_owned()),
-        );
-        return None;
-    }
-    Some(id)
-}
-
 fn warmed(
     reader: &mut Reader,
     model: &Model,
@@ -430,80 +339,6 @@ fn warmed(
         gradient_y: 0.0,
     };
     Some((kind, said(LoadForm::Warming, vec![top, bottom])))
-}
-
-/// The part of a member that positions of a load run along.
-struct Stretch {
-    from: f64,
-    to: f64,
-    /// Counted from 1.
-    span: Option<usize>,
-    what: String,
-    slack: f64,
-}
-
-fn stretch(
-    reader: &mut Reader,
-    model: &Model,
-    written: &Located<written::Load>,
-    id: MemberId,
-) -> Option<Stretch> {
-    let member = &model[id];
-    let slack = END * member.length;
-    let Some(text) = &written.span else {
-        let what = format!("member `{}`", member.name);
-        return Some(Stretch { from: 0.0, to: member.length, span: None, what, slack });
-    };
-    if spans_unclear(model, id.0) {
-        reader.problem(
-            Diagnostic::error(
-                "spans",
-                format!(
-                    "member `{}` has no `spans`, and another member frames in between its supports",
-                    member.name
-                ),
-            )
-            .at(text.place())
-            .hint("say which nodes bound its spans: `spans: [...]`".to_owned()),
-        );
-        return None;
-    }
-    let number = reader.whole(text)?;
-    let Some(span) = number.checked_sub(1).and_then(|place| member.spans.get(place)) else {
-        reader.problem(
-            Diagnostic::error(
-                "unknown-span",
-                format!("member `{}` has no span {number}", member.name),
-            )
-            .at(text.place())
-            .label(format!("it has {}", member.spans.len())),
-        );
-        return None;
-    };
-    Some(Stretch {
-        from: span.from,
-        to: span.to,
-        span: Some(number),
-        what: format!("span {number} of member `{}`", member.name),
-        slack,
-    })
-}
-
-impl Stretch {
-    /// A position along the member from one along the stretch.
-    fn position(&self, reader: &mut Reader, text: &Text) -> Option<f64> {
-        let offset = reader.quantity(text, Kind::Length)?;
-        let length = self.to - self.from;
-        if offset < -self.slack || offset > length + self.slack {
-            reader.problem(
-                Diagnostic::error("off-member", format!("`{text}` is not on {}", self.what))
-                    .at(text.place())
-                    .label(format!("it runs from 0 to {length:.6} m")),
-            );
-            return None;
-        }
-        Some(self.from + offset.clamp(0.0, length))
-    }
 }
 
 /// The direction of a load as written and as a unit vector.
