@@ -47,7 +47,16 @@ pub(super) fn figures(sheet: &Sheet<'_>) -> Vec<Figure> {
         }
         let mut figures: Vec<Figure> = effects
             .par_iter()
-            .filter_map(|effect| Frame { sheet, purpose, effect: *effect, greatest: 0.0 }.figure())
+            .filter_map(|effect| {
+                Frame {
+                    sheet,
+                    purpose,
+                    combinations: &combinations,
+                    effect: *effect,
+                    greatest: 0.0,
+                }
+                .figure()
+            })
             .collect();
         figures.extend(displaced(sheet, purpose, &combinations));
         figures
@@ -65,6 +74,8 @@ fn is_frame(structure: &StructureRecord) -> bool {
 struct Frame<'a> {
     sheet: &'a Sheet<'a>,
     purpose: Purpose,
+    /// Names of the combinations of the purpose.
+    combinations: &'a [&'a str],
     effect: Effect,
     /// Greatest absolute value on the structure.
     greatest: f64,
@@ -106,20 +117,20 @@ impl Frame<'_> {
         self.write_values(&mut canvas, values);
         let top = canvas.bottom() + 6.0;
         let unit = &self.sheet.printer.units.get(self.effect.kind()).label;
-        legend(
-            &mut canvas,
-            top,
-            &[
-                (
-                    Sample::Line(Pen::Outline),
-                    Text::new("greatest and least ")
-                        .and_symbol(self.effect.name())
-                        .then(format!(", values in {unit}")),
-                ),
-                (Sample::Band, Text::new("envelope")),
-                (Sample::Extreme, Text::new("value written")),
-            ],
-        );
+        let mut entries = vec![
+            (
+                Sample::Line(Pen::Outline),
+                Text::new("greatest and least ")
+                    .and_symbol(self.effect.name())
+                    .then(format!(", values in {unit}")),
+            ),
+            (Sample::Band, Text::new("envelope")),
+        ];
+        if !self.faint().is_empty() {
+            entries.push((Sample::Line(Pen::Faint), Text::new("each combination")));
+        }
+        entries.push((Sample::Extreme, Text::new("value written")));
+        legend(&mut canvas, top, &entries);
         let name = self.sheet.name;
         let purpose = self.purpose.name();
         let id = format!("frame-{}.{purpose}.{}", slug(name), self.effect.name().to_lowercase());
@@ -148,6 +159,14 @@ impl Frame<'_> {
         }
     }
 
+    /// The combinations drawn one by one; a single one is its own envelope.
+    fn faint(&self) -> &[&str] {
+        match self.combinations.len() {
+            0 | 1 => &[],
+            several => &self.combinations[..several.min(COMBINATIONS)],
+        }
+    }
+
     /// The direction of positive ordinates on the paper for a value of one, in mm.
     fn ordinate(&self, member: &MemberRecord) -> Point {
         let axis = if self.effect == Effect::Mz { member.axes[1] } else { member.axes[2] };
@@ -173,6 +192,16 @@ impl Frame<'_> {
         let (least, greatest) = (edge(1), edge(2));
         let area: Vec<Point> = greatest.iter().chain(least.iter().rev()).copied().collect();
         canvas.polygon(&area, Pen::Band);
+        let run =
+            length(sub(self.sheet.paper(member, member.length), self.sheet.paper(member, 0.0)));
+        for combination in self.faint() {
+            let line: Vec<Point> =
+                curve::points(record, name, self.effect, combination, run / member.length)
+                    .into_iter()
+                    .map(|[x, value]| place(x, value))
+                    .collect();
+            canvas.polyline(&line, Pen::Faint);
+        }
         for mut line in [greatest, least] {
             line.insert(0, self.sheet.paper(member, 0.0));
             line.push(self.sheet.paper(member, member.length));
