@@ -81,7 +81,13 @@ fn on_node(
     written: &Located<written::Load>,
     node: NodeId,
 ) -> Resolved {
-    let plane = model[model[node].structure].frame == Frame::Plane;
+    let structure = &model[model[node].structure];
+    if !structure.nodes.contains(&node) {
+        let place = written.node.as_ref().map_or_else(|| written.place(), Text::place);
+        reader.error("no-member", format!("no member reaches node `{}`", model[node].name), place);
+        return None;
+    }
+    let plane = structure.frame == Frame::Plane;
     if let Some(from) = &written.reaction_of {
         let giver = giver(reader, model, from, model[node].structure)?;
         for text in [&written.at, &written.every, &written.from, &written.to].into_iter().flatten()

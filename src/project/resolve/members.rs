@@ -194,6 +194,7 @@ fn axes(
             let (direction, place) = match towards {
                 written::Towards::Word(text) => {
                     let id = node(reader, model, structure, text)?;
+                    reader.marks.insert(text.to_string());
                     (between(model[along[0]].at, model[id].at), text.place())
                 }
                 written::Towards::List(parts) => {

@@ -64,7 +64,7 @@ pub(super) fn resolve(
 
     let mut found = reader.found;
     if found.is_empty() {
-        let warnings = warnings::warnings(&model);
+        let warnings = warnings::warnings(&model, &reader.marks);
         return Ok((model, warnings));
     }
     found.sort_by_key(|problem| {

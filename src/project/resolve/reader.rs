@@ -1,6 +1,6 @@
 //! Leaves to numbers: quantities with their kinds, named values, plain numbers, names.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use crate::diagnostic::{Diagnostic, Place};
 use crate::project::near::nearest;
@@ -14,6 +14,8 @@ const HUGE: f64 = 1e18;
 #[derive(Debug, Default)]
 pub(super) struct Reader {
     pub(super) found: Vec<Diagnostic>,
+    /// Nodes that `z_towards` points to.
+    pub(super) marks: BTreeSet<String>,
     /// Named constants of the project.
     values: BTreeMap<String, Quantity>,
 }

@@ -75,12 +75,27 @@ fn one(
     supports::supports(reader, model, id, blocks);
     members::members(reader, model, names, id, blocks);
     supports::forks(reader, model, id, blocks);
+    part_with_marks(reader, model, id);
     if model.structures[id.0].members.is_empty() {
         reader.error("empty", format!("structure `{name}` has no member"), origin.clone());
     }
     if blocks.supports.is_none_or(Map::is_empty) {
         reader.error("no-support", format!("structure `{name}` has no support"), origin);
     }
+}
+
+/// Nodes that no member reaches only mark a place (`z_towards`): they are no part of the structure.
+fn part_with_marks(reader: &mut Reader, model: &mut Model, id: StructureId) {
+    let reached = |node: &NodeId| model.members.iter().any(|member| member.along.contains(node));
+    let (nodes, marks): (Vec<NodeId>, Vec<NodeId>) =
+        model[id].nodes.iter().copied().partition(reached);
+    for mark in marks {
+        if let Some(support) = &model[mark].support {
+            let message = format!("no member reaches the support at `{}`", model[mark].name);
+            reader.error("no-member", message, support.origin.clone());
+        }
+    }
+    model.structures[id.0].nodes = nodes;
 }
 
 fn position(reader: &mut Reader, node: &Text, at: &[Text], frame: Frame) -> Option<[f64; 3]> {

@@ -1,9 +1,11 @@
 //! What is odd but not wrong: things that nothing uses.
 
-use crate::diagnostic::{Diagnostic, Place};
-use crate::model::{CaseId, MaterialId, Model, SectionId};
+use std::collections::BTreeSet;
 
-pub(super) fn warnings(model: &Model) -> Vec<Diagnostic> {
+use crate::diagnostic::{Diagnostic, Place};
+use crate::model::{CaseId, MaterialId, Member, Model, NodeId, SectionId};
+
+pub(super) fn warnings(model: &Model, marks: &BTreeSet<String>) -> Vec<Diagnostic> {
     let mut out = Vec::new();
     let mut unused = |code, what: &str, name: &str, place: &Place| {
         out.push(
@@ -12,7 +14,8 @@ pub(super) fn warnings(model: &Model) -> Vec<Diagnostic> {
         );
     };
     for (index, node) in model.nodes.iter().enumerate() {
-        if !model.members.iter().any(|member| member.along.iter().any(|id| id.0 == index)) {
+        let reached = |member: &Member| member.along.contains(&NodeId(index));
+        if !model.members.iter().any(reached) && !marks.contains(&node.name) {
             unused("unused-node", "node", &node.name, &node.origin);
         }
     }

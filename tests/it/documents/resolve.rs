@@ -510,3 +510,16 @@ fn structures_that_hand_on_are_solved_first() {
     let order: Vec<&str> = model.solve_order.iter().map(|id| model[*id].name.as_str()).collect();
     assert_eq!(order, ["zzz", "frame"]);
 }
+
+/// A node that only says where local z points is no part of the structure.
+#[test]
+fn a_node_can_mark_a_direction() {
+    let yaml = GOOD
+        .replacen("nodes: {PA: [0 m, 0 m]", "nodes: {K: [1 m, 2 m], PA: [0 m, 0 m]", 1)
+        .replacen("P1: {along: [PA, PB]", "P1: {along: [PA, PB], z_towards: K", 1);
+    let solved = spanfolio::solve(&sources(&yaml)).expect("a sound structure");
+    assert!(solved.warnings.is_empty(), "{:#?}", solved.warnings);
+    assert!(!solved.record.model.structures["purlin"].nodes.contains_key("K"));
+    let loaded = problems(&yaml.replacen("{node: B, force", "{node: K, force", 1));
+    assert_eq!(loaded[0].code, "no-member");
+}
