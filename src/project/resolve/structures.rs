@@ -75,7 +75,10 @@ fn one(
     supports::supports(reader, model, id, blocks);
     members::members(reader, model, names, id, blocks);
     supports::forks(reader, model, id, blocks);
-    part_with_marks(reader, model, id);
+    // With a member missing because it was wrong, nothing is known of the nodes it was to reach.
+    if model[id].members.len() == blocks.members.len() {
+        part_with_marks(reader, model, id);
+    }
     if model.structures[id.0].members.is_empty() {
         reader.error("empty", format!("structure `{name}` has no member"), origin.clone());
     }
