@@ -196,7 +196,18 @@ struct CaseReaction<'r> {
 #[derive(Serialize)]
 struct GoverningReactions<'r> {
     purpose: &'r str,
+    /// Of the support on the structure.
     rows: Vec<ReactionRow<'r>>,
+    /// Of the structure on the foundation: opposite signs, so that greatest and least change places.
+    foundation: Vec<ActionRow<'r>>,
+}
+
+#[derive(Serialize)]
+struct ActionRow<'r> {
+    node: &'r str,
+    what: String,
+    combination: &'r str,
+    values: Vec<Quantity>,
 }
 
 #[derive(Serialize)]
@@ -207,10 +218,8 @@ struct ReactionRow<'r> {
     combination: &'r str,
     next: Option<Quantity>,
     next_combination: &'r str,
-    /// Components acting together, of the support on the structure …
+    /// Components acting together.
     with: Vec<Quantity>,
-    /// … and of the structure on the foundation.
-    opposite: Vec<Quantity>,
 }
 
 pub(super) fn reactions(record: &Record) -> Reactions<'_> {
@@ -240,6 +249,7 @@ pub(super) fn reactions(record: &Record) -> Reactions<'_> {
         .iter()
         .map(|(purpose, nodes)| {
             let mut rows = Vec::new();
+            let mut foundation = Vec::new();
             for (node, components) in nodes {
                 for (component, extremes) in components {
                     if extremes.max.value.abs() <= 0.0 && extremes.min.value.abs() <= 0.0 {
@@ -259,12 +269,20 @@ pub(super) fn reactions(record: &Record) -> Reactions<'_> {
                                 .as_ref()
                                 .map_or("", |next| number(record, &next.state)),
                             with: quantities(&extreme.with, 1.0),
-                            opposite: quantities(&extreme.with, -1.0),
+                        });
+                    }
+                    for (which, extreme) in [("greatest", &extremes.min), ("least", &extremes.max)]
+                    {
+                        foundation.push(ActionRow {
+                            node,
+                            what: format!("{which} {component}"),
+                            combination: number(record, &extreme.state),
+                            values: quantities(&extreme.with, -1.0),
                         });
                     }
                 }
             }
-            GoverningReactions { purpose, rows }
+            GoverningReactions { purpose, rows, foundation }
         })
         .collect();
     Reactions { components: used.iter().map(|k| COMPONENTS[*k]).collect(), by_case, governing }
