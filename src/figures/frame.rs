@@ -32,7 +32,8 @@ pub(super) fn figures(sheet: &Sheet<'_>) -> Vec<Figure> {
     let effects: &[Effect] = if sheet.view.space {
         &[Effect::N, Effect::My, Effect::Mz]
     } else {
-        &[Effect::N, Effect::Vz, Effect::My]
+        // V_y and M_z occur in members turned by a quarter.
+        &[Effect::N, Effect::Vz, Effect::Vy, Effect::My, Effect::Mz]
     };
     let of_purpose = |purpose: Purpose| -> Vec<Figure> {
         let combinations: Vec<&str> = sheet
@@ -138,7 +139,8 @@ impl Frame<'_> {
         let side = if is_bending(self.effect) {
             format!("drawn on the {}", self.sheet.record.model.package.moments)
         } else {
-            "positive values towards the members' local z".to_owned()
+            let axis = if self.effect == Effect::Vy { "y" } else { "z" };
+            format!("positive values towards the members' local {axis}")
         };
         let caption = format!(
             "Structure {name}: envelope of {} over the {purpose} combinations, {side}.",
@@ -169,7 +171,8 @@ impl Frame<'_> {
 
     /// The direction of positive ordinates on the paper for a value of one, in mm.
     fn ordinate(&self, member: &MemberRecord) -> Point {
-        let axis = if self.effect == Effect::Mz { member.axes[1] } else { member.axes[2] };
+        let about_z = matches!(self.effect, Effect::Mz | Effect::Vy);
+        let axis = if about_z { member.axes[1] } else { member.axes[2] };
         let tension = self.sheet.record.model.package.moments == "tension side";
         let sign = if is_bending(self.effect) && tension { -1.0 } else { 1.0 };
         scaled(self.sheet.view.direction(axis), sign * ORDINATE / self.greatest)
