@@ -7,7 +7,9 @@
 //! → [`package::Package`] → `files`.
 
 pub mod analysis;
+pub mod calc;
 pub mod catalogue;
+pub mod checks;
 pub mod cli;
 pub mod diagnostic;
 pub mod figures;
@@ -41,6 +43,9 @@ pub fn solve(sources: &Sources) -> Result<Solved, Vec<Diagnostic>> {
     let solution = analysis::solve(&model)?;
     let governing = analysis::govern(&model, &solution);
     let self_check = analysis::self_check(&model, &solution);
-    let record = record::record(&model, &solution, &governing, &self_check, &sources.fingerprint());
+    let checked = checks::check(&model, &solution, &governing)?;
+    let fingerprint = sources.fingerprint();
+    let record =
+        record::record(&model, &solution, &governing, &self_check, &checked, &fingerprint);
     Ok(Solved { record, warnings })
 }

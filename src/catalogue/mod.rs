@@ -9,12 +9,16 @@
 //!   each section says which.
 //! - Values are SI.
 
+mod checks;
 mod find;
 mod materials;
 mod names;
 mod sections;
 mod table;
 
+pub use checks::{
+    Sheet, SheetCondition, SheetInput, SheetShows, SheetStep, SheetTarget, sheet_texts, sheets,
+};
 pub use find::{Entry, find};
 pub use materials::{CatalogueMaterial, material, material_tables};
 pub use sections::{CatalogueSection, Family, families, family, section};

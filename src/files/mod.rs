@@ -21,7 +21,7 @@ use sha2::{Digest, Sha256};
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub struct Sources {
     /// Path inside the project folder (`/` between parts) → content; `project.yaml` is always there.
-    /// Holds `project.yaml`, `templates/**`, and what later steps add (`narrative/**`, logo).
+    /// Holds `project.yaml`, `checks/**`, `narrative/**` and `templates/**`.
     pub files: BTreeMap<String, Vec<u8>>,
 }
 

@@ -18,7 +18,7 @@ const DEEPEST: usize = 8;
 
 const PROJECT: &str = "project.yaml";
 /// Folders read whole, apart from files whose name begins with a point.
-const FOLDERS: [&str; 1] = ["templates"];
+const FOLDERS: [&str; 3] = ["checks", "narrative", "templates"];
 
 /// The folder of a project that is given as its folder or as its `project.yaml`.
 #[must_use]
@@ -31,7 +31,7 @@ pub fn folder(path: &Path) -> PathBuf {
     }
 }
 
-/// Reads a project: `project.yaml` and everything under `templates/`.
+/// Reads a project: `project.yaml` and everything under `checks/`, `narrative/` and `templates/`.
 ///
 /// # Errors
 /// Everything that cannot be read: missing, too large, outside the folder, not text.

@@ -8,16 +8,23 @@
 //! - Never reads files, never computes an effect.
 
 mod action;
+mod check;
 mod combination;
 mod effect;
+mod reach;
 mod settings;
 mod structure;
 
 pub use action::{
     Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Per, Target, Written,
 };
+pub use check::{
+    Agreement, Check, CheckTarget, Condition, DeflectionFrom, On, Placed, Shows, Slot, Step, Working,
+    WorkingLine, located,
+};
 pub use combination::{Combination, Purpose};
 pub use effect::{EFFECTS, Effect, FORCES, STORED, Side};
+pub use reach::{Bound, Of, Query, Source, State, Unbound};
 pub use settings::{
     AnalysisSettings, Assumption, Basis, Deferral, Draw, MomentSide, PackageSettings, Paper,
     ProjectInfo, Revision, Standard,
@@ -81,6 +88,34 @@ pub struct Model {
     pub cases: Vec<LoadCase>,
     /// In the order written; `combinations[i].number` is what tables print.
     pub combinations: Vec<Combination>,
+    pub checks: Vec<Check>,
+    /// Hand calculations of the narrative, in its order.
+    pub workings: Vec<Working>,
+    /// Chapters of narrative in the order of the package.
+    pub narrative: Vec<Narrative>,
+}
+
+/// A narrative file with its place in the package.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Narrative {
+    /// Path inside the project folder.
+    pub file: String,
+    /// The chapter of the package that it follows: `summary`, `checks`, …
+    pub after: String,
+    /// Its blocks in order.
+    pub blocks: Vec<NarrativeBlock>,
+}
+
+/// A block of a narrative file.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub enum NarrativeBlock {
+    /// The next of [`Model::workings`].
+    Working,
+    /// Ids in their registers.
+    Assumption(String),
+    Deferral(String),
+    Reference(String),
+    Open { text: String, by: Option<String> },
 }
 
 /// A named constant of the project.

@@ -145,6 +145,34 @@ const SUPPORT: Table = Table {
     forms: &[form(&["kind", "X", "Y", "Z", "RX", "RY", "RZ"], &[], &[])],
 };
 
+const CHECK: Table = Table {
+    what: "a check",
+    always: &[
+        "id",
+        "purpose",
+        "members",
+        "groups",
+        "spans",
+        "node",
+        "nodes",
+        "relative_to",
+        "structure",
+        "about",
+        "only",
+        "from",
+        "valid_if",
+        "limit",
+        "one_sided",
+        "relies_on",
+        "shows",
+        "title",
+    ],
+    forms: &[
+        form(&["sheet"], &[], &["with", "reference"]),
+        form(&["demand", "capacity"], &[&["demand"], &["capacity"], &["title"], &["reference"]], &["let"]),
+    ],
+};
+
 const PROJECT: Table = Table {
     what: "the project file",
     always: &[
@@ -162,6 +190,9 @@ const PROJECT: Table = Table {
         "sections",
         "load_cases",
         "combinations",
+        "groups",
+        "checks",
+        "narrative",
     ],
     forms: &[
         form(&["structures"], &[], &[]),
@@ -174,13 +205,14 @@ const PROJECT: Table = Table {
 };
 
 /// Definitions that have a table, by their name in the schema.
-pub(super) const TABLED: [(&str, &Table); 6] = [
+pub(super) const TABLED: [(&str, &Table); 7] = [
     ("Project", &PROJECT),
     ("Load", &LOAD),
     ("Warming", &WARMING),
     ("Section", &SECTION),
     ("Material", &MATERIAL),
     ("SupportMap", &SUPPORT),
+    ("Check", &CHECK),
 ];
 
 /// The table of a definition of the schema.

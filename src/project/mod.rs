@@ -8,6 +8,7 @@
 mod de;
 mod forms;
 pub mod keys;
+pub mod narrative;
 mod near;
 mod resolve;
 mod schema;
@@ -25,7 +26,7 @@ use crate::model::Model;
 /// # Errors
 /// Every problem found, in the order of the file; warnings never stand alone here.
 pub fn read(sources: &Sources) -> Result<(Model, Vec<Diagnostic>), Vec<Diagnostic>> {
-    resolve::resolve(&written(sources)?)
+    resolve::resolve(&written(sources)?, sources)
 }
 
 /// Reads `project.yaml` as written: the three reading steps, without resolving anything.

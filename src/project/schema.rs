@@ -6,13 +6,17 @@ use schemars::generate::SchemaSettings;
 use serde_json::{Map, Value, json};
 
 use super::forms::TABLED;
-use super::written::Project;
+use super::written::{OpenPoint, Project};
+use crate::catalogue::Sheet;
 
 /// The schema, made once.
 pub(super) static SCHEMA: LazyLock<Value> = LazyLock::new(make);
 
 fn make() -> Value {
-    let generator = SchemaSettings::draft2020_12().into_generator();
+    let mut generator = SchemaSettings::draft2020_12().into_generator();
+    // What stands in other files of a project is described along with it.
+    generator.subschema_for::<Sheet>();
+    generator.subschema_for::<OpenPoint>();
     let mut schema = generator.into_root_schema_for::<Project>().to_value();
     schema["$id"] = json!("urn:spanfolio:project:1");
     without_null(&mut schema);

@@ -6,7 +6,7 @@
 
 use std::ops::Range;
 
-use serde_json::Value;
+use serde_json::{Value, json};
 
 use super::forms::{self, Form, Table};
 use super::near::nearest;
@@ -16,9 +16,7 @@ use super::tree::{Kind, Node};
 use crate::diagnostic::Diagnostic;
 
 /// Keys that a later version reads, by the definition in which they stand.
-const NOT_YET: [(&str, &str); 9] = [
-    ("Project", "checks"),
-    ("Project", "narrative"),
+const NOT_YET: [(&str, &str); 7] = [
     ("Combinations", "rules"),
     ("LoadCase", "by_span"),
     ("LoadCase", "one_of"),
@@ -38,6 +36,15 @@ pub(super) fn problems(text: &str, root: &Node) -> Vec<Diagnostic> {
         return vec![newer];
     }
     walk.value(root, Spot { schema: &SCHEMA, what: "the project file", at: &(0..0) });
+    walk.found.sort_by_key(|problem| problem.place.as_ref().map(|place| place.range.start));
+    walk.found
+}
+
+/// Every shape problem of a text that is one definition of the schema.
+pub(super) fn problems_of(text: &str, root: &Node, definition: &str, what: &str) -> Vec<Diagnostic> {
+    let mut walk = Walk { text, found: Vec::new() };
+    let schema = json!({ "$ref": format!("#/$defs/{definition}") });
+    walk.value(root, Spot { schema: &schema, what, at: &(0..0) });
     walk.found.sort_by_key(|problem| problem.place.as_ref().map(|place| place.range.start));
     walk.found
 }

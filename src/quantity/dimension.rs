@@ -52,7 +52,8 @@ impl Dimension {
     #[must_use]
     pub fn name(self) -> Cow<'static, str> {
         let named = NAMES.iter().find(|(dimension, _)| *dimension == self);
-        named.map_or_else(|| self.base_units().into(), |(_, name)| (*name).into())
+        let in_base = || format!("quantity in {}", self.base_units()).into();
+        named.map_or_else(in_base, |(_, name)| (*name).into())
     }
 
     /// [`Self::name`] with its article, e.g. `an area`, `a force per length`.
@@ -75,7 +76,9 @@ impl Dimension {
         }
     }
 
-    fn base_units(self) -> String {
+    /// The SI base units of this dimension, e.g. `kg² m⁻¹`; nothing for plain numbers.
+    #[must_use]
+    pub fn base_units(self) -> String {
         let exponents = [
             ("kg", self.mass),
             ("m", self.length),
@@ -87,7 +90,7 @@ impl Dimension {
         let units: Vec<String> = present
             .map(|(unit, exponent)| format!("{unit}{}", superscript(i32::from(*exponent))))
             .collect();
-        format!("quantity in {}", units.join(" "))
+        units.join(" ")
     }
 }
 

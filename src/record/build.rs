@@ -1,15 +1,18 @@
 //! Model, solution, governing values and self-check → the Record's form.
 
-mod checks;
 mod input;
 mod loads;
+mod outcomes;
 mod results;
+mod self_check;
+mod steps;
 
 use super::{
     AssumptionRecord, BasisRecord, CombinationRecord, DeferralRecord, FORMAT, Map, ProgramRecord,
     ProjectRecord, Record, Registers, Results, RevisionRecord, StandardRecord, registers,
 };
 use crate::analysis::{Governing, SelfCheck, Solution};
+use crate::checks::Checked;
 use crate::model::Model;
 
 pub(super) fn build(
@@ -17,6 +20,7 @@ pub(super) fn build(
     solution: &Solution,
     governing: &Governing,
     self_check: &SelfCheck,
+    checked: &Checked,
     fingerprint: &str,
 ) -> Record {
     let mut record = Record {
@@ -36,9 +40,11 @@ pub(super) fn build(
             members: results::members(model, solution, governing),
             reactions: results::reactions(model, governing),
         },
-        checks: Vec::new(),
+        checks: outcomes::checks(model, checked),
+        workings: outcomes::workings(model, checked),
+        narrative: outcomes::narrative(model),
         registers: Registers::default(),
-        self_check: checks::self_check(model, self_check),
+        self_check: self_check::self_check(model, self_check),
     };
     record.settle();
     // Open items print values, so they come after these are settled.

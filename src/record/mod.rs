@@ -6,16 +6,19 @@
 //! - Maps keep the order of the project file; no hash order is ever visible.
 
 mod build;
+mod checked;
 mod json;
 mod look_up;
 mod registers;
 mod settle;
 mod types;
 
+pub use checked::*;
 pub use look_up::{Band, Piece};
 pub use types::*;
 
 use crate::analysis::{Governing, SelfCheck, Solution};
+use crate::checks::Checked;
 use crate::model::Model;
 
 /// Builds the settled Record.
@@ -25,7 +28,8 @@ pub fn record(
     solution: &Solution,
     governing: &Governing,
     self_check: &SelfCheck,
+    checked: &Checked,
     fingerprint: &str,
 ) -> Record {
-    build::build(model, solution, governing, self_check, fingerprint)
+    build::build(model, solution, governing, self_check, checked, fingerprint)
 }

@@ -5,7 +5,10 @@
 //! judged by |c_k| (to − from)^k); the rest keeps 12 significant digits. Relative errors of the self-check
 //! are round-off through and through: of them only the power of ten is kept.
 
-use super::{ExtremeRecord, ExtremesRecord, Map, MemberRecord, Record, SegmentRecord};
+use super::{
+    ExtremeRecord, ExtremesRecord, Map, MemberRecord, Record, SegmentRecord, StepRecord,
+    StepValueRecord, WorkingLineRecord,
+};
 use crate::analysis::{Chord, Fields, Segment, deflections};
 use crate::model::{EFFECTS, FORCES, STORED};
 
@@ -34,6 +37,7 @@ impl Record {
         self.model.structures = structures;
         self.settle_governing_deflections();
         self.settle_self_check();
+        self.settle_checks();
         for case in self.model.cases.values_mut() {
             for resultant in case.resultant.values_mut() {
                 settle_vector(resultant);
@@ -149,6 +153,22 @@ impl Record {
         }
     }
 
+    /// Values of checks are free of round-off already; they keep twelve digits like all others.
+    fn settle_checks(&mut self) {
+        for check in &mut self.checks {
+            let numbers = [&mut check.x, &mut check.utilisation].into_iter().flatten();
+            let next = check.next.iter_mut().flat_map(|next| [&mut next.x, &mut next.utilisation]);
+            numbers.chain(next.flatten()).for_each(|value| *value = rounded(*value));
+            let steps = check.steps.iter_mut().chain(&mut check.validity);
+            steps.chain(&mut check.demand).chain(&mut check.capacity).for_each(settle_step);
+        }
+        for line in self.workings.iter_mut().flat_map(|working| &mut working.lines) {
+            if let WorkingLineRecord::Step(step) = line {
+                settle_step(step);
+            }
+        }
+    }
+
     fn settle_self_check(&mut self) {
         for structure in self.self_check.structures.values_mut() {
             for balance in structure.balances.values_mut() {
@@ -173,6 +193,15 @@ impl Record {
         for energies in self.self_check.strain_energy.values_mut() {
             let scale = largest(energies.values());
             settle_values(energies.values_mut(), scale);
+        }
+    }
+}
+
+fn settle_step(step: &mut StepRecord) {
+    let values = step.values.iter_mut().map(|(_, value)| value);
+    for value in values.chain([&mut step.value]) {
+        if let StepValueRecord::Number(number, _) = value {
+            *number = rounded(*number);
         }
     }
 }

@@ -3,6 +3,7 @@
 use indexmap::IndexMap;
 use serde::{Deserialize, Serialize};
 
+use super::{CheckRecord, NarrativeRecord, WorkingRecord};
 use crate::analysis::{Arithmetic, Fields};
 use crate::model::{FORCES, Side};
 use crate::quantity::{Printer, Units};
@@ -26,8 +27,12 @@ pub struct Record {
     pub model: ModelRecord,
     pub combinations: Map<CombinationRecord>,
     pub results: Results,
-    /// Checks come with a later step; the list is part of the form.
+    /// By check and what it is made on, then the agreements of hand calculations.
     pub checks: Vec<CheckRecord>,
+    #[serde(default)]
+    pub workings: Vec<WorkingRecord>,
+    #[serde(default)]
+    pub narrative: Vec<NarrativeRecord>,
     pub registers: Registers,
     pub self_check: SelfCheckRecord,
 }
@@ -415,14 +420,6 @@ pub struct ExtremeRecord {
 pub struct RunnerRecord {
     pub value: f64,
     pub state: String,
-}
-
-/// A check's outcome; filled by a later step.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct CheckRecord {
-    pub id: String,
-    pub title: String,
-    pub outcome: String,
 }
 
 /// Items that gather on the first page.

@@ -71,6 +71,9 @@ pub struct Properties {
     pub dimensions: IndexMap<String, f64>,
     pub outline: Outline,
     pub methods: Methods,
+    /// `rectangle`, `circle`, `tube`, `rectangular hollow`, `I`, `unequal I`, `channel`, `angle`, `T` or
+    /// `polygon`; empty where only properties are known.
+    pub form: &'static str,
 }
 
 /// How the values that are not exact were found, as text for the Basis chapter. `None`: not known, or

@@ -107,6 +107,27 @@ impl Shape {
     /// # Errors
     /// When a dimension is not positive, too large for the others, or a polygon is not simple.
     pub fn properties(&self) -> Result<Properties, ShapeError> {
+        Ok(Properties { form: self.form(), ..self.computed()? })
+    }
+
+    /// The word of the project file.
+    #[must_use]
+    pub const fn form(&self) -> &'static str {
+        match self {
+            Self::Rectangle { .. } => "rectangle",
+            Self::Circle { .. } => "circle",
+            Self::Tube { .. } => "tube",
+            Self::RectangularHollow { .. } => "rectangular hollow",
+            Self::I { .. } => "I",
+            Self::UnequalI { .. } => "unequal I",
+            Self::Channel { .. } => "channel",
+            Self::Angle { .. } => "angle",
+            Self::T { .. } => "T",
+            Self::Polygon { .. } => "polygon",
+        }
+    }
+
+    fn computed(&self) -> Result<Properties, ShapeError> {
         match self {
             Self::Rectangle { width, depth } => closed::rectangle(*width, *depth),
             Self::Circle { diameter } => closed::circle(*diameter),

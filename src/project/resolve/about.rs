@@ -2,7 +2,7 @@
 
 use super::names::Names;
 use super::reader::Reader;
-use crate::diagnostic::Diagnostic;
+use crate::diagnostic::{Diagnostic, Place};
 use crate::model::{
     AnalysisSettings, Assumption, Basis, BuildUp, Deferral, Draw, Layer, Model, MomentSide,
     NamedValue, PackageSettings, Paper, ProjectInfo, Revision, Standard,
@@ -51,18 +51,13 @@ pub(super) fn project(reader: &mut Reader, written: &written::ProjectInfo) -> Pr
     }
 }
 
-pub(super) fn basis(reader: &mut Reader, written: &written::Basis) -> Basis {
-    let mut ids = Names::default();
+pub(super) fn basis(reader: &mut Reader, written: &written::Basis, ids: &mut Names) -> Basis {
     let standards = written
         .standards
         .iter()
         .map(|standard| {
             ids.take(reader, &standard.id, "standard");
-            Standard {
-                id: standard.id.to_string(),
-                title: standard.title.to_string(),
-                edition: standard.edition.to_string(),
-            }
+            self::standard(standard)
         })
         .collect();
     let assumptions = written
@@ -70,14 +65,7 @@ pub(super) fn basis(reader: &mut Reader, written: &written::Basis) -> Basis {
         .iter()
         .map(|assumption| {
             ids.take(reader, &assumption.id, "assumption");
-            Assumption {
-                id: assumption.id.to_string(),
-                text: assumption.text.to_string(),
-                confirmed: assumption.status.is == words::Status::Confirmed,
-                by: words(assumption.by.as_ref()),
-                source: words(assumption.source.as_ref()),
-                origin: assumption.place(),
-            }
+            self::assumption(assumption, assumption.place())
         })
         .collect();
     let deferred = written
@@ -85,12 +73,7 @@ pub(super) fn basis(reader: &mut Reader, written: &written::Basis) -> Basis {
         .iter()
         .map(|deferral| {
             ids.take(reader, &deferral.id, "deferral");
-            Deferral {
-                id: deferral.id.to_string(),
-                text: deferral.text.to_string(),
-                to: deferral.to.to_string(),
-                checks: deferral.checks.iter().map(ToString::to_string).collect(),
-            }
+            self::deferral(deferral)
         })
         .collect();
     Basis {
@@ -100,6 +83,34 @@ pub(super) fn basis(reader: &mut Reader, written: &written::Basis) -> Basis {
         standards,
         assumptions,
         deferred,
+    }
+}
+
+pub(super) fn standard(written: &written::Standard) -> Standard {
+    Standard {
+        id: written.id.to_string(),
+        title: written.title.to_string(),
+        edition: written.edition.to_string(),
+    }
+}
+
+pub(super) fn assumption(written: &written::Assumption, origin: Place) -> Assumption {
+    Assumption {
+        id: written.id.to_string(),
+        text: written.text.to_string(),
+        confirmed: written.status.is == words::Status::Confirmed,
+        by: words(written.by.as_ref()),
+        source: words(written.source.as_ref()),
+        origin,
+    }
+}
+
+pub(super) fn deferral(written: &written::Deferral) -> Deferral {
+    Deferral {
+        id: written.id.to_string(),
+        text: written.text.to_string(),
+        to: written.to.to_string(),
+        checks: written.checks.iter().map(ToString::to_string).collect(),
     }
 }
 

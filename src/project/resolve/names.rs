@@ -5,7 +5,7 @@ use std::collections::BTreeMap;
 use unicode_normalization::is_nfc;
 
 use super::reader::Reader;
-use crate::diagnostic::Diagnostic;
+use crate::diagnostic::{Diagnostic, Place};
 use crate::project::text::Text;
 
 /// Longest name, characters.
@@ -20,10 +20,21 @@ pub(super) struct Names {
 impl Names {
     /// Takes a name; says whether it can be used.
     pub(super) fn take(&mut self, reader: &mut Reader, name: &Text, what: &str) -> bool {
+        self.take_plain(reader, name, name.place(), what)
+    }
+
+    /// Takes a name that stands at a place of any file.
+    pub(super) fn take_plain(
+        &mut self,
+        reader: &mut Reader,
+        name: &str,
+        place: Place,
+        what: &str,
+    ) -> bool {
         if let Some(problem) = wrong(name) {
             reader.problem(
                 Diagnostic::error("name", format!("`{name}` cannot be the name of a {what}: {problem}"))
-                    .at(name.place())
+                    .at(place)
                     .hint(
                         "begin with a letter or digit, go on with letters, digits, `_`, `.`, `-` and spaces, at most 40"
                             .to_owned(),
@@ -33,15 +44,15 @@ impl Names {
         }
         let lower = name.to_lowercase();
         if let Some(other) = self.taken.get(&lower) {
-            let message = if other == name.as_str() {
+            let message = if other == name {
                 format!("the name `{name}` is given twice")
             } else {
                 format!("the name `{name}` differs from `{other}` in case only")
             };
-            reader.error("duplicate-name", message, name.place());
+            reader.error("duplicate-name", message, place);
             return false;
         }
-        self.taken.insert(lower, name.as_str().to_owned());
+        self.taken.insert(lower, name.to_owned());
         true
     }
 }

@@ -13,6 +13,8 @@ const HUGE: f64 = 1e18;
 /// Reads leaves and keeps every problem found.
 #[derive(Debug, Default)]
 pub(super) struct Reader {
+    /// Text of `project.yaml`, in which formulas are placed by the character.
+    pub(super) file: String,
     pub(super) found: Vec<Diagnostic>,
     /// Nodes that `z_towards` points to.
     pub(super) marks: BTreeSet<String>,
@@ -21,6 +23,11 @@ pub(super) struct Reader {
 }
 
 impl Reader {
+    /// Reads leaves of this text.
+    pub(super) fn new(file: &str) -> Self {
+        Self { file: file.to_owned(), ..Self::default() }
+    }
+
     /// Keeps a problem.
     pub(super) fn problem(&mut self, problem: Diagnostic) {
         self.found.push(problem);

@@ -9,6 +9,7 @@
 
 mod about;
 mod actions;
+mod checks;
 mod parts;
 pub mod words;
 
@@ -19,6 +20,7 @@ pub use about::{
 pub use actions::{
     Combination, Combinations, Components, Load, LoadCase, Movement, SelfWeight, Warming,
 };
+pub use checks::{Check, Condition, Members, Narrative, OpenPoint, Placed};
 pub use parts::{
     BucklingLength, Held, HeldAlong, Hinge, Member, Section, Structure, Support, SupportMap, Taper,
     Towards, Turned, TurnedAbout,
@@ -82,6 +84,14 @@ pub struct Project {
     /// Combinations of load cases.
     #[serde(default)]
     pub combinations: Combinations,
+    /// Groups of members by name, for checks.
+    #[serde(default)]
+    pub groups: Map<Vec<Text>>,
+    /// Checks, in the order of the package.
+    #[serde(default)]
+    pub checks: Vec<Located<Check>>,
+    /// Chapters of Markdown with live values; all files of `narrative` in order of name unless listed.
+    pub narrative: Option<Vec<Narrative>>,
 }
 
 /// Keys of a material → text; see `keys::MATERIAL` for those that are allowed.

@@ -1,6 +1,8 @@
 //! The fixed words of the project file and what each stands for.
 
-use crate::model::{Direction, Duration, Frame, MomentSide, Nature, Paper, Per, Purpose};
+use crate::model::{
+    DeflectionFrom, Direction, Duration, Frame, MomentSide, Nature, Paper, Per, Purpose, Shows,
+};
 use crate::project::text::Words;
 use crate::quantity::System;
 
@@ -44,8 +46,22 @@ plain! {
     SupportKind { Pinned, Fork, Fixed }
     /// A global axis.
     Axis { X, Y, Z }
+    /// Every one of a kind.
+    AllWord { All }
+    /// The part of a combination that counts.
+    Only { Variable }
+    /// Chapters that narrative can follow.
+    Chapter { Cover, Summary, Basis, Model, Actions, Combinations, Effects, Checks, SelfCheck, Deferred }
     /// Shapes that sections are made of.
     ShapeKind { Rectangle, Circle, Tube, RectangularHollow, I, UnequalI, Channel, Angle, T, Polygon }
+}
+
+/// The combinations that a check is made for.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum CheckPurpose {
+    One(Purpose),
+    /// Characteristic, frequent and quasi-permanent.
+    Service,
 }
 
 const fn global(axis: usize, sign: i8) -> Direction {
@@ -112,6 +128,31 @@ words! {
     Duration: "Duration", "Load duration class, for timber." {
         "permanent" => Self::Permanent, "long" => Self::Long, "medium" => Self::Medium,
         "short" => Self::Short, "instantaneous" => Self::Instantaneous,
+    }
+    AllWord: "All", "Every one." { "all" => Self::All }
+    Only: "Only", "The part of each combination that counts." { "variable" => Self::Variable }
+    DeflectionFrom: "DeflectionFrom", "What deflections are measured from." {
+        "chord" => Self::Chord, "undeformed" => Self::Undeformed,
+        "support tangent" => Self::SupportTangent,
+    }
+    Shows: "Shows", "What a check shows." {
+        "strength" => Self::Strength, "stability" => Self::Stability, "deflection" => Self::Deflection,
+        "equilibrium" => Self::Equilibrium, "bearing" => Self::Bearing, "other" => Self::Other,
+    }
+    Chapter: "Chapter", "A chapter of the package." {
+        "cover" => Self::Cover, "summary" => Self::Summary, "basis" => Self::Basis,
+        "model" => Self::Model, "actions" => Self::Actions, "combinations" => Self::Combinations,
+        "effects" => Self::Effects, "checks" => Self::Checks, "self-check" => Self::SelfCheck,
+        "deferred" => Self::Deferred,
+    }
+    CheckPurpose: "CheckPurpose", "The combinations that a check is made for." {
+        "strength" => Self::One(Purpose::Strength), "equilibrium" => Self::One(Purpose::Equilibrium),
+        "ground" => Self::One(Purpose::Ground), "accidental" => Self::One(Purpose::Accidental),
+        "seismic" => Self::One(Purpose::Seismic), "fire" => Self::One(Purpose::Fire),
+        "allowable" => Self::One(Purpose::Allowable),
+        "characteristic" => Self::One(Purpose::Characteristic),
+        "frequent" => Self::One(Purpose::Frequent),
+        "quasi-permanent" => Self::One(Purpose::QuasiPermanent), "service" => Self::Service,
     }
     Purpose: "Purpose", "What a combination is for." {
         "strength" => Self::Strength, "equilibrium" => Self::Equilibrium, "ground" => Self::Ground,

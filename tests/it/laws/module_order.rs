@@ -2,15 +2,17 @@
 
 use std::path::{Path, PathBuf};
 
-const ORDER: [&str; 12] = [
+const ORDER: [&str; 14] = [
     "quantity",
     "diagnostic",
     "files",
     "section",
+    "calc",
     "catalogue",
     "model",
     "project",
     "analysis",
+    "checks",
     "record",
     "figures",
     "package",

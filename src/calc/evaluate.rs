@@ -1,0 +1,391 @@
+//! The value of a formula, dimensions checked at every operation.
+
+use std::sync::Arc;
+
+use super::dimensions::raised;
+use super::expression::{Binary, Expr, ExprKind, Formula};
+use super::{CalcError, Function};
+use crate::quantity::{Dimension, Quantity};
+
+/// What a reading or a result is.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Value {
+    /// A quantity; of angles the dimension is dropped.
+    Number(Quantity),
+    Truth(bool),
+    Word(Arc<str>),
+}
+
+/// A value with the branches taken on the way to it.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Evaluation {
+    pub value: Value,
+    /// Which branch of each conditional and row of each `choose` was taken, in order of evaluation;
+    /// those inside conditions, which are not shown with values, left out.
+    pub taken: Vec<usize>,
+}
+
+impl Value {
+    /// A quantity; radians become plain numbers.
+    #[must_use]
+    pub fn number(value: f64, dimension: Dimension) -> Self {
+        Self::Number(Quantity { value, dimension: Dimension { angle: 0, ..dimension } })
+    }
+
+    /// A word, e.g. a load duration.
+    #[must_use]
+    pub fn word(text: &str) -> Self {
+        Self::Word(text.into())
+    }
+
+    fn what(&self) -> String {
+        match self {
+            Self::Number(quantity) => quantity.dimension.name_with_article(),
+            Self::Truth(_) => "a truth value".to_owned(),
+            Self::Word(word) => format!("the word `{word}`"),
+        }
+    }
+}
+
+impl Formula {
+    /// The value for the values of its readings, in their order.
+    ///
+    /// # Errors
+    /// Dimensions that do not go together, a result that is not a finite number, a look-up outside its
+    /// rows; at the place in the formula.
+    pub fn evaluate(&self, readings: &[Value]) -> Result<Evaluation, CalcError> {
+        let mut run = Run { readings, taken: Vec::new() };
+        let value = run.value(&self.root)?;
+        Ok(Evaluation { value, taken: run.taken })
+    }
+
+    /// The value where it must be a quantity.
+    ///
+    /// # Errors
+    /// As [`Formula::evaluate`], and where the result is a truth value or a word.
+    pub fn quantity(&self, readings: &[Value]) -> Result<Quantity, CalcError> {
+        Run { readings, taken: Vec::new() }.quantity(&self.root)
+    }
+
+    /// The value where it must be true or false.
+    ///
+    /// # Errors
+    /// As [`Formula::evaluate`], and where the result is a quantity or a word.
+    pub fn truth(&self, readings: &[Value]) -> Result<bool, CalcError> {
+        Run { readings, taken: Vec::new() }.truth(&self.root)
+    }
+}
+
+struct Run<'v> {
+    readings: &'v [Value],
+    taken: Vec<usize>,
+}
+
+impl Run<'_> {
+    fn value(&mut self, expr: &Expr) -> Result<Value, CalcError> {
+        Ok(match &expr.kind {
+            ExprKind::Quantity { quantity, .. } => Value::Number(*quantity),
+            ExprKind::Pi => Value::number(std::f64::consts::PI, Dimension::NONE),
+            ExprKind::Word(word) => Value::word(word),
+            ExprKind::Read(index) => self.readings[*index].clone(),
+            ExprKind::Negate(inner) => {
+                let inner = self.quantity(inner)?;
+                Value::Number(Quantity { value: -inner.value, ..inner })
+            }
+            ExprKind::Not(inner) => Value::Truth(!self.truth(inner)?),
+            ExprKind::Binary(Binary::And, left, right) => {
+                Value::Truth(self.truth(left)? && self.truth(right)?)
+            }
+            ExprKind::Binary(Binary::Or, left, right) => {
+                Value::Truth(self.truth(left)? || self.truth(right)?)
+            }
+            ExprKind::Binary(binary, left, right) => self.binary(expr, *binary, left, right)?,
+            ExprKind::Call(function, arguments) => {
+                Value::Number(self.call(expr, *function, arguments)?)
+            }
+            ExprKind::ValueIn(inner, unit) => {
+                let quantity = self.quantity(inner)?;
+                if quantity.dimension != unit.dimension {
+                    let message = format!(
+                        "{} has no value in {}",
+                        quantity.dimension.name_with_article(),
+                        unit.label
+                    );
+                    return Err(CalcError::new(message, expr.range.clone()));
+                }
+                Value::number(quantity.value / unit.factor, Dimension::NONE)
+            }
+            ExprKind::If { condition, then, otherwise } => {
+                let holds = self.truth(condition)?;
+                self.taken.push(usize::from(!holds));
+                self.value(if holds { then } else { otherwise })?
+            }
+            ExprKind::Interpolate(at, rows) => Value::Number(self.interpolated(expr, at, rows)?),
+            ExprKind::Choose(of, rows) => self.chosen(expr, of, rows)?,
+        })
+    }
+
+    fn quantity(&mut self, expr: &Expr) -> Result<Quantity, CalcError> {
+        match self.value(expr)? {
+            Value::Number(quantity) => Ok(quantity),
+            other => {
+                let message = format!("this is {}, expected a quantity", other.what());
+                Err(CalcError::new(message, expr.range.clone()))
+            }
+        }
+    }
+
+    fn truth(&mut self, expr: &Expr) -> Result<bool, CalcError> {
+        match self.unrecorded(expr)? {
+            Value::Truth(truth) => Ok(truth),
+            other => {
+                let message = format!("this is {}, expected a condition", other.what());
+                Err(CalcError::new(message, expr.range.clone()).hint("compare it with something"))
+            }
+        }
+    }
+
+    fn unrecorded(&mut self, expr: &Expr) -> Result<Value, CalcError> {
+        let before = self.taken.len();
+        let value = self.value(expr);
+        self.taken.truncate(before);
+        value
+    }
+
+    fn binary(
+        &mut self,
+        expr: &Expr,
+        binary: Binary,
+        left: &Expr,
+        right: &Expr,
+    ) -> Result<Value, CalcError> {
+        if matches!(binary, Binary::Equal | Binary::NotEqual)
+            && let (Value::Word(a), Value::Word(b)) = (self.value(left)?, self.value(right)?)
+        {
+            return Ok(Value::Truth((a == b) == (binary == Binary::Equal)));
+        }
+        let (a, b) = (self.quantity(left)?, self.quantity(right)?);
+        let number = |value, dimension| finite(expr, Quantity { value, dimension });
+        match binary {
+            Binary::Multiply => number(a.value * b.value, a.dimension * b.dimension),
+            Binary::Divide if b.value == 0.0 => {
+                Err(CalcError::new("this divides by zero", right.range.clone()))
+            }
+            Binary::Divide => number(a.value / b.value, a.dimension / b.dimension),
+            Binary::Power => power(expr, left, right, a, b),
+            _ => {
+                let dimension = same(expr, binary.sign(), &[(left, a), (right, b)])?;
+                match binary {
+                    Binary::Add => number(a.value + b.value, dimension),
+                    Binary::Subtract => number(a.value - b.value, dimension),
+                    Binary::Less => Ok(Value::Truth(a.value < b.value)),
+                    Binary::LessOrEqual => Ok(Value::Truth(a.value <= b.value)),
+                    Binary::Greater => Ok(Value::Truth(a.value > b.value)),
+                    Binary::GreaterOrEqual => Ok(Value::Truth(a.value >= b.value)),
+                    Binary::Equal => Ok(Value::Truth(a.value == b.value)),
+                    _ => Ok(Value::Truth(a.value != b.value)),
+                }
+            }
+        }
+    }
+
+    fn call(
+        &mut self,
+        expr: &Expr,
+        function: Function,
+        arguments: &[Expr],
+    ) -> Result<Quantity, CalcError> {
+        let values: Vec<Quantity> =
+            arguments.iter().map(|argument| self.quantity(argument)).collect::<Result<_, _>>()?;
+        let (first, x) = (&arguments[0], values[0]);
+        let plain = |value: f64| Quantity { value, dimension: Dimension::NONE };
+        let result = match function {
+            Function::Min | Function::Max => {
+                let both: Vec<(&Expr, Quantity)> =
+                    arguments.iter().zip(values.iter().copied()).collect();
+                let dimension = same(expr, function.name(), &both)?;
+                let of = values.iter().map(|quantity| quantity.value);
+                let value = match function {
+                    Function::Min => of.fold(f64::INFINITY, f64::min),
+                    _ => of.fold(f64::NEG_INFINITY, f64::max),
+                };
+                Quantity { value, dimension }
+            }
+            Function::Abs => Quantity { value: x.value.abs(), ..x },
+            Function::Sign => plain(if x.value == 0.0 { 0.0 } else { x.value.signum() }),
+            Function::Sqrt => {
+                if x.value < 0.0 {
+                    return Err(CalcError::new("this is below zero: it has no root", first.range.clone()));
+                }
+                let dimension = raised(x.dimension, 0.5).ok_or_else(|| {
+                    let message =
+                        format!("{} has no square root", x.dimension.name_with_article());
+                    CalcError::new(message, first.range.clone())
+                })?;
+                Quantity { value: libm::sqrt(x.value), dimension }
+            }
+            _ => {
+                if x.dimension != Dimension::NONE {
+                    let message = format!(
+                        "`{}` takes a plain number, not {}",
+                        function.name(),
+                        x.dimension.name_with_article()
+                    );
+                    return Err(CalcError::new(message, first.range.clone()));
+                }
+                plain(of_number(function, x.value, first)?)
+            }
+        };
+        match finite(expr, result)? {
+            Value::Number(quantity) => Ok(quantity),
+            Value::Truth(_) | Value::Word(_) => Ok(result),
+        }
+    }
+
+    fn interpolated(
+        &mut self,
+        expr: &Expr,
+        at: &Expr,
+        rows: &[[Expr; 2]],
+    ) -> Result<Quantity, CalcError> {
+        let x = self.quantity(at)?;
+        let mut points: Vec<(Quantity, Quantity)> = Vec::with_capacity(rows.len());
+        for [first, second] in rows {
+            let point = (self.quantity(first)?, self.quantity(second)?);
+            same(expr, "interpolate", &[(at, x), (first, point.0)])?;
+            if let Some(before) = points.last() {
+                same(expr, "interpolate", &[(second, point.1), (&rows[0][1], points[0].1)])?;
+                if point.0.value <= before.0.value {
+                    let message = "rows must ascend in their first entry";
+                    return Err(CalcError::new(message, first.range.clone()));
+                }
+            }
+            points.push(point);
+        }
+        let between = points.windows(2).find(|pair| {
+            pair[0].0.value <= x.value && x.value <= pair[1].0.value
+        });
+        let Some([low, high]) = between else {
+            let message = "this lies outside the rows, and nothing is extrapolated";
+            return Err(CalcError::new(message, at.range.clone()));
+        };
+        let share = (x.value - low.0.value) / (high.0.value - low.0.value);
+        let value = low.1.value + share * (high.1.value - low.1.value);
+        // A nought among the second entries goes with every dimension.
+        let dimension = points
+            .iter()
+            .zip(rows)
+            .find(|(_, row)| !row[1].is_nought())
+            .map_or(low.1.dimension, |(point, _)| point.1.dimension);
+        Ok(Quantity { value, dimension })
+    }
+
+    fn chosen(&mut self, expr: &Expr, of: &Expr, rows: &[[Expr; 2]]) -> Result<Value, CalcError> {
+        let wanted = self.unrecorded(of)?;
+        for (index, [key, value]) in rows.iter().enumerate() {
+            let found = match (self.unrecorded(key)?, &wanted) {
+                (Value::Number(a), Value::Number(b)) => {
+                    same(expr, "choose", &[(of, *b), (key, a)])?;
+                    a.value == b.value
+                }
+                (Value::Word(a), Value::Word(b)) => a == *b,
+                (Value::Truth(a), Value::Truth(b)) => a == *b,
+                (other, wanted) => {
+                    let message = format!("{} cannot equal {}", other.what(), wanted.what());
+                    return Err(CalcError::new(message, key.range.clone()));
+                }
+            };
+            if found {
+                self.taken.push(index);
+                return self.value(value);
+            }
+        }
+        let said = match wanted {
+            Value::Word(word) => format!("no row for `{word}`"),
+            _ => "no row for this value".to_owned(),
+        };
+        Err(CalcError::new(said, of.range.clone()))
+    }
+}
+
+fn of_number(function: Function, x: f64, at: &Expr) -> Result<f64, CalcError> {
+    let outside = |what: &str| CalcError::new(what, at.range.clone());
+    Ok(match function {
+        Function::Sin => libm::sin(x),
+        Function::Cos => libm::cos(x),
+        Function::Tan => libm::tan(x),
+        Function::Asin | Function::Acos if x.abs() > 1.0 => {
+            return Err(outside("this lies outside -1 to 1"));
+        }
+        Function::Asin => libm::asin(x),
+        Function::Acos => libm::acos(x),
+        Function::Atan => libm::atan(x),
+        Function::Exp => libm::exp(x),
+        Function::Ln | Function::Log10 if x <= 0.0 => {
+            return Err(outside("this is not above zero: it has no logarithm"));
+        }
+        Function::Ln => libm::log(x),
+        Function::Log10 => libm::log10(x),
+        Function::Floor => libm::floor(x),
+        Function::Ceil => libm::ceil(x),
+        Function::Sqrt | Function::Abs | Function::Min | Function::Max | Function::Sign => x,
+    })
+}
+
+fn power(
+    expr: &Expr,
+    left: &Expr,
+    right: &Expr,
+    a: Quantity,
+    b: Quantity,
+) -> Result<Value, CalcError> {
+    if b.dimension != Dimension::NONE {
+        let message = format!("an exponent is a plain number, not {}", b.dimension.name_with_article());
+        return Err(CalcError::new(message, right.range.clone()));
+    }
+    let dimension = raised(a.dimension, b.value).ok_or_else(|| {
+        let message = format!(
+            "{} cannot be raised to the power {}",
+            a.dimension.name_with_article(),
+            b.value
+        );
+        CalcError::new(message, left.range.clone())
+            .hint("say in which unit its number counts: `value_in(…, MPa)`")
+    })?;
+    if a.value == 0.0 && b.value < 0.0 {
+        return Err(CalcError::new("this divides by zero", left.range.clone()));
+    }
+    if a.value < 0.0 && libm::floor(b.value) != b.value {
+        let message = "this is below zero: it has no broken power";
+        return Err(CalcError::new(message, left.range.clone()));
+    }
+    finite(expr, Quantity { value: libm::pow(a.value, b.value), dimension })
+}
+
+/// The one dimension of all values; noughts go with every dimension.
+fn same(expr: &Expr, what: &str, values: &[(&Expr, Quantity)]) -> Result<Dimension, CalcError> {
+    let mut known: Option<Dimension> = None;
+    for (value, quantity) in values {
+        match known {
+            _ if value.is_nought() => {}
+            None => known = Some(quantity.dimension),
+            Some(dimension) if dimension == quantity.dimension => {}
+            Some(dimension) => {
+                let message = format!(
+                    "`{what}` cannot take {} with {}",
+                    dimension.name_with_article(),
+                    quantity.dimension.name_with_article()
+                );
+                return Err(CalcError::new(message, expr.range.clone()));
+            }
+        }
+    }
+    Ok(known.unwrap_or(Dimension::NONE))
+}
+
+fn finite(expr: &Expr, quantity: Quantity) -> Result<Value, CalcError> {
+    if quantity.value.is_finite() {
+        return Ok(Value::Number(quantity));
+    }
+    Err(CalcError::new("the result is not a finite number", expr.range.clone()))
+}

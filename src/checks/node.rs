@@ -1,0 +1,119 @@
+//! Checks on nodes: reactions and displacements.
+
+use super::evaluator::{Evaluator, Level, Problem};
+use super::fields::settled;
+use super::weigh::{Weighing, not_applicable};
+use super::{CheckResult, Task};
+use crate::calc::Value;
+use crate::diagnostic::Diagnostic;
+use crate::model::{CaseId, NodeId, Source};
+use crate::quantity::Dimension;
+
+pub(super) fn check(
+    task: &Task<'_>,
+    node: NodeId,
+    relative_to: Option<NodeId>,
+) -> Result<CheckResult, Diagnostic> {
+    by_combination(task, |source, combination, factors| {
+        let reaction = || reaction(task, node, factors);
+        let up = || global(task, node, reaction())[2];
+        let force = |value: f64| Value::number(value, Dimension::FORCE);
+        Ok(match source {
+            Source::Duration => duration(task, combination)?,
+            Source::Reaction(component) => {
+                let dimension = if *component < 3 { Dimension::FORCE } else { Dimension::MOMENT };
+                Value::number(reaction()[*component], dimension)
+            }
+            Source::Up => force(up().max(0.0)),
+            Source::Down => force((-up()).max(0.0)),
+            Source::Horizontal => {
+                let [x, y, _] = global(task, node, reaction());
+                force(libm::hypot(x, y))
+            }
+            Source::Displacement(component) => {
+                let of = |node: NodeId| displacement(task, node, *component, factors);
+                let value = of(node) - relative_to.map_or(0.0, of);
+                let dimension = if *component < 3 { Dimension::LENGTH } else { Dimension::NONE };
+                Value::number(value, dimension)
+            }
+            _ => Value::Truth(false),
+        })
+    })
+}
+
+/// A check whose readings depend on the combination alone.
+pub(super) fn by_combination(
+    task: &Task<'_>,
+    read: impl Fn(&Source, usize, &[(CaseId, f64)]) -> Result<Value, Problem>,
+) -> Result<CheckResult, Diagnostic> {
+    if let Some(result) = not_applicable(task) {
+        return Ok(result);
+    }
+    let mut evaluator = Evaluator::new(task);
+    let set = |evaluator: &mut Evaluator<'_>, combination: usize| -> Result<(), Problem> {
+        let factors = task.combinations.iter().find(|(index, _)| *index == combination);
+        let factors = factors.map_or(&[][..], |(_, factors)| factors);
+        for index in 0..evaluator.sources.len() {
+            let source = evaluator.sources[index];
+            if !matches!(source, Source::Constant(_)) {
+                evaluator.readings[index] = read(source, combination, factors)?;
+            }
+        }
+        Ok(())
+    };
+    let mut weighing = Weighing::new();
+    for (combination, _) in &task.combinations {
+        weighing.begin();
+        let said = set(&mut evaluator, *combination)
+            .and_then(|()| evaluator.run(Level::Combination))
+            .map_err(|problem| problem.on(task, Some(*combination), None))?;
+        weighing.take(*combination, None, None, said);
+    }
+    weighing.ended(task, |combination, _| {
+        set(&mut evaluator, combination)
+            .and_then(|()| evaluator.in_full(combination, None))
+            .map_err(|problem| problem.on(task, Some(combination), None))
+    })
+}
+
+/// Shortest duration of a combination's cases.
+pub(super) fn duration(task: &Task<'_>, combination: usize) -> Result<Value, Problem> {
+    let of = &task.model.combinations[combination];
+    of.duration.map(|duration| Value::word(duration.name())).ok_or_else(|| {
+        let check = &task.model.checks[task.check];
+        let message = format!("no load case of {} states its `duration`", of.number);
+        Problem::whole(&check.demand, message)
+    })
+}
+
+/// Reaction along the support's own axes, N and N m.
+pub(super) fn reaction(task: &Task<'_>, node: NodeId, factors: &[(CaseId, f64)]) -> [f64; 6] {
+    let solved = &task.solution.nodes[node.0].reaction;
+    let scales = task.scales.reactions[task.model[node].structure.0];
+    std::array::from_fn(|k| {
+        let terms = factors.iter().filter_map(|(case, factor)| Some(factor * solved.get(case.0)?[k]));
+        settled(terms.sum(), scales[usize::from(k >= 3)])
+    })
+}
+
+/// The forces of a reaction along global axes.
+pub(super) fn global(task: &Task<'_>, node: NodeId, own: [f64; 6]) -> [f64; 3] {
+    turned(task, node, [own[0], own[1], own[2]])
+}
+
+/// A vector along the support's own axes, along global ones.
+pub(super) fn turned(task: &Task<'_>, node: NodeId, own: [f64; 3]) -> [f64; 3] {
+    let Some(support) = &task.model[node].support else { return own };
+    std::array::from_fn(|k| (0..3).map(|axis| support.axes[axis][k] * own[axis]).sum())
+}
+
+/// Component of the displacement along global axes, m or rad.
+pub(super) fn displacement(
+    task: &Task<'_>,
+    node: NodeId,
+    component: usize,
+    factors: &[(CaseId, f64)],
+) -> f64 {
+    let solved = &task.solution.nodes[node.0].displacement;
+    factors.iter().map(|(case, factor)| factor * solved[case.0][component]).sum()
+}

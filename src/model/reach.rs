@@ -1,0 +1,719 @@
+//! What formulas can read: every name with where its value comes from.
+//!
+//! Names are bound here, before anything is solved, so that an unknown one is found with all other mistakes
+//! of the file. No effect is computed here.
+
+use super::{
+    CaseId, Effect, HeldAlong, Member, MemberId, Model, NodeId, On, Purpose, Release, Shows, Side,
+    StructureId,
+};
+use crate::calc::{Argument, Reading, Value};
+use crate::quantity::{Dimension, Kind, Quantity};
+
+/// A reading bound to its source.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Bound {
+    pub source: Source,
+    /// What it is, where that decides the unit it prints in.
+    pub kind: Option<Kind>,
+}
+
+/// Where a value comes from.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Source {
+    Constant(Value),
+    /// Shortest load duration in the combination.
+    Duration,
+    /// An effect at the point.
+    Effect(Effect),
+    /// Position along the member, m.
+    Position,
+    /// Length of the span that holds the point.
+    Span,
+    /// Greatest and least of an effect along the target, in the same combination.
+    Greatest(Effect),
+    Least(Effect),
+    /// An effect at a share of the target's length, in the same combination.
+    At(Effect, f64),
+    /// Component of the reaction of the node.
+    Reaction(usize),
+    /// Vertical reaction that pushes up, that holds down; neither below zero.
+    Up,
+    Down,
+    /// Horizontal resultant of the reaction.
+    Horizontal,
+    /// Component of the displacement of the node.
+    Displacement(usize),
+    /// Sum over the supports of a component of reaction, global.
+    SumOfReactions(usize),
+    /// Greatest size of a component of displacement over the nodes.
+    LargestDisplacement(usize),
+    /// Moments of the actions about a horizontal line along Y through a node, those that act with the
+    /// permanent actions, and those against them.
+    Stabilising,
+    Overturning,
+    /// A result for working blocks.
+    Result(Query),
+}
+
+/// A result that working blocks and narrative ask for.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Query {
+    Effect { member: MemberId, span: Option<usize>, effect: Effect, of: Of },
+    Reaction { node: NodeId, component: usize, of: Of },
+    Displacement { node: NodeId, component: usize, state: State },
+    /// Utilisation of a check.
+    Check(String),
+}
+
+/// Which value of many.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Of {
+    Greatest(Purpose),
+    Least(Purpose),
+    /// In one state; at a position for effects, m.
+    State(State, f64, Side),
+}
+
+/// A state by itself.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum State {
+    Case(CaseId),
+    /// Index into the combinations.
+    Combination(usize),
+}
+
+/// Why a name cannot be bound.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Unbound {
+    pub message: String,
+    pub hint: Option<String>,
+    /// Names that could have been meant.
+    pub known: Vec<String>,
+}
+
+const COMPONENTS: [&str; 6] = ["X", "Y", "Z", "RX", "RY", "RZ"];
+
+fn constant(kind: Kind, value: f64) -> Bound {
+    Bound { source: Source::Constant(Value::number(value, kind.dimension())), kind: Some(kind) }
+}
+
+fn truth(value: bool) -> Bound {
+    Bound { source: Source::Constant(Value::Truth(value)), kind: None }
+}
+
+fn of(source: Source, kind: Kind) -> Bound {
+    Bound { source, kind: Some(kind) }
+}
+
+fn component_kind(component: usize, force: bool) -> Kind {
+    match (component < 3, force) {
+        (true, true) => Kind::Force,
+        (false, true) => Kind::Moment,
+        (true, false) => Kind::Deflection,
+        (false, false) => Kind::Rotation,
+    }
+}
+
+fn is_member(on: On) -> bool {
+    matches!(on, On::Member { .. })
+}
+
+impl Model {
+    /// Binds what a check's formula reads on a target.
+    ///
+    /// # Errors
+    /// When nothing of this name is in reach there.
+    pub fn bind(&self, on: On, reading: &Reading) -> Result<Bound, Unbound> {
+        let value = self.values.iter().find(|value| value.name == reading.name);
+        if let Some(arguments) = &reading.arguments {
+            return match on {
+                On::Member { .. } => along(reading, arguments),
+                On::Node { .. } | On::Structure { .. } => Err(unknown_function(reading, &[])),
+            };
+        }
+        let (own, missing) = match on {
+            On::Member { member, span } => self.of_member(&self[member], span, &reading.name),
+            On::Node { node, relative_to } => (self.of_node(node, relative_to, &reading.name), None),
+            On::Structure { about, .. } => (of_structure(about, &reading.name), None),
+        };
+        match (own, value) {
+            (Some(_), Some(_)) => Err(Unbound {
+                message: format!("`{}` is both a value of the project and in reach here", reading.name),
+                hint: Some("give the value of the project another name".to_owned()),
+                known: Vec::new(),
+            }),
+            (Some(own), None) => Ok(own),
+            (None, Some(value)) => Ok(Bound {
+                source: Source::Constant(Value::number(value.value, value.dimension)),
+                kind: None,
+            }),
+            (None, None) => Err(self.unknown(on, &reading.name, missing)),
+        }
+    }
+
+    fn unknown(&self, on: On, name: &str, missing: Option<String>) -> Unbound {
+        if let Some(message) = missing {
+            return Unbound { message, hint: None, known: Vec::new() };
+        }
+        let mut known: Vec<String> = self.values.iter().map(|value| value.name.clone()).collect();
+        let own: &[&str] = match on {
+            On::Member { member, .. } => {
+                let member = &self[member];
+                let properties = &self[member.section].properties;
+                known.extend(properties.by_symbol().iter().map(|(symbol, ..)| (*symbol).to_owned()));
+                known.extend(properties.dimensions.keys().cloned());
+                known.extend(self[member.material].strengths.keys().cloned());
+                known.extend(super::EFFECTS.iter().map(|effect| effect.name().to_owned()));
+                &MEMBER_NAMES
+            }
+            On::Node { .. } => {
+                known.extend(COMPONENTS.iter().map(|name| format!("reaction_{name}")));
+                known.extend(COMPONENTS.iter().map(|name| format!("displacement_{name}")));
+                &["R_up", "R_down", "R_horizontal", "height", "duration"]
+            }
+            On::Structure { .. } => {
+                known.extend(COMPONENTS.iter().map(|name| format!("sum_{name}")));
+                known.extend(COMPONENTS[..3].iter().map(|name| format!("largest_{name}")));
+                &["M_stabilising", "M_overturning", "duration"]
+            }
+        };
+        known.extend(own.iter().map(|name| (*name).to_owned()));
+        Unbound { message: format!("nothing named `{name}` is in reach here"), hint: None, known }
+    }
+
+    /// A name of a member, or why it has none although others have.
+    fn of_member(
+        &self,
+        member: &Member,
+        span: Option<usize>,
+        name: &str,
+    ) -> (Option<Bound>, Option<String>) {
+        if let Some(effect) = Effect::from_name(name) {
+            return (Some(of(Source::Effect(effect), effect.kind())), None);
+        }
+        let section = &self[member.section];
+        let material = &self[member.material];
+        let properties = &section.properties;
+        let symbols = properties.by_symbol();
+        if let Some((_, kind, value)) = symbols.iter().find(|(symbol, ..)| *symbol == name) {
+            return (Some(constant(*kind, *value)), None);
+        }
+        if let Some(value) = properties.dimensions.get(name) {
+            return (Some(constant(Kind::SectionLength, *value)), None);
+        }
+        if let Some((value, kind)) = material.strengths.get(name) {
+            return (Some(constant(*kind, *value)), None);
+        }
+        let has = |what: &str| format!("section `{}` has no known {what}", section.name);
+        let states = |what: &str| format!("member `{}` states no {what}", member.name);
+        let bounds = self.ends(member, span);
+        let found = match name {
+            "E" => constant(Kind::Modulus, material.e),
+            "G" => constant(Kind::Modulus, material.g),
+            "density" => constant(Kind::MassDensity, material.density),
+            "depth" | "width" => {
+                let size = if name == "depth" { properties.depth() } else { properties.width() };
+                match size {
+                    Some(size) => constant(Kind::SectionLength, size),
+                    None => return (None, Some(has(name))),
+                }
+            }
+            "length" => constant(Kind::Length, member.length),
+            "span" => match span.or((member.spans.len() == 1).then_some(0)) {
+                Some(span) => {
+                    let span = member.spans[span];
+                    constant(Kind::Length, span.to - span.from)
+                }
+                None => of(Source::Span, Kind::Length),
+            },
+            "x" => of(Source::Position, Kind::Length),
+            "L_cr_y" | "L_cr_z" => {
+                match member.buckling_length[usize::from(name == "L_cr_z")] {
+                    Some(length) => constant(Kind::Length, length),
+                    None => return (None, Some(states("buckling length about this axis"))),
+                }
+            }
+            "top_held" => truth(member.held.top == HeldAlong::Continuous),
+            "bottom_held" => truth(member.held.bottom == HeldAlong::Continuous),
+            "unheld_top" | "unheld_bottom" => {
+                let held = if name == "unheld_top" { &member.held.top } else { &member.held.bottom };
+                match unheld(member, held, bounds) {
+                    Some(length) => constant(Kind::Length, length),
+                    None => return (None, Some(states("restraint of this edge (`held`)"))),
+                }
+            }
+            "start_free" | "end_free" => {
+                truth(self.is_free(member, if name == "start_free" { bounds.0 } else { bounds.1 }))
+            }
+            "start_hinged" | "end_hinged" => {
+                truth(is_hinged(member, if name == "start_hinged" { bounds.0 } else { bounds.1 }))
+            }
+            "cantilever" => {
+                truth(self.is_free(member, bounds.0) != self.is_free(member, bounds.1))
+            }
+            "shape" => word(properties.form),
+            "family" => word(&material.family),
+            "service_class" => match &material.service_class {
+                Some(class) => word(class),
+                None => {
+                    let message = format!("material `{}` states no service class", material.name);
+                    return (None, Some(message));
+                }
+            },
+            "duration" => Bound { source: Source::Duration, kind: None },
+            "A_vy" | "A_vz" | "W_el_y" | "W_el_z" | "W_pl_y" | "W_pl_z" | "I_w" | "z_top"
+            | "z_bottom" | "y_plus" | "y_minus" => return (None, Some(has(name))),
+            _ => return (None, None),
+        };
+        (Some(found), None)
+    }
+
+    /// Positions of the ends of the member or span.
+    fn ends(&self, member: &Member, span: Option<usize>) -> (f64, f64) {
+        span.map_or((0.0, member.length), |span| (member.spans[span].from, member.spans[span].to))
+    }
+
+    fn is_free(&self, member: &Member, x: f64) -> bool {
+        member.spans.iter().any(|span| {
+            span.free[0] && span.from.total_cmp(&x).is_eq()
+                || span.free[1] && span.to.total_cmp(&x).is_eq()
+        })
+    }
+
+    fn of_node(&self, node: NodeId, relative_to: Option<NodeId>, name: &str) -> Option<Bound> {
+        if let Some(component) = name.strip_prefix("reaction_") {
+            let component = COMPONENTS.iter().position(|other| *other == component)?;
+            self[node].support.as_ref()?;
+            return Some(of(Source::Reaction(component), component_kind(component, true)));
+        }
+        if let Some(component) = name.strip_prefix("displacement_") {
+            let component = COMPONENTS.iter().position(|other| *other == component)?;
+            return Some(of(Source::Displacement(component), component_kind(component, false)));
+        }
+        let supported = self[node].support.is_some();
+        Some(match name {
+            "R_up" if supported => of(Source::Up, Kind::Force),
+            "R_down" if supported => of(Source::Down, Kind::Force),
+            "R_horizontal" if supported => of(Source::Horizontal, Kind::Force),
+            "height" => {
+                let other = relative_to?;
+                constant(Kind::Length, self[node].at[2] - self[other].at[2])
+            }
+            "duration" => Bound { source: Source::Duration, kind: None },
+            _ => return None,
+        })
+    }
+
+    /// What a working block or the narrative asks for: `effect('B1', 'M_y', 'max', purpose='strength')`,
+    /// `effect('B1', 'M_y', at=2.7 m, state='G')`, `reaction('A', 'Z', …)`, `displacement('C', 'X',
+    /// state='…')`, `member('B1', 'length')`, `check('B1-bending')`, or a value of the project.
+    ///
+    /// # Errors
+    /// When something of this name is not there.
+    pub fn bind_result(&self, reading: &Reading, checks: &[String]) -> Result<Bound, Unbound> {
+        let Some(arguments) = &reading.arguments else {
+            let value = self.values.iter().find(|value| value.name == reading.name);
+            return match value {
+                Some(value) => Ok(Bound {
+                    source: Source::Constant(Value::number(value.value, value.dimension)),
+                    kind: None,
+                }),
+                None => Err(Unbound {
+                    message: format!("no value named `{}`", reading.name),
+                    hint: None,
+                    known: self.values.iter().map(|value| value.name.clone()).collect(),
+                }),
+            };
+        };
+        let call = Call { model: self, reading, arguments };
+        match reading.name.as_str() {
+            "effect" => call.effect(),
+            "reaction" => call.reaction(),
+            "displacement" => call.displacement(),
+            "member" => call.member_value(),
+            "check" => {
+                let id = call.text(0, "the id of a check")?;
+                call.only(1, &[])?;
+                if checks.contains(&id) {
+                    return Ok(Bound {
+                        source: Source::Result(Query::Check(id)),
+                        kind: Some(Kind::Number),
+                    });
+                }
+                Err(no("check", &id, checks.iter().cloned()))
+            }
+            _ => Err(unknown_function(
+                reading,
+                &["effect", "reaction", "displacement", "member", "check"],
+            )),
+        }
+    }
+}
+
+/// Names of a member besides its effects, section properties and strengths.
+const MEMBER_NAMES: [&str; 22] = [
+    "E",
+    "G",
+    "density",
+    "depth",
+    "width",
+    "length",
+    "span",
+    "x",
+    "L_cr_y",
+    "L_cr_z",
+    "top_held",
+    "bottom_held",
+    "unheld_top",
+    "unheld_bottom",
+    "start_free",
+    "end_free",
+    "start_hinged",
+    "end_hinged",
+    "cantilever",
+    "shape",
+    "family",
+    "duration",
+];
+
+fn word(text: &str) -> Bound {
+    Bound { source: Source::Constant(Value::word(text)), kind: None }
+}
+
+/// Longest stretch of a part of a member between held places of an edge, its ends counted as held only
+/// where they are; `None` where nothing is stated.
+fn unheld(member: &Member, held: &HeldAlong, (from, to): (f64, f64)) -> Option<f64> {
+    match held {
+        HeldAlong::NotStated => None,
+        HeldAlong::Continuous => Some(0.0),
+        HeldAlong::At(nodes) => {
+            let mut places = vec![from];
+            places.extend(
+                member
+                    .along
+                    .iter()
+                    .zip(&member.stations)
+                    .filter(|(node, x)| nodes.contains(node) && from < **x && **x < to)
+                    .map(|(_, x)| *x),
+            );
+            places.push(to);
+            Some(places.windows(2).map(|pair| pair[1] - pair[0]).fold(0.0, f64::max))
+        }
+    }
+}
+
+fn is_hinged(member: &Member, x: f64) -> bool {
+    let station = member.stations.iter().position(|station| station.total_cmp(&x).is_eq());
+    station.is_some_and(|station| member.release(station, Effect::My) == Release::Free)
+}
+
+fn of_structure(about: Option<NodeId>, name: &str) -> Option<Bound> {
+    if let Some(component) = name.strip_prefix("sum_") {
+        let component = COMPONENTS.iter().position(|other| *other == component)?;
+        return Some(of(Source::SumOfReactions(component), component_kind(component, true)));
+    }
+    if let Some(component) = name.strip_prefix("largest_") {
+        let component = COMPONENTS[..3].iter().position(|other| *other == component)?;
+        return Some(of(Source::LargestDisplacement(component), Kind::Deflection));
+    }
+    match name {
+        "M_stabilising" => about.map(|_| of(Source::Stabilising, Kind::Moment)),
+        "M_overturning" => about.map(|_| of(Source::Overturning, Kind::Moment)),
+        "duration" => Some(Bound { source: Source::Duration, kind: None }),
+        _ => None,
+    }
+}
+
+type Arguments = [(Option<String>, Argument)];
+
+/// `greatest(M_y)`, `least(M_y)`, `at(M_y, 0.25)` along the target of a check.
+fn along(reading: &Reading, arguments: &Arguments) -> Result<Bound, Unbound> {
+    let effect = match arguments.first() {
+        Some((None, Argument::Name(name) | Argument::Text(name))) => Effect::from_name(name),
+        _ => None,
+    };
+    let known = || super::EFFECTS.iter().map(|effect| effect.name().to_owned()).collect();
+    let no_effect = || Unbound {
+        message: format!("`{}` takes an effect such as `M_y`", reading.name),
+        hint: None,
+        known: known(),
+    };
+    match (reading.name.as_str(), arguments) {
+        ("greatest", [_]) => {
+            let effect = effect.ok_or_else(no_effect)?;
+            Ok(of(Source::Greatest(effect), effect.kind()))
+        }
+        ("least", [_]) => {
+            let effect = effect.ok_or_else(no_effect)?;
+            Ok(of(Source::Least(effect), effect.kind()))
+        }
+        ("at", [_, (None, Argument::Quantity(Quantity { value, dimension }))])
+            if *dimension == Dimension::NONE && (0.0..=1.0).contains(value) =>
+        {
+            let effect = effect.ok_or_else(no_effect)?;
+            Ok(of(Source::At(effect, *value), effect.kind()))
+        }
+        ("at", _) => Err(Unbound {
+            message: "`at` takes an effect and a share of the length between 0 and 1".to_owned(),
+            hint: Some("for example `at(M_y, 0.25)`".to_owned()),
+            known: Vec::new(),
+        }),
+        ("greatest" | "least", _) => Err(no_effect()),
+        _ => Err(unknown_function(reading, &["greatest", "least", "at"])),
+    }
+}
+
+fn unknown_function(reading: &Reading, own: &[&str]) -> Unbound {
+    let functions = crate::calc::Function::ALL.iter().map(|function| function.name());
+    let language = ["value_in", "interpolate", "choose"];
+    Unbound {
+        message: format!("no function named `{}`", reading.name),
+        hint: None,
+        known: own.iter().copied().chain(functions).chain(language).map(str::to_owned).collect(),
+    }
+}
+
+fn no(what: &str, name: &str, known: impl Iterator<Item = String>) -> Unbound {
+    Unbound { message: format!("no {what} named `{name}`"), hint: None, known: known.collect() }
+}
+
+/// A call for a result.
+struct Call<'m> {
+    model: &'m Model,
+    reading: &'m Reading,
+    arguments: &'m Arguments,
+}
+
+impl Call<'_> {
+    fn wrong(&self, message: String) -> Unbound {
+        let hint = match self.reading.name.as_str() {
+            "effect" => "for example `effect('B1', 'M_y', 'max', purpose='strength')` or `effect('B1', 'M_y', at=2.7 m, state='G')`",
+            "reaction" => "for example `reaction('A', 'Z', 'max', purpose='strength')` or `reaction('A', 'Z', state='G')`",
+            "displacement" => "for example `displacement('C', 'X', state='G')`",
+            _ => "for example `member('B1', 'length')`, `check('B1-bending')`",
+        };
+        Unbound { message, hint: Some(hint.to_owned()), known: Vec::new() }
+    }
+
+    /// The text at a place among those without a key.
+    fn text(&self, index: usize, what: &str) -> Result<String, Unbound> {
+        let mut plain = self.arguments.iter().filter(|(key, _)| key.is_none());
+        match plain.nth(index) {
+            Some((_, Argument::Text(text) | Argument::Name(text))) => Ok(text.clone()),
+            _ => Err(self.wrong(format!("`{}` needs {what}", self.reading.name))),
+        }
+    }
+
+    fn keyed(&self, wanted: &str) -> Option<&Argument> {
+        let of = |key: &Option<String>| key.as_deref() == Some(wanted);
+        self.arguments.iter().find(|(key, _)| of(key)).map(|(_, argument)| argument)
+    }
+
+    /// Nothing but these stands in the brackets.
+    fn only(&self, plain: usize, keys: &[&str]) -> Result<(), Unbound> {
+        let count = self.arguments.iter().filter(|(key, _)| key.is_none()).count();
+        if count > plain {
+            return Err(self.wrong(format!("`{}` takes {plain} plain arguments", self.reading.name)));
+        }
+        for key in self.arguments.iter().filter_map(|(key, _)| key.as_ref()) {
+            if !keys.contains(&key.as_str()) {
+                return Err(self.wrong(format!("`{}` has no argument `{key}`", self.reading.name)));
+            }
+        }
+        Ok(())
+    }
+
+    fn member(&self) -> Result<MemberId, Unbound> {
+        let name = self.text(0, "the name of a member")?;
+        let members = &self.model.members;
+        let found = members.iter().position(|member| member.name == name);
+        let known = members.iter().map(|member| member.name.clone());
+        found.map(MemberId).ok_or_else(|| no("member", &name, known))
+    }
+
+    fn node(&self) -> Result<NodeId, Unbound> {
+        let name = self.text(0, "the name of a node")?;
+        let nodes = &self.model.nodes;
+        let found = nodes.iter().position(|node| node.name == name);
+        found.map(NodeId).ok_or_else(|| no("node", &name, nodes.iter().map(|node| node.name.clone())))
+    }
+
+    fn component(&self) -> Result<usize, Unbound> {
+        let name = self.text(1, "a component: X, Y, Z, RX, RY or RZ")?;
+        let found = COMPONENTS.iter().position(|component| *component == name);
+        found.ok_or_else(|| no("component", &name, COMPONENTS.iter().map(|c| (*c).to_owned())))
+    }
+
+    fn state(&self) -> Result<Option<State>, Unbound> {
+        let name = match self.keyed("state") {
+            None => return Ok(None),
+            Some(Argument::Text(name) | Argument::Name(name)) => name,
+            Some(Argument::Quantity(_)) => {
+                return Err(self.wrong("`state` is a load case or a combination".to_owned()));
+            }
+        };
+        let cases = self.model.cases.iter().position(|case| case.name == *name);
+        if let Some(case) = cases {
+            return Ok(Some(State::Case(CaseId(case))));
+        }
+        let combinations = &self.model.combinations;
+        let found = combinations
+            .iter()
+            .position(|combination| combination.name == *name || combination.title == *name);
+        let known = self.model.cases.iter().map(|case| case.name.clone());
+        let titles = combinations.iter().map(|combination| combination.title.clone());
+        match found {
+            Some(index) => Ok(Some(State::Combination(index))),
+            None => Err(no("load case or combination", name, known.chain(titles))),
+        }
+    }
+
+    /// `'max'` or `'min'` with a purpose, or one state.
+    fn which(&self, at: Option<(f64, Side)>) -> Result<Of, Unbound> {
+        if let Some(state) = self.state()? {
+            let (x, side) = at.unwrap_or((0.0, Side::Before));
+            self.only(2, &["state", "at", "side", "span"])?;
+            return Ok(Of::State(state, x, side));
+        }
+        let which = self.text(2, "`max` or `min`, or a `state`")?;
+        let purpose = match self.keyed("purpose") {
+            Some(Argument::Text(name) | Argument::Name(name)) => Purpose::from_name(name)
+                .ok_or_else(|| {
+                    let known = Purpose::ALL.iter().map(|purpose| purpose.name().to_owned());
+                    no("purpose", name, known)
+                })?,
+            _ => return Err(self.wrong(format!("`{}` needs a `purpose`", self.reading.name))),
+        };
+        self.only(3, &["purpose", "span"])?;
+        let combinations = &self.model.combinations;
+        if !combinations.iter().any(|combination| combination.purpose == purpose) {
+            let message = format!("the project has no combination of purpose `{}`", purpose.name());
+            return Err(self.wrong(message));
+        }
+        match which.as_str() {
+            "max" => Ok(Of::Greatest(purpose)),
+            "min" => Ok(Of::Least(purpose)),
+            _ => Err(self.wrong(format!("`{which}` is neither `max` nor `min`"))),
+        }
+    }
+
+    fn effect(&self) -> Result<Bound, Unbound> {
+        let member = self.member()?;
+        let name = self.text(1, "an effect such as 'M_y'")?;
+        let effect = Effect::from_name(&name).ok_or_else(|| {
+            no("effect", &name, super::EFFECTS.iter().map(|effect| effect.name().to_owned()))
+        })?;
+        let spans = self.model[member].spans.len();
+        let span = match self.keyed("span") {
+            None => None,
+            Some(Argument::Quantity(Quantity { value, .. })) => {
+                let found = (0..spans).find(|span| {
+                    #[expect(clippy::cast_precision_loss, reason = "few spans")]
+                    let number = (*span + 1) as f64;
+                    number.total_cmp(value).is_eq()
+                });
+                Some(found.ok_or_else(|| self.wrong(format!("there are {spans} spans")))?)
+            }
+            Some(_) => return Err(self.wrong("`span` is a number".to_owned())),
+        };
+        let at = match self.keyed("at") {
+            None => None,
+            Some(Argument::Quantity(Quantity { value, dimension }))
+                if *dimension == Dimension::LENGTH =>
+            {
+                let from = span.map_or(0.0, |span| self.model[member].spans[span].from);
+                let x = from + value;
+                if !(0.0..=self.model[member].length).contains(&x) {
+                    return Err(self.wrong(format!("{x} m is not on the member")));
+                }
+                let side = match self.keyed("side") {
+                    Some(Argument::Text(side) | Argument::Name(side)) if side == "after" => {
+                        Side::After
+                    }
+                    _ => Side::Before,
+                };
+                Some((x, side))
+            }
+            Some(_) => return Err(self.wrong("`at` is a length".to_owned())),
+        };
+        let of = self.which(at)?;
+        if matches!(of, Of::State(..)) && at.is_none() {
+            return Err(self.wrong("an effect in a state needs its place: `at=2.7 m`".to_owned()));
+        }
+        let query = Query::Effect { member, span, effect, of };
+        Ok(self::of(Source::Result(query), effect.kind()))
+    }
+
+    fn reaction(&self) -> Result<Bound, Unbound> {
+        let node = self.node()?;
+        if self.model[node].support.is_none() {
+            return Err(self.wrong(format!("node `{}` has no support", self.model[node].name)));
+        }
+        let component = self.component()?;
+        let of = self.which(None)?;
+        let query = Query::Reaction { node, component, of };
+        Ok(self::of(Source::Result(query), component_kind(component, true)))
+    }
+
+    fn displacement(&self) -> Result<Bound, Unbound> {
+        let node = self.node()?;
+        let component = self.component()?;
+        self.only(2, &["state"])?;
+        let state = self.state()?;
+        let state = state.ok_or_else(|| self.wrong("`displacement` needs a `state`".to_owned()))?;
+        let query = Query::Displacement { node, component, state };
+        Ok(of(Source::Result(query), component_kind(component, false)))
+    }
+
+    /// A property of a member by the name that checks have for it.
+    fn member_value(&self) -> Result<Bound, Unbound> {
+        let member = self.member()?;
+        let name = self.text(1, "a property such as 'length' or 'I_y'")?;
+        self.only(2, &[])?;
+        let on = On::Member { member, span: None };
+        let (found, missing) = self.model.of_member(&self.model[member], None, &name);
+        match found {
+            Some(bound) if matches!(bound.source, Source::Constant(_)) => Ok(bound),
+            _ => Err(self.model.unknown(on, &name, missing)),
+        }
+    }
+}
+
+impl Model {
+    /// What a check is made on, in words.
+    #[must_use]
+    pub fn on_name(&self, on: On) -> String {
+        match on {
+            On::Member { member, span: None } => format!("member {}", self[member].name),
+            On::Member { member, span: Some(span) } => {
+                format!("member {}, span {}", self[member].name, span + 1)
+            }
+            On::Node { node, .. } => format!("node {}", self[node].name),
+            On::Structure { structure, .. } => format!("structure {}", self[structure].name),
+        }
+    }
+}
+
+impl On {
+    /// The structure it stands in.
+    #[must_use]
+    pub fn structure(self, model: &Model) -> StructureId {
+        match self {
+            Self::Member { member, .. } => model[member].structure,
+            Self::Node { node, .. } => model[node].structure,
+            Self::Structure { structure, .. } => structure,
+        }
+    }
+
+    /// What a check of this purpose shows here unless it says otherwise.
+    #[must_use]
+    pub fn usually_shows(self, purpose: Purpose) -> Shows {
+        match purpose {
+            Purpose::Equilibrium => Shows::Equilibrium,
+            _ if !is_member(self) => Shows::Other,
+            purpose if purpose.is_service() => Shows::Deflection,
+            _ => Shows::Strength,
+        }
+    }
+}
