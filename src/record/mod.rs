@@ -15,6 +15,7 @@ mod types;
 
 pub use checked::*;
 pub use look_up::{Band, Piece};
+pub use registers::printed_utilisation;
 pub use types::*;
 
 use crate::analysis::{Governing, SelfCheck, Solution};

@@ -1,6 +1,6 @@
 //! Open items: what a reader of the first page must know is not settled.
 
-use super::{OpenItem, Record, Registers};
+use super::{CheckRecord, NarrativeBlockRecord, OpenItem, Record, Registers};
 use crate::model::Effect;
 use crate::quantity::Kind;
 
@@ -9,7 +9,9 @@ const NOTHING: f64 = 1e-9;
 
 pub(super) fn registers(record: &Record) -> Registers {
     let mut open_items = Vec::new();
+    open_items.extend(outcomes(record));
     open_items.extend(assumptions(record));
+    open_items.extend(narrative(record));
     open_items.extend(uplift(record));
     open_items.extend(compression(record));
     open_items.extend(unchecked(record));
@@ -122,17 +124,84 @@ fn compression(record: &Record) -> Vec<OpenItem> {
     out
 }
 
-/// Members without any check of strength, stability or deflection.
-fn unchecked(record: &Record) -> Option<OpenItem> {
-    if !record.checks.is_empty() {
-        return None;
+/// Checks that are not satisfied, then those deferred that no deferral of the project covers.
+fn outcomes(record: &Record) -> Vec<OpenItem> {
+    let covered = |check: &CheckRecord| {
+        record.basis.deferred.iter().any(|deferral| deferral.checks.contains(&check.id))
+    };
+    let what = |check: &CheckRecord| {
+        let reason = check.reason.as_ref().map(|reason| format!(": {reason}")).unwrap_or_default();
+        format!("{} ({}), {}{reason}", check.id, check.title, check.on_words())
+    };
+    let failing = record.checks.iter().filter(|check| check.outcome == "not satisfied");
+    let failing = failing.map(|check| {
+        let by = match check.utilisation {
+            Some(value) => format!(", utilisation {}", printed_utilisation(value)),
+            None => String::new(),
+        };
+        item("not satisfied", format!("Not satisfied: {}{by}", what(check)))
+    });
+    let deferred = record
+        .checks
+        .iter()
+        .filter(|check| check.outcome == "deferred" && !covered(check))
+        .map(|check| item("deferred", format!("Deferred: {}", what(check))));
+    failing.chain(deferred).collect()
+}
+
+/// What the narrative says is open.
+fn narrative(record: &Record) -> impl Iterator<Item = OpenItem> {
+    let blocks = record.narrative.iter().flat_map(|narrative| &narrative.blocks);
+    blocks.filter_map(|block| match block {
+        NarrativeBlockRecord::Open(text) => Some(item("open", text.clone())),
+        NarrativeBlockRecord::Working(_)
+        | NarrativeBlockRecord::Assumption(_)
+        | NarrativeBlockRecord::Deferral(_)
+        | NarrativeBlockRecord::Reference(_) => None,
+    })
+}
+
+/// Members without a check of strength, of stability, of deflection; those without any are named once.
+fn unchecked(record: &Record) -> Vec<OpenItem> {
+    let shown = |member: &str, what: &str| {
+        record
+            .checks
+            .iter()
+            .any(|check| check.on.member.as_deref() == Some(member) && check.shows == what)
+    };
+    let all: Vec<&str> = record.results.members.keys().map(String::as_str).collect();
+    let kinds = ["strength", "stability", "deflection"];
+    let (none, some): (Vec<&str>, Vec<&str>) =
+        all.iter().partition(|member| kinds.iter().all(|kind| !shown(member, kind)));
+    let mut out = Vec::new();
+    if !none.is_empty() {
+        let lead = if some.is_empty() { "This package gives effects of actions only: " } else { "" };
+        out.push(item(
+            "members without checks",
+            format!(
+                "{lead}strength, stability and deflection of {} are to be checked elsewhere",
+                none.join(", ")
+            ),
+        ));
     }
-    let names: Vec<&str> = record.results.members.keys().map(String::as_str).collect();
-    Some(item(
-        "members without checks",
-        format!(
-            "This package gives effects of actions only: strength, stability and deflection of {} are to be checked elsewhere",
-            names.join(", ")
-        ),
-    ))
+    for kind in kinds {
+        let without: Vec<&str> =
+            some.iter().filter(|member| !shown(member, kind)).copied().collect();
+        if !without.is_empty() {
+            let text = format!("No check of {kind} in this package: {}", without.join(", "));
+            out.push(item("members without checks", text));
+        }
+    }
+    out
+}
+
+/// A utilisation as printed: less a billionth, rounded up to two decimals, so that nothing above its limit
+/// prints as the limit.
+#[must_use]
+pub fn printed_utilisation(value: f64) -> String {
+    if !value.is_finite() {
+        return "–".to_owned();
+    }
+    let hundredths = libm::ceil((value - 1e-9) * 100.0) + 0.0;
+    format!("{:.2}", hundredths / 100.0).replace('-', "\u{2212}")
 }
