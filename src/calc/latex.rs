@@ -28,7 +28,7 @@ fn write(out: &mut String, math: &Math) {
         Math::Sign(sign) => *out += spelled(sign),
         Math::Row(parts) => parts.iter().for_each(|part| write(out, part)),
         Math::Brackets(inner) => around(out, "\\left(", inner, "\\right)"),
-        Math::Absolute(inner) => around(out, "\\left|", inner, "\\right|"),
+        Math::Absolute(inner) => around(out, "\\left\\lvert ", inner, "\\right\\rvert "),
         Math::Floor(inner) => around(out, "\\left\\lfloor ", inner, "\\right\\rfloor "),
         Math::Ceil(inner) => around(out, "\\left\\lceil ", inner, "\\right\\rceil "),
         Math::Root(inner) => around(out, "\\sqrt{", inner, "}"),
@@ -185,8 +185,8 @@ fn escaped(text: &str) -> String {
     let mut out = String::new();
     for c in text.chars() {
         match c {
-            '\\' | '~' | '^' | '`' | '<' | '>' | '|' => out.push(' '),
-            '{' | '}' | '$' | '&' | '#' | '%' | '_' => {
+            '\\' | '~' | '^' | '`' | '<' | '>' | '|' | '$' => out.push(' '),
+            '{' | '}' | '&' | '#' | '%' | '_' => {
                 out.push('\\');
                 out.push(c);
             }

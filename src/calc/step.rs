@@ -30,12 +30,17 @@ pub fn equations(
         lines.push(broken(put_in));
     }
     lines.push(vec![result]);
+    let name = (!symbol.is_empty()).then(|| Math::Symbol(symbol.to_owned()));
+    let total: usize = lines.iter().flatten().chain(&name).map(|part| width(part) + 3).sum();
+    if total <= WIDEST {
+        let parts = name.iter().chain(lines.iter().flatten()).map(latex);
+        return parts.collect::<Vec<_>>().join(" = ");
+    }
     let mut out = String::from("\\begin{aligned}\n");
     for (index, line) in lines.iter().enumerate() {
-        let name = Math::Symbol(symbol.to_owned());
-        match (index, symbol) {
-            (0, "") => out += "&",
-            (0, _) => out += &format!("{} &= ", latex(&name)),
+        match (index, &name) {
+            (0, None) => out += "&",
+            (0, Some(name)) => out += &format!("{} &= ", latex(name)),
             _ => out += "&= ",
         }
         for (part, math) in line.iter().enumerate() {

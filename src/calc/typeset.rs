@@ -2,6 +2,7 @@
 
 use super::expression::{Argument, Binary, Expr, ExprKind, Formula, Reading};
 use super::Function;
+use crate::quantity::parse_unit;
 
 /// Mathematics, free of any markup.
 #[derive(Clone, Debug, PartialEq)]
@@ -64,7 +65,9 @@ impl Set<'_> {
     fn math(&mut self, expr: &Expr, level: u8) -> Math {
         match &expr.kind {
             ExprKind::Quantity { number, unit, .. } => {
-                bracketed(Math::Value(number.clone(), unit.clone()), level >= POWER && !unit.is_empty())
+                // `kN/m2` is set as `kN/m²`.
+                let label = parse_unit(unit).map_or_else(|_| unit.clone(), |unit| unit.label);
+                bracketed(Math::Value(number.clone(), label), level >= POWER && !unit.is_empty())
             }
             ExprKind::Pi => Math::Symbol("pi".to_owned()),
             ExprKind::Word(word) => Math::Text(word.clone()),
@@ -179,6 +182,9 @@ impl Set<'_> {
             None => symbol(&self.readings[index]),
             Some((values, _)) => {
                 let (number, unit) = values[index].clone();
+                if number.starts_with(char::is_alphabetic) {
+                    return Math::Text(number);
+                }
                 let inside = number.starts_with('\u{2212}') && level >= 5
                     || level >= POWER && !unit.is_empty()
                     || level >= PRODUCT && number.contains('×');
@@ -197,27 +203,48 @@ fn bracketed(math: Math, needed: bool) -> Math {
     if needed { Math::Brackets(Box::new(math)) } else { math }
 }
 
-/// `M_y`, or `M_y (max, B1)` of a call.
+/// A name is a symbol. A call that names a thing and one of its values, as `effect('B1', 'M_y', 'max', …)`
+/// does, is set as that value's symbol with the thing behind it: M_y,max (B1, …).
 fn symbol(reading: &Reading) -> Math {
     let Some(arguments) = &reading.arguments else { return Math::Symbol(reading.name.clone()) };
-    let mut row = vec![Math::Text(reading.name.clone())];
+    let plain: Vec<&str> = arguments
+        .iter()
+        .filter_map(|(key, argument)| match (key, argument) {
+            (None, Argument::Text(text)) => Some(text.as_str()),
+            _ => None,
+        })
+        .collect();
+    let (symbol, named) = match plain.as_slice() {
+        [_, of, rest @ ..] => {
+            let letter = match reading.name.as_str() {
+                "reaction" => "R_",
+                "displacement" => "u_",
+                _ => "",
+            };
+            let index = rest.first().map(|which| format!("_{which}")).unwrap_or_default();
+            (Math::Symbol(format!("{letter}{of}{index}")), 1 + rest.len())
+        }
+        _ => (Math::Text(reading.name.clone()), 0),
+    };
     let mut inner = Vec::new();
-    for (key, argument) in arguments {
+    for (place, (key, argument)) in arguments.iter().enumerate() {
+        if (1..=named).contains(&place) && key.is_none() {
+            continue;
+        }
         if !inner.is_empty() {
             inner.push(Math::Sign(","));
         }
-        if let Some(key) = key {
+        if let (Some(key), Argument::Quantity(_)) = (key, argument) {
             inner.push(Math::Text(format!("{key} ")));
         }
         inner.push(match argument {
             Argument::Name(name) => Math::Symbol(name.clone()),
-            Argument::Text(text) if text.contains('_') => Math::Symbol(text.clone()),
             Argument::Text(text) => Math::Text(text.clone()),
-            Argument::Quantity(quantity) => {
-                Math::Value(crate::quantity::print(quantity.value, 6), String::new())
-            }
+            Argument::Quantity(quantity) => Math::Value(
+                crate::quantity::print(quantity.value, 6),
+                quantity.dimension.base_units(),
+            ),
         });
     }
-    row.push(Math::Brackets(Box::new(Math::Row(inner))));
-    Math::Row(row)
+    Math::Row(vec![symbol, Math::Brackets(Box::new(Math::Row(inner)))])
 }

@@ -8,6 +8,7 @@ use std::fmt::Write;
 use math_core::MathDisplay;
 use pulldown_cmark::{Alignment, CodeBlockKind, Event, HeadingLevel, Options, Parser, Tag, TagEnd};
 
+use super::anchor::anchor;
 use super::math::Mathematics;
 use super::number::TABLE;
 use crate::figures::Figure;
@@ -18,8 +19,8 @@ const STYLE: &str = include_str!("../../styles/page.css");
 /// Tables of at most so many rows stay on one sheet.
 const TOGETHER: usize = 14;
 
-/// The whole page.
-pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> String {
+/// The whole page, and the ids that links lead to although nothing in the page has them.
+pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (String, Vec<String>) {
     let body = Body::new(markdown, drawings);
     let project = &record.project;
     let mark = project.revisions.last().map_or("", |revision| revision.mark.as_str());
@@ -55,7 +56,8 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> Stri
     out += "</ol>\n</nav>\n<main>\n";
     out += rest;
     out += "</main>\n</body>\n</html>\n";
-    out
+    let missing = body.links.iter().filter(|link| !body.ids.contains(link));
+    (out, missing.cloned().collect())
 }
 
 /// Sheet size and what stands at the edge of every printed sheet.
@@ -121,6 +123,14 @@ struct Body<'d> {
     html: String,
     contents: Vec<Entry>,
     heading: Option<(u8, usize)>,
+    /// Text of the present heading, without any markup.
+    plain: String,
+    /// Where the present strong text begins.
+    strong: usize,
+    /// Labels of footnotes in order of first reference.
+    notes: Vec<String>,
+    /// Ids inside the page that links lead to.
+    links: Vec<String>,
     /// Where the present paragraph begins in `html`.
     paragraph: usize,
     /// A table's caption that has been read and waits for its table.
@@ -145,6 +155,10 @@ impl<'d> Body<'d> {
             html: String::with_capacity(2 * markdown.len()),
             contents: Vec::new(),
             heading: None,
+            plain: String::new(),
+            strong: 0,
+            notes: Vec::new(),
+            links: Vec::new(),
             paragraph: 0,
             caption: None,
             alignments: Vec::new(),
@@ -156,7 +170,7 @@ impl<'d> Body<'d> {
             in_code: false,
             ids: Vec::new(),
         };
-        let options = Options::ENABLE_TABLES | Options::ENABLE_MATH;
+        let options = Options::ENABLE_TABLES | Options::ENABLE_MATH | Options::ENABLE_FOOTNOTES;
         for event in Parser::new_ext(markdown, options) {
             body.take(event);
         }
@@ -175,6 +189,7 @@ impl<'d> Body<'d> {
             Event::End(tag) => self.end(tag),
             Event::Text(text) => self.text(&text),
             Event::Code(code) => {
+                self.plain.push_str(&code);
                 let _ = write!(self.html, "<code>{}</code>", escaped(&code));
             }
             Event::InlineMath(latex) => {
@@ -186,15 +201,34 @@ impl<'d> Body<'d> {
             Event::SoftBreak => self.html.push('\n'),
             Event::HardBreak => self.html += "<br>\n",
             Event::Rule => self.html += "<hr>\n",
-            // No HTML but ours; footnotes and tasks are not switched on.
-            Event::Html(_)
-            | Event::InlineHtml(_)
-            | Event::FootnoteReference(_)
-            | Event::TaskListMarker(_) => {}
+            Event::FootnoteReference(label) => {
+                let number = self.note(&label);
+                let mark = format!("note-{number}-mark");
+                // Only the first reference can be led back to.
+                let id = if self.ids.contains(&mark) {
+                    String::new()
+                } else {
+                    format!(" id=\"{mark}\"")
+                };
+                self.ids.push(mark);
+                let _ = write!(self.html, "<sup{id}><a href=\"#note-{number}\">{number}</a></sup>");
+            }
+            // No HTML but ours; tasks are not switched on.
+            Event::Html(_) | Event::InlineHtml(_) | Event::TaskListMarker(_) => {}
         }
     }
 
+    /// The number of a footnote.
+    fn note(&mut self, label: &str) -> usize {
+        let known = self.notes.iter().position(|other| other == label);
+        known.unwrap_or_else(|| {
+            self.notes.push(label.to_owned());
+            self.notes.len() - 1
+        }) + 1
+    }
+
     fn text(&mut self, text: &str) {
+        self.plain.push_str(text);
         if let Some((_, description)) = &mut self.image {
             description.push_str(text);
         } else if self.in_code {
@@ -216,6 +250,7 @@ impl<'d> Body<'d> {
                     HeadingLevel::H2 => 2,
                     _ => 3,
                 };
+                self.plain.clear();
                 self.heading = Some((level, self.html.len()));
             }
             Tag::CodeBlock(kind) => {
@@ -234,7 +269,18 @@ impl<'d> Body<'d> {
             Tag::Item => self.html += "<li>",
             Tag::BlockQuote(_) => self.html += "<blockquote>\n",
             Tag::Emphasis => self.html += "<em>",
-            Tag::Strong => self.html += "<strong>",
+            Tag::Strong => {
+                self.strong = self.html.len();
+                self.html += "<strong>";
+            }
+            Tag::FootnoteDefinition(label) => {
+                let number = self.note(&label);
+                self.ids.push(format!("note-{number}"));
+                let _ = write!(
+                    self.html,
+                    "<aside class=\"note\" id=\"note-{number}\"><a href=\"#note-{number}-mark\">{number}</a>\n"
+                );
+            }
             Tag::Table(alignments) => {
                 self.alignments = alignments;
                 self.table = self.html.len();
@@ -269,8 +315,9 @@ impl<'d> Body<'d> {
             Tag::Image { dest_url, .. } => self.image = Some((dest_url.to_string(), String::new())),
             Tag::Link { dest_url, .. } => {
                 // Only inside the page: nothing in a package leads elsewhere.
-                let target = dest_url.strip_prefix('#').map(escaped).unwrap_or_default();
-                let _ = write!(self.html, "<a href=\"#{target}\">");
+                let target = dest_url.strip_prefix('#').unwrap_or_default();
+                self.links.extend(Some(target.to_owned()).filter(|target| !target.is_empty()));
+                let _ = write!(self.html, "<a href=\"#{}\">", escaped(target));
             }
             _ => {}
         }
@@ -289,7 +336,8 @@ impl<'d> Body<'d> {
             TagEnd::Item => self.html += "</li>\n",
             TagEnd::BlockQuote(_) => self.html += "</blockquote>\n",
             TagEnd::Emphasis => self.html += "</em>",
-            TagEnd::Strong => self.html += "</strong>",
+            TagEnd::Strong => self.end_strong(),
+            TagEnd::FootnoteDefinition => self.html += "</aside>\n",
             TagEnd::Table => {
                 self.html += "</tbody>\n</table>\n</div>\n";
                 if self.rows <= TOGETHER {
@@ -327,7 +375,7 @@ impl<'d> Body<'d> {
     fn end_heading(&mut self) {
         let Some((level, start)) = self.heading.take() else { return };
         let title = self.html.split_off(start);
-        let id = self.id(&title);
+        let id = self.id();
         let at = self.html.len();
         let _ = writeln!(self.html, "<h{level} id=\"{id}\">{title}</h{level}>");
         if level < 3 {
@@ -335,23 +383,23 @@ impl<'d> Body<'d> {
         }
     }
 
-    /// An id from a heading, unique in the page.
-    fn id(&mut self, title: &str) -> String {
-        let mut base = String::new();
-        let mut in_tag = false;
-        for c in title.chars() {
-            match c {
-                '<' => in_tag = true,
-                '>' => in_tag = false,
-                _ if in_tag => {}
-                c if c.is_alphanumeric() => base.extend(c.to_lowercase()),
-                _ if !base.ends_with('-') && !base.is_empty() => base.push('-'),
-                _ => {}
-            }
-        }
-        let base = format!("s-{}", base.trim_end_matches('-'));
+    /// Outcomes get a mark of their own, so that nothing hangs on colour alone.
+    fn end_strong(&mut self) {
+        let class = match &self.html[self.strong + "<strong>".len()..] {
+            "satisfied" => " class=\"outcome satisfied\"",
+            "not satisfied" => " class=\"outcome unsatisfied\"",
+            "deferred" => " class=\"outcome deferred\"",
+            _ => "",
+        };
+        self.html.insert_str(self.strong + "<strong".len(), class);
+        self.html += "</strong>";
+    }
+
+    /// The id of the present heading, unique in the page as the usual git hosts make it.
+    fn id(&mut self) -> String {
+        let base = anchor(&self.plain);
         let mut id = base.clone();
-        let mut count = 2;
+        let mut count = 1;
         while self.ids.contains(&id) {
             id = format!("{base}-{count}");
             count += 1;
@@ -371,10 +419,14 @@ impl<'d> Body<'d> {
             self.html += &symbols(&description);
             return;
         };
+        // A drawing placed again, as narrative may, has no id of its own.
+        let id = format!("figure-{}", figure.id);
+        let again = self.ids.contains(&id);
+        let named = if again { String::new() } else { format!(" id=\"{}\"", escaped(&id)) };
+        self.ids.push(id);
         let _ = write!(
             self.html,
-            "<figure id=\"figure-{}\">\n{}\n<figcaption>{}</figcaption>\n</figure>\n",
-            escaped(&figure.id),
+            "<figure{named}>\n{}\n<figcaption>{}</figcaption>\n</figure>\n",
             figure.svg.trim(),
             symbols(&description)
         );

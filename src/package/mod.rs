@@ -7,12 +7,17 @@
 //! - The notice of responsibility and the cautions are added after rendering: no template turns them off.
 //! - The page loads nothing from elsewhere and runs no script; its content security policy says so.
 
+mod anchor;
 mod cautions;
 mod context;
 mod html;
+mod links;
+mod look_up;
 mod markdown;
 mod math;
+mod narrative;
 mod number;
+mod steps;
 mod templates;
 
 use std::collections::BTreeMap;
@@ -26,7 +31,7 @@ use crate::record::Record;
 pub type Package = BTreeMap<String, Vec<u8>>;
 
 /// Chapters in order: template, and whether its heading is numbered.
-const CHAPTERS: [(&str, bool); 9] = [
+const CHAPTERS: [(&str, bool); 10] = [
     ("cover.md", false),
     ("summary.md", true),
     ("basis.md", true),
@@ -34,6 +39,7 @@ const CHAPTERS: [(&str, bool); 9] = [
     ("actions.md", true),
     ("combinations.md", true),
     ("effects.md", true),
+    ("checks.md", true),
     ("self-check.md", true),
     ("deferred.md", true),
 ];
@@ -47,8 +53,14 @@ const APPENDIX: &str = "appendix.md";
 pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagnostic>> {
     let mut drawings = vec![method()];
     drawings.extend(figures(record));
-    let markdown = chapters(record, sources, &drawings).map_err(|problem| vec![problem])?;
-    let page = html::page(record, &markdown, &drawings);
+    let markdown = chapters(record, sources, &drawings)?;
+    let (page, missing) = html::page(record, &markdown, &drawings);
+    if !missing.is_empty() {
+        let problem = |id: &String| {
+            Diagnostic::error("unknown-link", format!("a link leads to `#{id}`, which is not there"))
+        };
+        return Err(missing.iter().map(problem).collect());
+    }
     let mut package = Package::new();
     package.insert("package.md".to_owned(), markdown.into_bytes());
     package.insert("package.html".to_owned(), page.into_bytes());
@@ -59,20 +71,50 @@ pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagno
     Ok(package)
 }
 
-/// The Markdown of all chapters, numbered.
-fn chapters(record: &Record, sources: &Sources, drawings: &[Figure]) -> Result<String, Diagnostic> {
+/// The Markdown of all chapters, numbered, links led to their places.
+fn chapters(
+    record: &Record,
+    sources: &Sources,
+    drawings: &[Figure],
+) -> Result<String, Vec<Diagnostic>> {
     let context = context::context(record, sources, drawings);
     let renderer = templates::Renderer::new(record, sources, &context);
+    let ids = drawings.iter().map(|figure| figure.id.as_str());
+    let mut targets = links::Targets::new(record, ids);
+    let names: Vec<&str> = CHAPTERS
+        .iter()
+        .map(|(template, _)| *template)
+        .chain([APPENDIX])
+        .map(|template| template.trim_end_matches(".md"))
+        .chain(record.narrative.iter().map(|narrative| narrative.file.as_str()))
+        .collect();
+    let mut problems = targets.problems(sources, &names);
     let mut numbering = number::Numbering::default();
     let mut out = String::new();
-    for (template, numbered) in CHAPTERS {
-        out += &numbering.chapter(&renderer.render(template)?, numbered);
+    let mut add = |out: &mut String, name: &str, template: &str, numbered: bool| {
+        match renderer.render(template) {
+            Ok(text) => {
+                let chapter = numbering.chapter(&text, numbered);
+                if let Some(heading) = chapter.lines().find_map(|line| line.strip_prefix("# ")) {
+                    targets.chapter(name, heading);
+                }
+                *out += &chapter;
+            }
+            Err(problem) => problems.push(problem),
+        }
         match template {
-            "cover.md" => out += &numbering.chapter(cautions::NOTICE, false),
-            "deferred.md" => out += &numbering.continued(cautions::CAUTIONS),
+            "cover.md" => *out += &numbering.chapter(cautions::NOTICE, false),
+            "deferred.md" => *out += &numbering.continued(cautions::CAUTIONS),
             _ => {}
         }
+    };
+    for (template, numbered) in CHAPTERS {
+        let name = template.trim_end_matches(".md");
+        add(&mut out, name, template, numbered);
+        for narrative in record.narrative.iter().filter(|narrative| narrative.after == name) {
+            add(&mut out, &narrative.file, &narrative.file, true);
+        }
     }
-    out += &numbering.chapter(&renderer.render(APPENDIX)?, true);
-    Ok(out)
+    add(&mut out, "appendix", APPENDIX, true);
+    if problems.is_empty() { Ok(targets.resolved(&out)) } else { Err(problems) }
 }

@@ -5,19 +5,19 @@
 
 use std::collections::BTreeMap;
 use std::error::Error as _;
+use std::ops::Range;
 use std::sync::Arc;
 
 use minijinja::syntax::SyntaxConfig;
 use minijinja::value::{Kwargs, Serde, ValueKind};
 use minijinja::{AutoEscape, Environment, Error, ErrorKind, State, UndefinedBehavior, Value};
 
-use super::context::{Context, Quantity, component_kind};
-use super::markdown;
+use super::context::Context;
+use super::{look_up, markdown, narrative};
 use crate::diagnostic::{Diagnostic, Place};
 use crate::files::Sources;
-use crate::model::Effect;
-use crate::quantity::{Kind, Printer};
-use crate::record::{ExtremesRecord, Map, Record};
+use crate::quantity::{Dimension, Kind, Printer, Unit, parse_unit};
+use crate::record::Record;
 
 /// Instructions (and bytes) that one chapter may cost. The largest demo needs about a hundredth.
 const FUEL: u64 = 50_000_000;
@@ -30,7 +30,7 @@ macro_rules! built_in {
 }
 
 /// Templates that come with the program.
-const BUILT_IN: [(&str, &str); 12] = built_in![
+const BUILT_IN: [(&str, &str); 14] = built_in![
     "cover.md",
     "summary.md",
     "basis.md",
@@ -40,6 +40,8 @@ const BUILT_IN: [(&str, &str); 12] = built_in![
     "combinations.md",
     "effects.md",
     "governing.md",
+    "checks.md",
+    "block.md",
     "self-check.md",
     "deferred.md",
     "appendix.md",
@@ -51,6 +53,8 @@ pub(super) struct Renderer<'r> {
     context: Value,
     /// Templates of the project, by name.
     own: BTreeMap<String, String>,
+    /// Narrative files as read, by path.
+    narrative: BTreeMap<String, String>,
 }
 
 impl<'r> Renderer<'r> {
@@ -72,14 +76,25 @@ impl<'r> Renderer<'r> {
         environment.set_syntax(syntax.expect("only white space differs from the usual syntax"));
         environment.set_auto_escape_callback(|_| AutoEscape::Custom("markdown".into()));
         environment.set_formatter(format);
-        let templates = own.clone();
+        let mut templates = own.clone();
+        let (files, blocks) = narrative::templates(record, sources);
+        templates.extend(files);
         environment.set_loader(move |name| {
             let built_in = || BUILT_IN.iter().find(|(own, _)| *own == name).map(|(_, text)| *text);
             Ok(templates.get(name).map(String::as_str).or_else(built_in).map(str::to_owned))
         });
         add_printing(&mut environment, record.model.units.printer());
-        add_look_up(&mut environment, record);
-        Self { environment, context: Value::from(Serde(context)), own }
+        look_up::add(&mut environment, record, &context.figure_captions());
+        let blocks: Vec<Value> = blocks.iter().map(|block| Value::from(Serde(block))).collect();
+        environment.add_function("block", move |state: &State<'_, '_>, number: usize| {
+            let block = blocks.get(number).ok_or_else(|| no_block(number))?;
+            let text = state.env().get_template("block.md")?.render(block)?;
+            Ok::<Value, Error>(Value::from_safe_string(text))
+        });
+        let of = |file: &String| Some((file.clone(), sources.text(file)?.to_owned()));
+        let narrative = record.narrative.iter().filter_map(|narrative| of(&narrative.file));
+        let narrative = narrative.collect();
+        Self { environment, context: Value::from(Serde(context)), own, narrative }
     }
 
     /// The text of a chapter.
@@ -104,9 +119,31 @@ impl<'r> Renderer<'r> {
         if self.own.contains_key(file) {
             let range = deepest.range().unwrap_or(0..0);
             problem = problem.at(Place { file: format!("templates/{file}"), range });
+        } else if let Some(text) = self.narrative.get(file) {
+            problem = Diagnostic::error("narrative", detail);
+            let range = deepest.line().map_or(0..0, |line| line_of(text, line));
+            problem = problem.at(Place { file: file.to_owned(), range });
         }
         problem
     }
+}
+
+/// Bytes of a line counted from 1, without the blanks at its ends. Cutting blocks out of the narrative leaves
+/// its lines where they were.
+fn line_of(text: &str, number: usize) -> Range<usize> {
+    let mut at = 0;
+    for (index, line) in text.split_inclusive('\n').enumerate() {
+        if index + 1 == number {
+            let start = at + line.len() - line.trim_start().len();
+            return start..(at + line.trim_end().len()).max(start);
+        }
+        at += line.len();
+    }
+    text.len()..text.len()
+}
+
+fn no_block(number: usize) -> Error {
+    Error::new(ErrorKind::InvalidOperation, format!("there is no block {number}"))
 }
 
 /// Text is escaped for Markdown; a quantity must go through its filter.
@@ -135,79 +172,81 @@ fn format(
 fn add_printing(environment: &mut Environment<'_>, printer: Printer) {
     let printer = Arc::new(printer);
     let own = Arc::clone(&printer);
-    environment.add_filter("quantity", move |value: &Value| print(&own, value, Printer::with_unit));
+    environment.add_filter("quantity", move |value: &Value, options: Kwargs| {
+        print(&own, value, true, &options)
+    });
     let own = Arc::clone(&printer);
-    environment.add_filter("number", move |value: &Value| print(&own, value, Printer::number));
+    environment.add_filter("number", move |value: &Value, options: Kwargs| {
+        print(&own, value, false, &options)
+    });
+    environment.add_filter("display", display);
+    // Blanks would end the target of a link.
+    environment.add_filter("link", |text: String| Value::from_safe_string(text.replace(' ', "%20")));
     environment.add_function("unit", move |kind: String| -> Result<String, Error> {
         let kind = Kind::from_name(&kind).ok_or_else(|| no_kind(&kind))?;
         Ok(printer.units.get(kind).label.clone())
     });
 }
 
+/// LaTeX of a step as a formula of its own.
+fn display(step: &Value) -> Result<Value, Error> {
+    let latex = step.get_attr("latex")?;
+    let latex = latex.as_str().unwrap_or_default();
+    Ok(Value::from_safe_string(format!("$$\n{latex}\n$$")))
+}
+
+/// Prints a value with the digits and in the unit asked for, else as the project prints its kind.
 fn print(
     printer: &Printer,
     value: &Value,
-    how: fn(&Printer, Kind, f64) -> String,
+    with_unit: bool,
+    options: &Kwargs,
 ) -> Result<String, Error> {
+    let digits: Option<usize> = options.get("digits")?;
+    let unit: Option<String> = options.get("unit")?;
+    options.assert_all_used()?;
     if value.is_none() {
         return Ok(String::new());
     }
+    let number = f64::try_from(value.get_attr("value")?)?;
+    let given = value.get_attr("unit")?;
     let kind = value.get_attr("kind")?;
     let name = kind.as_str().unwrap_or_default();
-    let kind = Kind::from_name(name).ok_or_else(|| no_kind(name))?;
-    let number = f64::try_from(value.get_attr("value")?)?;
-    Ok(how(printer, kind, number))
+    let own = match (given.as_str(), Kind::from_name(name)) {
+        (Some(label), _) => parse_unit(label).unwrap_or_else(|_| plain()),
+        (None, Some(kind)) => printer.units.get(kind).clone(),
+        (None, None) => return Err(no_kind(name)),
+    };
+    let unit = match unit {
+        None => own,
+        Some(label) => {
+            let asked = parse_unit(&label)
+                .map_err(|error| Error::new(ErrorKind::InvalidOperation, error.message))?;
+            let plain_angle = |dimension: Dimension| Dimension { angle: 0, ..dimension };
+            if plain_angle(asked.dimension) != plain_angle(own.dimension) {
+                let message = format!(
+                    "`{label}` is not a unit of {}",
+                    own.dimension.name_with_article()
+                );
+                return Err(Error::new(ErrorKind::InvalidOperation, message));
+            }
+            asked
+        }
+    };
+    let significant = digits.unwrap_or(printer.significant).clamp(1, 12);
+    let number = crate::quantity::print(number / unit.factor, significant);
+    Ok(match unit.label.as_str() {
+        _ if !with_unit => number,
+        "" => number,
+        "°" => number + "°",
+        label => format!("{number}\u{a0}{label}"),
+    })
+}
+
+fn plain() -> Unit {
+    Unit { label: String::new(), factor: 1.0, dimension: Dimension::NONE }
 }
 
 fn no_kind(name: &str) -> Error {
     Error::new(ErrorKind::InvalidOperation, format!("`{name}` is not a kind of quantity"))
-}
-
-/// `effect('B1', 'M_y', 'max', purpose='strength')` and `reaction('A', 'Z', 'max', purpose=…)`.
-fn add_look_up(environment: &mut Environment<'_>, record: &Record) {
-    let members: Map<Map<Map<ExtremesRecord>>> = record
-        .results
-        .members
-        .iter()
-        .map(|(name, result)| (name.clone(), result.governing.clone()))
-        .collect();
-    environment.add_function(
-        "effect",
-        move |member: String, effect: String, which: String, options: Kwargs| {
-            let kind = Effect::from_name(&effect).map(Effect::kind);
-            let kind = kind.ok_or_else(|| missing("effect", &effect))?;
-            let purposes = members.get(&member).ok_or_else(|| missing("member", &member))?;
-            let purpose: String = options.get("purpose")?;
-            options.assert_all_used()?;
-            let effects = purposes.get(&purpose).ok_or_else(|| missing("purpose", &purpose))?;
-            let extremes = effects.get(&effect).ok_or_else(|| missing("effect", &effect))?;
-            value(kind, extremes, &which)
-        },
-    );
-    let reactions = record.results.reactions.clone();
-    environment.add_function(
-        "reaction",
-        move |node: String, component: String, which: String, options: Kwargs| {
-            let purpose: String = options.get("purpose")?;
-            options.assert_all_used()?;
-            let nodes = reactions.get(&purpose).ok_or_else(|| missing("purpose", &purpose))?;
-            let components = nodes.get(&node).ok_or_else(|| missing("supported node", &node))?;
-            let extremes =
-                components.get(&component).ok_or_else(|| missing("component", &component))?;
-            value(component_kind(&component), extremes, &which)
-        },
-    );
-}
-
-fn value(kind: Kind, extremes: &ExtremesRecord, which: &str) -> Result<Value, Error> {
-    let extreme = match which {
-        "max" => &extremes.max,
-        "min" => &extremes.min,
-        other => return Err(missing("extreme", other)),
-    };
-    Ok(Value::from(Serde(Quantity::new(kind, extreme.value))))
-}
-
-fn missing(what: &str, name: &str) -> Error {
-    Error::new(ErrorKind::InvalidOperation, format!("no {what} named `{name}`"))
 }

@@ -23,6 +23,7 @@ pub(super) fn build(
     checked: &Checked,
     fingerprint: &str,
 ) -> Record {
+    let (checks, workings) = outcomes::outcomes(model, checked);
     let mut record = Record {
         format: FORMAT,
         program: ProgramRecord {
@@ -40,8 +41,8 @@ pub(super) fn build(
             members: results::members(model, solution, governing),
             reactions: results::reactions(model, governing),
         },
-        checks: outcomes::checks(model, checked),
-        workings: outcomes::workings(model, checked),
+        checks,
+        workings,
         narrative: outcomes::narrative(model),
         registers: Registers::default(),
         self_check: self_check::self_check(model, self_check),

@@ -278,6 +278,9 @@ pub struct PackageRecord {
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct ValueRecord {
     pub value: f64,
+    /// The unit in which it prints.
+    #[serde(default)]
+    pub unit: String,
     pub written: String,
     pub source: Option<String>,
 }

@@ -12,11 +12,15 @@
 //! | `combinations` | factors matrix in blocks of at most eight cases |
 //! | `members` | drawings and governing values of each member |
 //! | `reactions` | by case and governing, with components acting together |
+//! | `checks`, `checks_method` | checks by id: the worst place in full, all others in a line each |
+//! | `checks_summary`, `checks_deferred`, `cautions` | the worst check of each member; what is deferred; cautions of sheets |
+//! | `figures`, `method_figure` | every drawing with its caption |
 //! | `registers`, `self_check`, `sources` | open items, checks of the run, the project file as read |
 //!
 //! Every number is a [`Quantity`]; templates print it with the filters `quantity` and `number`.
 
 mod actions;
+mod checks;
 mod input;
 mod results;
 
@@ -27,6 +31,7 @@ use crate::files::Sources;
 use crate::quantity::Kind;
 use crate::record::{BasisRecord, ProgramRecord, ProjectRecord, Record, Registers, RevisionRecord};
 
+pub(super) use checks::rank;
 pub(super) use results::component_kind;
 
 /// A value with the name of its kind, printed only by the filters.
@@ -63,9 +68,16 @@ pub(super) struct Context<'r> {
     combinations: actions::Combinations<'r>,
     members: Vec<results::MemberView<'r>>,
     reactions: results::Reactions<'r>,
+    checks: Vec<checks::CheckView<'r>>,
+    checks_method: &'static str,
+    checks_summary: Vec<checks::SummaryRow<'r>>,
+    checks_deferred: Vec<checks::DeferredCheck<'r>>,
+    cautions: Vec<checks::Caution<'r>>,
     registers: &'r Registers,
     self_check: results::SelfCheckView<'r>,
     method_figure: FigureRef<'r>,
+    /// Every drawing, the method's first.
+    figures: Vec<FigureRef<'r>>,
     sources: Vec<SourceFile<'r>>,
 }
 
@@ -88,6 +100,13 @@ struct SourceFile<'r> {
     path: &'r str,
     text: &'r str,
     fence: String,
+}
+
+impl Context<'_> {
+    /// Every drawing: id and caption.
+    pub(super) fn figure_captions(&self) -> Vec<(String, String)> {
+        self.figures.iter().map(|figure| (figure.id.to_owned(), figure.caption.to_owned())).collect()
+    }
 }
 
 /// Builds the context.
@@ -123,9 +142,15 @@ pub(super) fn context<'r>(
         combinations: actions::combinations(record),
         members: results::members(record, drawings),
         reactions: results::reactions(record),
+        checks: checks::checks(record),
+        checks_method: crate::checks::METHOD,
+        checks_summary: checks::summary(record),
+        checks_deferred: checks::deferred(record),
+        cautions: checks::cautions(record),
         registers: &record.registers,
         self_check: results::self_check(record),
         method_figure: FigureRef::from(&drawings[0]),
+        figures: drawings.iter().map(FigureRef::from).collect(),
         sources: sources
             .files
             .keys()

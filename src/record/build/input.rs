@@ -1,12 +1,13 @@
 //! The resolved input as the Record holds it.
 
 use super::loads;
+use super::steps::usual_unit;
 use crate::analysis::{Governing, SelfCheck, Solution};
 use crate::model::{
     Draw, EFFECTS, Frame, Freedom, HeldAlong, Member, Model, MomentSide, Paper, Release, Structure,
     Support,
 };
-use crate::quantity::STANDARD_GRAVITY;
+use crate::quantity::{Quantity, STANDARD_GRAVITY};
 use crate::record::{
     AnalysisRecord, AxialOnlyRecord, FreedomRecord, FreedomWord, HeldRecord, HingeRecord,
     LayerRecord, Map, MaterialRecord, MemberRecord, ModelRecord, NodeRecord, PackageRecord,
@@ -53,6 +54,10 @@ pub(super) fn model(
             .map(|value| {
                 let record = ValueRecord {
                     value: value.value,
+                    unit: usual_unit(
+                        &model.units,
+                        Quantity { value: value.value, dimension: value.dimension },
+                    ),
                     written: value.written.clone(),
                     source: value.source.clone(),
                 };

@@ -3,45 +3,55 @@
 use super::steps::Bindings;
 use crate::checks::{CheckResult, Checked, LineResult};
 use crate::model::{
-    Agreement, Check, DeflectionFrom, Model, NarrativeBlock, On, Working, WorkingLine,
+    Agreement, Check, DeflectionFrom, Model, NarrativeBlock, On, WorkingLine,
 };
 use crate::record::{
     CheckRecord, NarrativeBlockRecord, NarrativeRecord, NextRecord, OnRecord, WorkingLineRecord,
     WorkingRecord,
 };
 
-pub(super) fn checks(model: &Model, checked: &Checked) -> Vec<CheckRecord> {
-    let mut out: Vec<CheckRecord> =
+/// Checks and working blocks; the agreements of the blocks stand behind the checks.
+pub(super) fn outcomes(model: &Model, checked: &Checked) -> (Vec<CheckRecord>, Vec<WorkingRecord>) {
+    let mut checks: Vec<CheckRecord> =
         checked.checks.iter().map(|result| check(model, result)).collect();
+    let mut workings: Vec<WorkingRecord> = Vec::new();
+    // Blocks of one file go on from one another.
+    let mut printed = Vec::new();
     for (working, results) in model.workings.iter().zip(&checked.workings) {
-        let bindings = bindings(model, working);
+        if workings.last().is_none_or(|before| before.file != working.file) {
+            printed.clear();
+        }
+        let mut bindings = Bindings { units: &model.units, bound: &working.bound, printed };
+        let mut lines = Vec::new();
         for (line, result) in working.lines.iter().zip(results) {
-            if let (WorkingLine::Agreement(agreement), Some(result)) = (line, result) {
-                out.extend(self::agreement(agreement, result, &working.file, &bindings));
+            match (line, result) {
+                (WorkingLine::Remark(text), _) => lines.push(WorkingLineRecord::Remark(text.clone())),
+                (WorkingLine::Step(step), Some(LineResult::Step(value))) => {
+                    lines.push(WorkingLineRecord::Step(bindings.next(step, value)));
+                }
+                (WorkingLine::Agreement(agreement), Some(result)) => {
+                    checks.extend(self::agreement(agreement, result, &working.file, &bindings));
+                    lines.push(WorkingLineRecord::Agreement(agreement.id.clone()));
+                }
+                (WorkingLine::Step(_) | WorkingLine::Agreement(_), _) => {}
             }
         }
+        printed = bindings.printed;
+        workings.push(WorkingRecord { file: working.file.clone(), lines });
     }
-    out
+    (checks, workings)
 }
 
 fn check(model: &Model, result: &CheckResult) -> CheckRecord {
     let check = &model.checks[result.check];
     let target = &check.targets[result.target];
-    let stated = check.steps.iter().map(|step| step.formula.formula.unit.as_ref());
-    let bindings = Bindings {
-        units: &model.units,
-        bound: &target.bound,
-        stated: stated.map(|unit| unit.map(|unit| unit.label.clone())).collect(),
-    };
+    let mut bindings =
+        Bindings { units: &model.units, bound: &target.bound, printed: Vec::new() };
     let name = |index: usize| model.combinations[index].name.clone();
     let governing = result.governing.as_ref();
     let steps = governing.map_or_else(Vec::new, |governing| {
         let both = check.steps.iter().zip(&governing.steps);
-        both.map(|(step, value)| {
-            let named = (step.symbol.as_str(), &step.formula);
-            bindings.step(named, value, step.meaning.as_ref(), step.clause.as_ref())
-        })
-        .collect()
+        both.map(|(step, value)| bindings.next(step, value)).collect()
     });
     let validity = governing.map_or_else(Vec::new, |governing| {
         let both = check.validity.iter().zip(&governing.validity);
@@ -118,20 +128,6 @@ fn on(model: &Model, on: On) -> OnRecord {
     }
 }
 
-/// Units stated for the steps of a working's file, up to and with the block.
-fn bindings<'m>(model: &'m Model, working: &'m Working) -> Bindings<'m> {
-    let mut stated = Vec::new();
-    for other in model.workings.iter().filter(|other| other.file == working.file) {
-        for line in &other.lines {
-            if let WorkingLine::Step(step) = line {
-                let unit = step.formula.formula.unit.as_ref();
-                stated.push(unit.map(|unit| unit.label.clone()));
-            }
-        }
-    }
-    Bindings { units: &model.units, bound: &working.bound, stated }
-}
-
 fn agreement(
     agreement: &Agreement,
     result: &LineResult,
@@ -169,34 +165,6 @@ fn agreement(
         further: 0,
         cautions: Vec::new(),
     })
-}
-
-pub(super) fn workings(model: &Model, checked: &Checked) -> Vec<WorkingRecord> {
-    model
-        .workings
-        .iter()
-        .zip(&checked.workings)
-        .map(|(working, results)| {
-            let bindings = bindings(model, working);
-            let line = |(line, result): (&WorkingLine, &Option<LineResult>)| match (line, result) {
-                (WorkingLine::Remark(text), _) => Some(WorkingLineRecord::Remark(text.clone())),
-                (WorkingLine::Step(step), Some(LineResult::Step(value))) => {
-                    let named = (step.symbol.as_str(), &step.formula);
-                    let step =
-                        bindings.step(named, value, step.meaning.as_ref(), step.clause.as_ref());
-                    Some(WorkingLineRecord::Step(step))
-                }
-                (WorkingLine::Agreement(agreement), _) => {
-                    Some(WorkingLineRecord::Agreement(agreement.id.clone()))
-                }
-                (WorkingLine::Step(_), _) => None,
-            };
-            WorkingRecord {
-                file: working.file.clone(),
-                lines: working.lines.iter().zip(results).filter_map(line).collect(),
-            }
-        })
-        .collect()
 }
 
 pub(super) fn narrative(model: &Model) -> Vec<NarrativeRecord> {

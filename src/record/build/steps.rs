@@ -2,7 +2,7 @@
 
 use crate::calc::Value;
 use crate::checks::StepValue;
-use crate::model::{Bound, Placed, Slot};
+use crate::model::{Bound, Placed, Slot, Step};
 use crate::quantity::{Dimension, Kind, Quantity, System, Units};
 use crate::record::{StepRecord, StepValueRecord};
 
@@ -10,12 +10,23 @@ use crate::record::{StepRecord, StepValueRecord};
 pub(super) struct Bindings<'b> {
     pub(super) units: &'b Units,
     pub(super) bound: &'b [Option<Bound>],
-    /// By step: the unit stated for it.
-    pub(super) stated: Vec<Option<String>>,
+    /// By step so far: the unit in which its value prints.
+    pub(super) printed: Vec<Option<String>>,
 }
 
 impl Bindings<'_> {
-    /// A step with everything it read.
+    /// The next step; those after it print its value in the same unit.
+    pub(super) fn next(&mut self, step: &Step, value: &StepValue) -> StepRecord {
+        let named = (step.symbol.as_str(), &step.formula);
+        let record = self.step(named, value, step.meaning.as_ref(), step.clause.as_ref());
+        self.printed.push(match &record.value {
+            StepValueRecord::Number(_, unit) => Some(unit.clone()),
+            StepValueRecord::Truth(_) | StepValueRecord::Word(_) => None,
+        });
+        record
+    }
+
+    /// A formula with everything it read.
     pub(super) fn step(
         &self,
         (symbol, placed): (&str, &Placed),
@@ -53,7 +64,7 @@ impl Bindings<'_> {
 
     fn reading(&self, slot: &Slot, value: &Value) -> StepValueRecord {
         match slot {
-            Slot::Step(index) => self.value(value, self.stated.get(*index).cloned().flatten(), None),
+            Slot::Step(index) => self.value(value, self.printed.get(*index).cloned().flatten(), None),
             Slot::Reading(index) => {
                 let kind = self.bound.get(*index).and_then(|bound| bound.as_ref()?.kind);
                 self.value(value, None, kind)
@@ -75,8 +86,11 @@ impl Bindings<'_> {
     }
 }
 
+/// Pa: forces per area below this are loads on areas or pressures on the ground, above it stresses.
+const FLOOR_LOADS: f64 = 1e6;
+
 /// The unit of a value that only its dimension tells: of lengths, areas and volumes by their size.
-fn usual_unit(units: &Units, quantity: Quantity) -> String {
+pub(super) fn usual_unit(units: &Units, quantity: Quantity) -> String {
     let (metre, foot) = (1.0, 0.3048);
     let whole = if units.system == System::Si { metre } else { foot };
     let large = |power: i32| quantity.value.abs() >= libm::pow(whole, f64::from(power)) * 0.2;
@@ -89,6 +103,8 @@ fn usual_unit(units: &Units, quantity: Quantity) -> String {
         Dimension::AREA => own(Kind::Area),
         Dimension::VOLUME if large(3) => format!("{base}³"),
         Dimension::VOLUME => own(Kind::SectionModulus),
+        // What a floor carries, or what a section does.
+        Dimension::PRESSURE if quantity.value.abs() < FLOOR_LOADS => own(Kind::AreaLoad),
         dimension => {
             let kind = [
                 Kind::Number,
@@ -102,6 +118,8 @@ fn usual_unit(units: &Units, quantity: Quantity) -> String {
                 Kind::WeightDensity,
                 Kind::Temperature,
                 Kind::Expansion,
+                Kind::Angle,
+                Kind::RotationSpring,
             ]
             .into_iter()
             .find(|kind| kind.dimension() == dimension);
