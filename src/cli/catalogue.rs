@@ -1,4 +1,4 @@
-//! `catalogue`: finds sections and materials, prints their properties and source.
+//! `catalogue`: finds sections, materials and check sheets, prints their properties and source.
 //!
 //! Returns what to print; a name that is not found is a problem of the command line.
 
@@ -6,9 +6,10 @@ use clap::{Args, ValueEnum};
 use serde_json::{Map, Value, json};
 
 use crate::catalogue::{
-    self, CatalogueMaterial, CatalogueSection, Entry, Family, families, find, material,
+    self, CatalogueMaterial, CatalogueSection, Entry, Family, Sheet, families, find, material,
     material_tables, section,
 };
+use super::sheets;
 use crate::diagnostic::Diagnostic;
 use crate::quantity::{Kind, Printer, System, Units, parse_as, parse_unit};
 
@@ -18,7 +19,8 @@ const SIGNIFICANT: usize = 4;
 /// Arguments of `catalogue`.
 #[derive(Args, Clone, Debug)]
 pub struct CatalogueArgs {
-    /// A name (`IPE 300`, `S275`), a family (`IPE`) or words to find; none lists the tables
+    /// A name (`IPE 300`, `S275`, `bending stress`), a family (`IPE`), `checks` or words to find; none lists
+    /// what there is
     pub words: Vec<String>,
     /// Units to print in
     #[arg(long, value_enum, default_value_t = UnitsArg::Si)]
@@ -44,6 +46,7 @@ enum Found {
     Family(&'static Family),
     Section(Box<CatalogueSection>),
     Material(Box<CatalogueMaterial>),
+    Sheets(Vec<&'static Sheet>),
     Entries(Vec<Entry>),
 }
 
@@ -76,6 +79,10 @@ pub fn run(args: &CatalogueArgs) -> Result<String, Diagnostic> {
         }
         Found::Section(section) => one_section(section, &printer),
         Found::Material(material) => one_material(material, &printer),
+        Found::Sheets(found) => match &found[..] {
+            [one] => sheets::in_full(one),
+            several => columns(&sheets::rows(several)),
+        },
         Found::Entries(entries) => entry_list(entries, &printer),
     })
 }
@@ -85,6 +92,12 @@ fn look_up(words: &[String], thickness: Option<f64>) -> Result<Found, Diagnostic
         return Ok(Found::Tables);
     }
     let name = words.join(" ");
+    if let Some(sheet) = sheets::sheet(&name) {
+        return Ok(Found::Sheets(vec![sheet]));
+    }
+    if name.eq_ignore_ascii_case(sheets::ALL) {
+        return Ok(Found::Sheets(catalogue::sheets().iter().collect()));
+    }
     let is_name = |family: &&Family| family.name.eq_ignore_ascii_case(&words.concat());
     if let Some(family) = families().iter().find(is_name) {
         return Ok(Found::Family(family));
@@ -102,7 +115,9 @@ fn look_up(words: &[String], thickness: Option<f64>) -> Result<Found, Diagnostic
         Err(problem) => problem,
     };
     let entries = find(words);
+    let sheets = sheets::matching(words);
     match &entries[..] {
+        [] if !sheets.is_empty() => Ok(Found::Sheets(sheets)),
         [] => {
             let nearest: Vec<String> = no_section
                 .nearest
@@ -142,6 +157,8 @@ fn tables() -> String {
         })
         .collect();
     text.push_str(&format!("\nMaterials\n{}", columns(&rows)));
+    let all: Vec<&Sheet> = catalogue::sheets().iter().collect();
+    text.push_str(&format!("\nCheck sheets\n{}", columns(&sheets::rows(&all))));
     text
 }
 
@@ -291,6 +308,10 @@ fn as_json(found: &Found) -> Value {
                 "title": title,
                 "grades": grades,
             })).collect::<Vec<_>>(),
+            "checks": catalogue::sheets().iter().map(sheets::as_json).collect::<Vec<_>>(),
+        }),
+        Found::Sheets(found) => json!({
+            "checks": found.iter().map(|sheet| sheets::as_json(sheet)).collect::<Vec<_>>(),
         }),
         Found::Family(family) => json!({
             "sections": catalogue::family(family.name)

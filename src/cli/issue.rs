@@ -43,5 +43,16 @@ pub(super) fn run(arguments: &Arguments) -> Status {
         1 => anstream::eprintln!("1 open item stands on the first page"),
         _ => anstream::eprintln!("{open} open items stand on the first page"),
     }
+    let failing = |outcome: &str| {
+        solved.record.checks.iter().filter(|check| check.outcome == outcome).count()
+    };
+    match (failing("not satisfied"), failing("deferred")) {
+        (0, 0) => {}
+        (failing, 0) => anstream::eprintln!("checks not satisfied: {failing}"),
+        (0, deferred) => anstream::eprintln!("checks deferred: {deferred}"),
+        (failing, deferred) => {
+            anstream::eprintln!("checks not satisfied: {failing}, deferred: {deferred}");
+        }
+    }
     Status::Done
 }

@@ -10,6 +10,7 @@ mod issue;
 mod point;
 mod render;
 mod schema;
+mod sheets;
 mod shell;
 mod solve;
 mod start;
@@ -31,6 +32,8 @@ pub enum Status {
     CouldNot = 1,
     /// The command line or the project is wrong.
     Wrong = 2,
+    /// A check is not satisfied, or deferred without being named in `basis.deferred`.
+    NotSatisfied = 3,
 }
 
 /// Turns one YAML project file into a calculation package for beams and frames.
@@ -42,7 +45,7 @@ pub enum Status {
     long_about = "Turns one YAML project file into a calculation package for beams and frames that a checker can review.\n\n\
                   A package supports and does not replace the judgement of a licensed engineer; local codes and national annexes govern.",
     after_help = "Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); \
-                  2 the command line or the project is wrong.",
+                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred`.",
     propagate_version = true
 )]
 pub struct Arguments {
@@ -61,7 +64,7 @@ enum Command {
     Solve(solve::Arguments),
     /// Write the calculation package into the project's `package` folder
     Issue(issue::Arguments),
-    /// Find sections and materials, print their properties and source
+    /// Find sections, materials and check sheets, print their properties and source
     Catalogue(catalogue::CatalogueArgs),
     /// Print the JSON Schema of the project file, for editors
     Schema,

@@ -4,7 +4,7 @@ use super::table::{Align, Table};
 use super::{Project, Status, point, wrong};
 use crate::model::Effect;
 use crate::quantity::{Kind, Printer};
-use crate::record::{ExtremeRecord, ExtremesRecord, MemberResult, Record};
+use crate::record::{ExtremeRecord, ExtremesRecord, MemberResult, Record, printed_utilisation};
 
 #[derive(Debug, clap::Args)]
 pub(super) struct Arguments {
@@ -34,11 +34,11 @@ pub(super) fn run(arguments: &Arguments) -> Status {
     } else {
         anstream::print!("{}", summary(record));
     }
-    if record.self_check.satisfied {
-        return Status::Done;
+    if !record.self_check.satisfied {
+        anstream::eprintln!("the self-check is out of tolerance: do not use these values");
+        return Status::CouldNot;
     }
-    anstream::eprintln!("the self-check is out of tolerance: do not use these values");
-    Status::CouldNot
+    if record.is_settled() { Status::Done } else { Status::NotSatisfied }
 }
 
 /// What governs, the reactions, the self-check and what is open.
@@ -49,6 +49,7 @@ fn summary(record: &Record) -> String {
         out += &governing(record, &printer, name, member);
     }
     out += &reactions(record, &printer);
+    out += &checks(record, &printer);
     out += &combinations(record);
     out += "\nSelf-check\n  ";
     out += if record.self_check.satisfied {
@@ -146,6 +147,34 @@ fn reactions(record: &Record, printer: &Printer) -> String {
         }
     }
     format!("\nReactions, support on structure (Z up)\n{}", table.print())
+}
+
+fn checks(record: &Record, printer: &Printer) -> String {
+    if record.checks.is_empty() {
+        return String::new();
+    }
+    let at = format!("at {}", printer.units.get(Kind::Length).label);
+    let mut table = Table::new(&[
+        ("check", Align::Left),
+        ("on", Align::Left),
+        ("utilisation", Align::Right),
+        ("in", Align::Left),
+        (&at, Align::Right),
+        ("outcome", Align::Left),
+    ]);
+    for check in &record.checks {
+        let state = check.state.as_deref().unwrap_or_default();
+        let reason = check.reason.as_ref().map(|reason| format!(": {reason}")).unwrap_or_default();
+        table.row(vec![
+            check.id.clone(),
+            check.on_words(),
+            check.utilisation.map_or_else(|| "–".to_owned(), printed_utilisation),
+            record.combinations.get(state).map_or("", |c| c.number.as_str()).to_owned(),
+            check.x.map(|x| printer.number(Kind::Length, x)).unwrap_or_default(),
+            format!("{}{reason}", check.outcome),
+        ]);
+    }
+    format!("\nChecks\n{}", table.print())
 }
 
 fn combinations(record: &Record) -> String {

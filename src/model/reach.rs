@@ -202,7 +202,16 @@ impl Model {
         if let Some(value) = properties.dimensions.get(name) {
             return (Some(constant(Kind::SectionLength, *value)), None);
         }
-        if let Some((value, kind)) = material.strengths.get(name) {
+        // European and American tables write the same strength as f_y and F_y.
+        let other = match name {
+            "f_y" => "F_y",
+            "F_y" => "f_y",
+            "f_u" => "F_u",
+            "F_u" => "f_u",
+            other => other,
+        };
+        let strengths = &material.strengths;
+        if let Some((value, kind)) = strengths.get(name).or_else(|| strengths.get(other)) {
             return (Some(constant(*kind, *value)), None);
         }
         let has = |what: &str| format!("section `{}` has no known {what}", section.name);

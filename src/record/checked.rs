@@ -2,7 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::Map;
+use super::{Map, Record};
 use crate::model::Side;
 
 /// A check on one of its targets, or an agreement of a hand calculation.
@@ -166,6 +166,24 @@ impl CheckRecord {
             },
             _ => on.file.clone().unwrap_or_default(),
         }
+    }
+}
+
+impl Record {
+    /// A deferral of the project names this check.
+    #[must_use]
+    pub fn is_covered(&self, check: &CheckRecord) -> bool {
+        self.basis.deferred.iter().any(|deferral| deferral.checks.contains(&check.id))
+    }
+
+    /// Every check is satisfied, or deferred with a deferral of the project that names it.
+    #[must_use]
+    pub fn is_settled(&self) -> bool {
+        self.checks.iter().all(|check| match check.outcome.as_str() {
+            "satisfied" => true,
+            "deferred" => self.is_covered(check),
+            _ => false,
+        })
     }
 }
 

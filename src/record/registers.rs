@@ -126,9 +126,6 @@ fn compression(record: &Record) -> Vec<OpenItem> {
 
 /// Checks that are not satisfied, then those deferred that no deferral of the project covers.
 fn outcomes(record: &Record) -> Vec<OpenItem> {
-    let covered = |check: &CheckRecord| {
-        record.basis.deferred.iter().any(|deferral| deferral.checks.contains(&check.id))
-    };
     let what = |check: &CheckRecord| {
         let reason = check.reason.as_ref().map(|reason| format!(": {reason}")).unwrap_or_default();
         format!("{} ({}), {}{reason}", check.id, check.title, check.on_words())
@@ -144,7 +141,7 @@ fn outcomes(record: &Record) -> Vec<OpenItem> {
     let deferred = record
         .checks
         .iter()
-        .filter(|check| check.outcome == "deferred" && !covered(check))
+        .filter(|check| check.outcome == "deferred" && !record.is_covered(check))
         .map(|check| item("deferred", format!("Deferred: {}", what(check))));
     failing.chain(deferred).collect()
 }

@@ -85,6 +85,9 @@ impl Build {
             members: Vec::new(),
             cases: Vec::new(),
             combinations: Vec::new(),
+            checks: Vec::new(),
+            workings: Vec::new(),
+            narrative: Vec::new(),
         })
         .section(properties())
     }
