@@ -45,7 +45,6 @@ pub fn solve(sources: &Sources) -> Result<Solved, Vec<Diagnostic>> {
     let self_check = analysis::self_check(&model, &solution);
     let checked = checks::check(&model, &solution, &governing)?;
     let fingerprint = sources.fingerprint();
-    let record =
-        record::record(&model, &solution, &governing, &self_check, &checked, &fingerprint);
+    let record = record::record(&model, &solution, &governing, &self_check, &checked, &fingerprint);
     Ok(Solved { record, warnings })
 }

@@ -182,8 +182,8 @@ impl Run<'_> {
                     Binary::LessOrEqual => Ok(Value::Truth(a.value <= b.value)),
                     Binary::Greater => Ok(Value::Truth(a.value > b.value)),
                     Binary::GreaterOrEqual => Ok(Value::Truth(a.value >= b.value)),
-                    Binary::Equal => Ok(Value::Truth(a.value == b.value)),
-                    _ => Ok(Value::Truth(a.value != b.value)),
+                    Binary::Equal => Ok(Value::Truth(equal(a.value, b.value))),
+                    _ => Ok(Value::Truth(!equal(a.value, b.value))),
                 }
             }
         }
@@ -215,11 +215,13 @@ impl Run<'_> {
             Function::Sign => plain(if x.value == 0.0 { 0.0 } else { x.value.signum() }),
             Function::Sqrt => {
                 if x.value < 0.0 {
-                    return Err(CalcError::new("this is below zero: it has no root", first.range.clone()));
+                    return Err(CalcError::new(
+                        "this is below zero: it has no root",
+                        first.range.clone(),
+                    ));
                 }
                 let dimension = raised(x.dimension, 0.5).ok_or_else(|| {
-                    let message =
-                        format!("{} has no square root", x.dimension.name_with_article());
+                    let message = format!("{} has no square root", x.dimension.name_with_article());
                     CalcError::new(message, first.range.clone())
                 })?;
                 Quantity { value: libm::sqrt(x.value), dimension }
@@ -262,9 +264,8 @@ impl Run<'_> {
             }
             points.push(point);
         }
-        let between = points.windows(2).find(|pair| {
-            pair[0].0.value <= x.value && x.value <= pair[1].0.value
-        });
+        let between =
+            points.windows(2).find(|pair| pair[0].0.value <= x.value && x.value <= pair[1].0.value);
         let Some([low, high]) = between else {
             let message = "this lies outside the rows, and nothing is extrapolated";
             return Err(CalcError::new(message, at.range.clone()));
@@ -286,7 +287,7 @@ impl Run<'_> {
             let found = match (self.unrecorded(key)?, &wanted) {
                 (Value::Number(a), Value::Number(b)) => {
                     same(expr, "choose", &[(of, *b), (key, a)])?;
-                    a.value == b.value
+                    equal(a.value, b.value)
                 }
                 (Value::Word(a), Value::Word(b)) => a == *b,
                 (Value::Truth(a), Value::Truth(b)) => a == *b,
@@ -340,7 +341,8 @@ fn power(
     b: Quantity,
 ) -> Result<Value, CalcError> {
     if b.dimension != Dimension::NONE {
-        let message = format!("an exponent is a plain number, not {}", b.dimension.name_with_article());
+        let message =
+            format!("an exponent is a plain number, not {}", b.dimension.name_with_article());
         return Err(CalcError::new(message, right.range.clone()));
     }
     let dimension = raised(a.dimension, b.value).ok_or_else(|| {
@@ -355,7 +357,7 @@ fn power(
     if a.value == 0.0 && b.value < 0.0 {
         return Err(CalcError::new("this divides by zero", left.range.clone()));
     }
-    if a.value < 0.0 && libm::floor(b.value) != b.value {
+    if a.value < 0.0 && libm::fmod(b.value, 1.0).abs() > 0.0 {
         let message = "this is below zero: it has no broken power";
         return Err(CalcError::new(message, left.range.clone()));
     }
@@ -381,6 +383,11 @@ fn same(expr: &Expr, what: &str, values: &[(&Expr, Quantity)]) -> Result<Dimensi
         }
     }
     Ok(known.unwrap_or(Dimension::NONE))
+}
+
+/// Equal but for the last bits, which a change of units may disturb: 300 mm is 0.3 m.
+fn equal(a: f64, b: f64) -> bool {
+    (a - b).abs() <= 1e-12 * a.abs().max(b.abs())
 }
 
 fn finite(expr: &Expr, quantity: Quantity) -> Result<Value, CalcError> {

@@ -4,9 +4,9 @@ use super::Math;
 
 /// Letters of Greek by name.
 const GREEK: [&str; 33] = [
-    "alpha", "beta", "gamma", "delta", "epsilon", "zeta", "eta", "theta", "iota", "kappa", "lambda",
-    "mu", "nu", "xi", "pi", "rho", "sigma", "tau", "upsilon", "phi", "chi", "psi", "omega",
-    "Gamma", "Delta", "Theta", "Lambda", "Xi", "Pi", "Sigma", "Phi", "Psi", "Omega",
+    "alpha", "beta", "gamma", "delta", "epsilon", "zeta", "eta", "theta", "iota", "kappa",
+    "lambda", "mu", "nu", "xi", "pi", "rho", "sigma", "tau", "upsilon", "phi", "chi", "psi",
+    "omega", "Gamma", "Delta", "Theta", "Lambda", "Xi", "Pi", "Sigma", "Phi", "Psi", "Omega",
 ];
 
 /// LaTeX without its delimiters.
@@ -111,7 +111,11 @@ fn letters(word: &str) -> String {
     let stem = word.trim_end_matches(|c: char| c.is_ascii_digit());
     let digits = &word[stem.len()..];
     if GREEK.contains(&stem) {
-        return if digits.is_empty() { format!("\\{stem}") } else { format!("\\{stem}_{{{digits}}}") };
+        return if digits.is_empty() {
+            format!("\\{stem}")
+        } else {
+            format!("\\{stem}_{{{digits}}}")
+        };
     }
     if word.chars().count() == 1 || word.chars().all(|c| c.is_ascii_digit()) {
         return word.to_owned();

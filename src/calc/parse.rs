@@ -267,12 +267,11 @@ impl Parser<'_> {
         }
         let least = if name == "choose" { 1 } else { 2 };
         if rows.len() < least {
-            let message = format!(
-                "`{name}` needs at least {least} row{}",
-                if least == 1 { "" } else { "s" }
-            );
-            return Err(CalcError::new(message, opening.start - name.len()..self.here().end)
-                .hint(format!("write rows behind semicolons: `{name}(value; first, 1.0; second, 0.8)`")));
+            let message =
+                format!("`{name}` needs at least {least} row{}", if least == 1 { "" } else { "s" });
+            return Err(CalcError::new(message, opening.start - name.len()..self.here().end).hint(
+                format!("write rows behind semicolons: `{name}(value; first, 1.0; second, 0.8)`"),
+            ));
         }
         self.close(opening)?;
         Ok(rows)

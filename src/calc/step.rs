@@ -65,7 +65,8 @@ fn broken(math: Math) -> Vec<Math> {
     let mut so_far = 0;
     let mut parts = parts.into_iter().peekable();
     while let Some(part) = parts.next() {
-        let cuts = matches!(part, Math::Sign("+" | "-" | "·" | "∧" | "∨" | "<" | ">" | "≤" | "≥" | "="));
+        let cuts =
+            matches!(part, Math::Sign("+" | "-" | "·" | "∧" | "∨" | "<" | ">" | "≤" | "≥" | "="));
         let ahead = width(&part) + parts.peek().map_or(0, width);
         if cuts && so_far + ahead > WIDEST && !line.is_empty() {
             lines.push(Math::Row(std::mem::take(&mut line)));

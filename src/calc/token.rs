@@ -8,7 +8,11 @@ use crate::quantity::{self, Dimension, Quantity};
 
 #[derive(Clone, Debug, PartialEq)]
 pub(super) enum Token {
-    Quantity { quantity: Quantity, number: String, unit: String },
+    Quantity {
+        quantity: Quantity,
+        number: String,
+        unit: String,
+    },
     Name(String),
     Word(String),
     /// An operator, bracket or separator, in one spelling.
@@ -116,8 +120,7 @@ fn number(text: &str, at: &mut usize) -> Result<Token, CalcError> {
         Follows::Unit(length) => end + length,
         Follows::Unknown(from, to) => {
             let word = &text[end + from..end + to];
-            let error =
-                CalcError::new(format!("no unit is called `{word}`"), end + from..end + to);
+            let error = CalcError::new(format!("no unit is called `{word}`"), end + from..end + to);
             return Err(error.hint("to multiply by a value, write `*` between the two"));
         }
     };

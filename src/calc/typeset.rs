@@ -1,7 +1,7 @@
 //! A formula as mathematics, in a neutral tree: with symbols, or with the values put in.
 
-use super::expression::{Argument, Binary, Expr, ExprKind, Formula, Reading};
 use super::Function;
+use super::expression::{Argument, Binary, Expr, ExprKind, Formula, Reading};
 use crate::quantity::parse_unit;
 
 /// Mathematics, free of any markup.
@@ -78,16 +78,13 @@ impl Set<'_> {
             }
             ExprKind::Not(inner) => Math::Row(vec![Math::Sign("¬"), self.math(inner, 7)]),
             ExprKind::Binary(Binary::Divide, left, right) => {
-                let fraction = Math::Fraction(
-                    Box::new(self.math(left, 0)),
-                    Box::new(self.math(right, 0)),
-                );
+                let fraction =
+                    Math::Fraction(Box::new(self.math(left, 0)), Box::new(self.math(right, 0)));
                 bracketed(fraction, level >= POWER)
             }
-            ExprKind::Binary(Binary::Power, base, exponent) => Math::Power(
-                Box::new(self.math(base, POWER)),
-                Box::new(self.math(exponent, 0)),
-            ),
+            ExprKind::Binary(Binary::Power, base, exponent) => {
+                Math::Power(Box::new(self.math(base, POWER)), Box::new(self.math(exponent, 0)))
+            }
             ExprKind::Binary(binary, left, right) => self.binary(*binary, left, right, level),
             ExprKind::Call(function, arguments) => self.call(*function, arguments),
             ExprKind::ValueIn(inner, unit) => {

@@ -100,7 +100,8 @@ fn symbol(text: &str) -> Option<usize> {
 
 /// Length of `2`, `²`, `^2`, `^-1` or `⁻¹`.
 fn exponent(text: &str) -> usize {
-    let digits = |text: &str| text.len() - text.trim_start_matches(|c: char| c.is_ascii_digit()).len();
+    let digits =
+        |text: &str| text.len() - text.trim_start_matches(|c: char| c.is_ascii_digit()).len();
     let raised = |c: char| matches!(c, '⁻' | '⁰' | '¹' | '²' | '³' | '⁴'..='⁹');
     if let Some(tail) = text.strip_prefix('^') {
         let sign = usize::from(tail.starts_with('-'));

@@ -117,7 +117,8 @@ impl Sheet {
     /// Code, edition and clause in one line.
     #[must_use]
     pub fn reference(&self) -> String {
-        let edition = self.edition.as_ref().map(|edition| format!(":{edition}")).unwrap_or_default();
+        let edition =
+            self.edition.as_ref().map(|edition| format!(":{edition}")).unwrap_or_default();
         let clause = self.clause.as_ref().map(|clause| format!(", {clause}")).unwrap_or_default();
         format!("{}{edition}{clause}", self.code)
     }
@@ -146,7 +147,9 @@ const TEXTS: [&str; 12] = sheets![
 ];
 
 static SHEETS: LazyLock<Vec<Sheet>> = LazyLock::new(|| {
-    let read = |text: &&str| serde_yaml::from_str(text).expect("the sheets of the catalogue are read in tests");
+    let read = |text: &&str| {
+        serde_yaml::from_str(text).expect("the sheets of the catalogue are read in tests")
+    };
     TEXTS.iter().map(read).collect()
 });
 

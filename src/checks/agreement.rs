@@ -6,8 +6,8 @@ use crate::analysis::{Extremes, Governing, Solution, evaluate, superpose_one};
 use crate::calc::Value;
 use crate::diagnostic::Diagnostic;
 use crate::model::{
-    Agreement, Bound, CaseId, EFFECTS, Model, Of, Placed, Purpose, Query, Side, Slot, Source, State,
-    WorkingLine,
+    Agreement, Bound, CaseId, EFFECTS, Model, Of, Placed, Purpose, Query, Side, Slot, Source,
+    State, WorkingLine,
 };
 
 pub(super) fn workings(
@@ -31,12 +31,12 @@ pub(super) fn workings(
         for line in &working.lines {
             let result = match line {
                 WorkingLine::Remark(_) => Ok(None),
-                WorkingLine::Step(step) => results
-                    .kept(&step.formula, &working.bound, &steps)
-                    .map(|value| {
+                WorkingLine::Step(step) => {
+                    results.kept(&step.formula, &working.bound, &steps).map(|value| {
                         steps.push(value.value.clone());
                         Some(LineResult::Step(value))
-                    }),
+                    })
+                }
                 WorkingLine::Agreement(agreement) => {
                     results.agreement(agreement, &working.bound, &steps).map(Some)
                 }
@@ -96,9 +96,8 @@ impl Results<'_> {
             Source::Result(query) => query,
             _ => return Ok(Value::Truth(false)),
         };
-        let missing = || {
-            Diagnostic::error("formula", "there is no such result").at(formula.place.clone())
-        };
+        let missing =
+            || Diagnostic::error("formula", "there is no such result").at(formula.place.clone());
         let (value, kind) = match query {
             Query::Effect { member, span, effect, of } => {
                 let value = match of {
@@ -107,9 +106,7 @@ impl Results<'_> {
                         let segments = &self.solution.members[member.0].segments;
                         let segment = match side {
                             Side::Before => segments.iter().find(|segment| *x <= segment.to),
-                            Side::After => {
-                                segments.iter().rev().find(|segment| segment.from <= *x)
-                            }
+                            Side::After => segments.iter().rev().find(|segment| segment.from <= *x),
                         }
                         .ok_or_else(missing)?;
                         let terms = factors.iter().map(|(case, factor)| {
@@ -134,12 +131,16 @@ impl Results<'_> {
                     Of::State(state, ..) => {
                         let solved = &self.solution.nodes[node.0].reaction;
                         let factors = self.factors(*state);
-                        factors.iter().map(|(case, factor)| factor * solved[case.0][*component]).sum()
+                        factors
+                            .iter()
+                            .map(|(case, factor)| factor * solved[case.0][*component])
+                            .sum()
                     }
                     Of::Greatest(purpose) | Of::Least(purpose) => {
-                        let found = self.governing.reactions.iter().find(|(of_purpose, of_node, _)| {
-                            of_purpose == purpose && of_node == node
-                        });
+                        let found =
+                            self.governing.reactions.iter().find(|(of_purpose, of_node, _)| {
+                                of_purpose == purpose && of_node == node
+                            });
                         which(&found.ok_or_else(missing)?.2[*component], of)
                     }
                 };
@@ -207,9 +208,8 @@ impl Results<'_> {
     ) -> Result<LineResult, Diagnostic> {
         let value = self.kept(&agreement.value, bound, steps)?;
         let with = self.kept(&agreement.with, bound, steps)?;
-        let wrong = |message: String| {
-            Diagnostic::error("formula", message).at(agreement.origin.clone())
-        };
+        let wrong =
+            |message: String| Diagnostic::error("formula", message).at(agreement.origin.clone());
         let (Value::Number(a), Value::Number(b)) = (&value.value, &with.value) else {
             return Err(wrong("an agreement holds two quantities".to_owned()));
         };

@@ -99,8 +99,10 @@ impl<'t> Evaluator<'t> {
             if self.steps[index].is_none() {
                 let formula = &self.check.steps[index].formula;
                 let values = self.values(formula);
-                let evaluation =
-                    formula.formula.evaluate(&values).map_err(|error| Problem::at(formula, error))?;
+                let evaluation = formula
+                    .formula
+                    .evaluate(&values)
+                    .map_err(|error| Problem::at(formula, error))?;
                 self.steps[index] = Some(evaluation.value);
             }
         }
@@ -184,7 +186,12 @@ impl Problem {
     }
 
     /// With what was being evaluated.
-    pub(super) fn on(self, task: &Task<'_>, combination: Option<usize>, x: Option<f64>) -> Diagnostic {
+    pub(super) fn on(
+        self,
+        task: &Task<'_>,
+        combination: Option<usize>,
+        x: Option<f64>,
+    ) -> Diagnostic {
         let check = &task.model.checks[task.check];
         let target = task.model.on_name(check.targets[task.target].on);
         let state = combination

@@ -20,8 +20,7 @@ pub(super) fn scales(model: &Model, solution: &Solution) -> Scales {
             let length = segment.to - segment.from;
             for fields in &segment.states {
                 for (scale, polynomial) in scales.iter_mut().zip(&fields.0) {
-                    let bound =
-                        polynomial.iter().rev().fold(0.0, |sum, c| sum * length + c.abs());
+                    let bound = polynomial.iter().rev().fold(0.0, |sum, c| sum * length + c.abs());
                     *scale = scale.max(bound);
                 }
             }
@@ -73,9 +72,9 @@ pub(super) fn along(
         from < middle && middle < to
     };
     let one = |segment: &Segment, effect: Effect| {
-        let terms = factors.iter().map(|(case, factor)| {
-            (*factor, &segment.states[case.0].0[effect.index()])
-        });
+        let terms = factors
+            .iter()
+            .map(|(case, factor)| (*factor, &segment.states[case.0].0[effect.index()]));
         superpose_one(terms)
     };
     let (member, reference) = member;
@@ -123,9 +122,9 @@ fn tangent(
     let Some(span) = span else { return (0.0, 0.0, 0.0) };
     let starts_free = span.free[0];
     let at = if starts_free { span.to } else { span.from };
-    let held = segments.iter().find(|segment| {
-        if starts_free { segment.to >= at } else { segment.from >= at }
-    });
+    let held = segments
+        .iter()
+        .find(|segment| if starts_free { segment.to >= at } else { segment.from >= at });
     let Some(held) = held else { return (at, 0.0, 0.0) };
     let s = at - held.from;
     // θ_y = −w′ and θ_z = v′ of the cross-section: shear deformation counts as deflection.

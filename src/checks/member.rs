@@ -173,7 +173,9 @@ impl Run<'_> {
                 if !top.is_finite() || top + MARGIN * (top - bottom) < best || top <= bottom {
                     continue;
                 }
-                let Some(peak) = samples.iter().position(|(_, value)| *value >= top) else { continue };
+                let Some(peak) = samples.iter().position(|(_, value)| *value >= top) else {
+                    continue;
+                };
                 let around = (
                     samples[peak.saturating_sub(1)].0,
                     samples[(peak + 1).min(samples.len() - 1)].0,
@@ -206,4 +208,3 @@ impl Run<'_> {
 fn number(effect: Effect, value: f64) -> Value {
     Value::number(value, effect.kind().dimension())
 }
-

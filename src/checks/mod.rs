@@ -198,7 +198,8 @@ impl<'t> Task<'t> {
             .enumerate()
             .filter(|(_, combination)| content.purposes.contains(&combination.purpose))
             .map(|(index, combination)| {
-                let counts = |case: CaseId| !content.variable_only || is_variable(model[case].nature);
+                let counts =
+                    |case: CaseId| !content.variable_only || is_variable(model[case].nature);
                 let factors = combination.factors.iter().filter(|(case, _)| counts(*case));
                 (index, factors.copied().collect::<Vec<_>>())
             })

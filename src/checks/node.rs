@@ -91,7 +91,8 @@ pub(super) fn reaction(task: &Task<'_>, node: NodeId, factors: &[(CaseId, f64)])
     let solved = &task.solution.nodes[node.0].reaction;
     let scales = task.scales.reactions[task.model[node].structure.0];
     std::array::from_fn(|k| {
-        let terms = factors.iter().filter_map(|(case, factor)| Some(factor * solved.get(case.0)?[k]));
+        let terms =
+            factors.iter().filter_map(|(case, factor)| Some(factor * solved.get(case.0)?[k]));
         settled(terms.sum(), scales[usize::from(k >= 3)])
     })
 }

@@ -148,9 +148,7 @@ impl Weighing {
         governing.side = spot.side;
         governing.utilisation = spot.utilisation.is_finite().then_some(spot.utilisation);
         let (outcome, reason) = match governing.utilisation {
-            None => {
-                (Outcome::NotSatisfied, Some("the capacity is not above zero".to_owned()))
-            }
+            None => (Outcome::NotSatisfied, Some("the capacity is not above zero".to_owned())),
             Some(value) if value <= check.limit + EQUAL => (Outcome::Satisfied, None),
             Some(_) => (Outcome::NotSatisfied, None),
         };

@@ -5,11 +5,11 @@
 use clap::{Args, ValueEnum};
 use serde_json::{Map, Value, json};
 
+use super::sheets;
 use crate::catalogue::{
     self, CatalogueMaterial, CatalogueSection, Entry, Family, Sheet, families, find, material,
     material_tables, section,
 };
-use super::sheets;
 use crate::diagnostic::Diagnostic;
 use crate::quantity::{Kind, Printer, System, Units, parse_as, parse_unit};
 

@@ -77,7 +77,8 @@ pub(super) fn in_full(sheet: &Sheet) -> String {
     for (symbol, step) in &sheet.steps {
         let about: Vec<&str> =
             step.meaning.iter().chain(&step.clause).map(String::as_str).collect();
-        let about = if about.is_empty() { String::new() } else { format!("  – {}", about.join(", ")) };
+        let about =
+            if about.is_empty() { String::new() } else { format!("  – {}", about.join(", ")) };
         out += &format!("  {symbol} = {}{about}\n", step.formula);
     }
     out += &format!("  demand = {}\n  capacity = {}\n", sheet.demand, sheet.capacity);

@@ -176,9 +176,9 @@ pub struct Working {
 #[derive(Clone, Debug, PartialEq)]
 pub enum WorkingLine {
     Remark(String),
-    /// Index into the steps of its file is by order.
-    Step(Step),
-    Agreement(Agreement),
+    /// The steps of one file are numbered through its blocks.
+    Step(Box<Step>),
+    Agreement(Box<Agreement>),
 }
 
 /// Two values that must agree.

@@ -19,8 +19,8 @@ pub use action::{
     Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Per, Target, Written,
 };
 pub use check::{
-    Agreement, Check, CheckTarget, Condition, DeflectionFrom, On, Placed, Shows, Slot, Step, Working,
-    WorkingLine, located,
+    Agreement, Check, CheckTarget, Condition, DeflectionFrom, On, Placed, Shows, Slot, Step,
+    Working, WorkingLine, located,
 };
 pub use combination::{Combination, Purpose};
 pub use effect::{EFFECTS, Effect, FORCES, STORED, Side};
@@ -115,7 +115,10 @@ pub enum NarrativeBlock {
     Assumption(String),
     Deferral(String),
     Reference(String),
-    Open { text: String, by: Option<String> },
+    Open {
+        text: String,
+        by: Option<String>,
+    },
 }
 
 /// A named constant of the project.

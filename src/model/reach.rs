@@ -59,9 +59,22 @@ pub enum Source {
 /// A result that working blocks and narrative ask for.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Query {
-    Effect { member: MemberId, span: Option<usize>, effect: Effect, of: Of },
-    Reaction { node: NodeId, component: usize, of: Of },
-    Displacement { node: NodeId, component: usize, state: State },
+    Effect {
+        member: MemberId,
+        span: Option<usize>,
+        effect: Effect,
+        of: Of,
+    },
+    Reaction {
+        node: NodeId,
+        component: usize,
+        of: Of,
+    },
+    Displacement {
+        node: NodeId,
+        component: usize,
+        state: State,
+    },
     /// Utilisation of a check.
     Check(String),
 }
@@ -134,12 +147,17 @@ impl Model {
         }
         let (own, missing) = match on {
             On::Member { member, span } => self.of_member(&self[member], span, &reading.name),
-            On::Node { node, relative_to } => (self.of_node(node, relative_to, &reading.name), None),
+            On::Node { node, relative_to } => {
+                (self.of_node(node, relative_to, &reading.name), None)
+            }
             On::Structure { about, .. } => (of_structure(about, &reading.name), None),
         };
         match (own, value) {
             (Some(_), Some(_)) => Err(Unbound {
-                message: format!("`{}` is both a value of the project and in reach here", reading.name),
+                message: format!(
+                    "`{}` is both a value of the project and in reach here",
+                    reading.name
+                ),
                 hint: Some("give the value of the project another name".to_owned()),
                 known: Vec::new(),
             }),
@@ -161,7 +179,8 @@ impl Model {
             On::Member { member, .. } => {
                 let member = &self[member];
                 let properties = &self[member.section].properties;
-                known.extend(properties.by_symbol().iter().map(|(symbol, ..)| (*symbol).to_owned()));
+                known
+                    .extend(properties.by_symbol().iter().map(|(symbol, ..)| (*symbol).to_owned()));
                 known.extend(properties.dimensions.keys().cloned());
                 known.extend(self[member.material].strengths.keys().cloned());
                 known.extend(super::EFFECTS.iter().map(|effect| effect.name().to_owned()));
@@ -237,16 +256,15 @@ impl Model {
                 None => of(Source::Span, Kind::Length),
             },
             "x" => of(Source::Position, Kind::Length),
-            "L_cr_y" | "L_cr_z" => {
-                match member.buckling_length[usize::from(name == "L_cr_z")] {
-                    Some(length) => constant(Kind::Length, length),
-                    None => return (None, Some(states("buckling length about this axis"))),
-                }
-            }
+            "L_cr_y" | "L_cr_z" => match member.buckling_length[usize::from(name == "L_cr_z")] {
+                Some(length) => constant(Kind::Length, length),
+                None => return (None, Some(states("buckling length about this axis"))),
+            },
             "top_held" => truth(member.held.top == HeldAlong::Continuous),
             "bottom_held" => truth(member.held.bottom == HeldAlong::Continuous),
             "unheld_top" | "unheld_bottom" => {
-                let held = if name == "unheld_top" { &member.held.top } else { &member.held.bottom };
+                let held =
+                    if name == "unheld_top" { &member.held.top } else { &member.held.bottom };
                 match unheld(member, held, bounds) {
                     Some(length) => constant(Kind::Length, length),
                     None => return (None, Some(states("restraint of this edge (`held`)"))),
@@ -258,9 +276,7 @@ impl Model {
             "start_hinged" | "end_hinged" => {
                 truth(is_hinged(member, if name == "start_hinged" { bounds.0 } else { bounds.1 }))
             }
-            "cantilever" => {
-                truth(self.is_free(member, bounds.0) != self.is_free(member, bounds.1))
-            }
+            "cantilever" => truth(self.is_free(member, bounds.0) != self.is_free(member, bounds.1)),
             "shape" => word(properties.form),
             "family" => word(&material.family),
             "service_class" => match &material.service_class {
@@ -497,8 +513,12 @@ struct Call<'m> {
 impl Call<'_> {
     fn wrong(&self, message: String) -> Unbound {
         let hint = match self.reading.name.as_str() {
-            "effect" => "for example `effect('B1', 'M_y', 'max', purpose='strength')` or `effect('B1', 'M_y', at=2.7 m, state='G')`",
-            "reaction" => "for example `reaction('A', 'Z', 'max', purpose='strength')` or `reaction('A', 'Z', state='G')`",
+            "effect" => {
+                "for example `effect('B1', 'M_y', 'max', purpose='strength')` or `effect('B1', 'M_y', at=2.7 m, state='G')`"
+            }
+            "reaction" => {
+                "for example `reaction('A', 'Z', 'max', purpose='strength')` or `reaction('A', 'Z', state='G')`"
+            }
             "displacement" => "for example `displacement('C', 'X', state='G')`",
             _ => "for example `member('B1', 'length')`, `check('B1-bending')`",
         };
@@ -523,7 +543,9 @@ impl Call<'_> {
     fn only(&self, plain: usize, keys: &[&str]) -> Result<(), Unbound> {
         let count = self.arguments.iter().filter(|(key, _)| key.is_none()).count();
         if count > plain {
-            return Err(self.wrong(format!("`{}` takes {plain} plain arguments", self.reading.name)));
+            return Err(
+                self.wrong(format!("`{}` takes {plain} plain arguments", self.reading.name))
+            );
         }
         for key in self.arguments.iter().filter_map(|(key, _)| key.as_ref()) {
             if !keys.contains(&key.as_str()) {
@@ -545,7 +567,9 @@ impl Call<'_> {
         let name = self.text(0, "the name of a node")?;
         let nodes = &self.model.nodes;
         let found = nodes.iter().position(|node| node.name == name);
-        found.map(NodeId).ok_or_else(|| no("node", &name, nodes.iter().map(|node| node.name.clone())))
+        found
+            .map(NodeId)
+            .ok_or_else(|| no("node", &name, nodes.iter().map(|node| node.name.clone())))
     }
 
     fn component(&self) -> Result<usize, Unbound> {

@@ -276,9 +276,9 @@ impl<'d> Body<'d> {
             Tag::FootnoteDefinition(label) => {
                 let number = self.note(&label);
                 self.ids.push(format!("note-{number}"));
-                let _ = write!(
+                let _ = writeln!(
                     self.html,
-                    "<aside class=\"note\" id=\"note-{number}\"><a href=\"#note-{number}-mark\">{number}</a>\n"
+                    "<aside class=\"note\" id=\"note-{number}\"><a href=\"#note-{number}-mark\">{number}</a>"
                 );
             }
             Tag::Table(alignments) => {

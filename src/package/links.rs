@@ -78,7 +78,8 @@ impl<'r> Targets<'r> {
             out += &markdown[at..link.start];
             at = link.end;
             let (usual, place) = self.place(&link, markdown);
-            let text = if link.text.is_empty() { markdown::escaped(&usual) } else { link.text.to_owned() };
+            let text =
+                if link.text.is_empty() { markdown::escaped(&usual) } else { link.text.to_owned() };
             match place {
                 Some(place) => out += &format!("[{text}](#{place})"),
                 None => out += &text,
@@ -105,10 +106,8 @@ impl<'r> Targets<'r> {
             }
             "chapter" => {
                 let found = self.chapters.iter().find(|(chapter, _)| chapter == name);
-                let usual = found.map_or_else(
-                    || name.to_owned(),
-                    |(_, heading)| format!("chapter {heading}"),
-                );
+                let usual = found
+                    .map_or_else(|| name.to_owned(), |(_, heading)| format!("chapter {heading}"));
                 (usual, found.map(|(_, heading)| anchor(&plain(heading))))
             }
             "figure" => ("figure".to_owned(), Some(format!("figure-{name}"))),

@@ -31,7 +31,11 @@ struct CheckResult {
 }
 
 /// Adds the calls; `figures` are ids with captions.
-pub(super) fn add(environment: &mut Environment<'_>, record: &Record, figures: &[(String, String)]) {
+pub(super) fn add(
+    environment: &mut Environment<'_>,
+    record: &Record,
+    figures: &[(String, String)],
+) {
     add_results(environment, record);
     add_values(environment, record);
     add_checks(environment, record);
@@ -45,7 +49,11 @@ pub(super) fn add(environment: &mut Environment<'_>, record: &Record, figures: &
                 .filter(|own| own.contains(id.as_str()) || id.contains(own))
                 .take(6)
                 .collect();
-            let near = if near.is_empty() { String::new() } else { format!("; near it: {}", near.join(", ")) };
+            let near = if near.is_empty() {
+                String::new()
+            } else {
+                format!("; near it: {}", near.join(", "))
+            };
             Error::new(ErrorKind::InvalidOperation, format!("no figure named `{id}`{near}"))
         })?;
         let caption = markdown::escaped(caption);

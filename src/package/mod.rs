@@ -57,7 +57,10 @@ pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagno
     let (page, missing) = html::page(record, &markdown, &drawings);
     if !missing.is_empty() {
         let problem = |id: &String| {
-            Diagnostic::error("unknown-link", format!("a link leads to `#{id}`, which is not there"))
+            Diagnostic::error(
+                "unknown-link",
+                format!("a link leads to `#{id}`, which is not there"),
+            )
         };
         return Err(missing.iter().map(problem).collect());
     }

@@ -77,7 +77,10 @@ fn block(record: &Record, block: &NarrativeBlockRecord) -> Block {
         NarrativeBlockRecord::Reference(id) => {
             let of = basis.standards.iter().find(|standard| standard.id == *id);
             of.map_or_else(Block::default, |standard| {
-                note(format!("Reference {id}"), &format!("{}, {}", standard.title, standard.edition))
+                note(
+                    format!("Reference {id}"),
+                    &format!("{}, {}", standard.title, standard.edition),
+                )
             })
         }
         NarrativeBlockRecord::Open(text) => note("Open".to_owned(), text),

@@ -181,7 +181,8 @@ fn add_printing(environment: &mut Environment<'_>, printer: Printer) {
     });
     environment.add_filter("display", display);
     // Blanks would end the target of a link.
-    environment.add_filter("link", |text: String| Value::from_safe_string(text.replace(' ', "%20")));
+    environment
+        .add_filter("link", |text: String| Value::from_safe_string(text.replace(' ', "%20")));
     environment.add_function("unit", move |kind: String| -> Result<String, Error> {
         let kind = Kind::from_name(&kind).ok_or_else(|| no_kind(&kind))?;
         Ok(printer.units.get(kind).label.clone())
@@ -224,10 +225,8 @@ fn print(
                 .map_err(|error| Error::new(ErrorKind::InvalidOperation, error.message))?;
             let plain_angle = |dimension: Dimension| Dimension { angle: 0, ..dimension };
             if plain_angle(asked.dimension) != plain_angle(own.dimension) {
-                let message = format!(
-                    "`{label}` is not a unit of {}",
-                    own.dimension.name_with_article()
-                );
+                let message =
+                    format!("`{label}` is not a unit of {}", own.dimension.name_with_article());
                 return Err(Error::new(ErrorKind::InvalidOperation, message));
             }
             asked

@@ -169,7 +169,11 @@ const CHECK: Table = Table {
     ],
     forms: &[
         form(&["sheet"], &[], &["with", "reference"]),
-        form(&["demand", "capacity"], &[&["demand"], &["capacity"], &["title"], &["reference"]], &["let"]),
+        form(
+            &["demand", "capacity"],
+            &[&["demand"], &["capacity"], &["title"], &["reference"]],
+            &["let"],
+        ),
     ],
 };
 

@@ -41,7 +41,12 @@ pub(super) fn problems(text: &str, root: &Node) -> Vec<Diagnostic> {
 }
 
 /// Every shape problem of a text that is one definition of the schema.
-pub(super) fn problems_of(text: &str, root: &Node, definition: &str, what: &str) -> Vec<Diagnostic> {
+pub(super) fn problems_of(
+    text: &str,
+    root: &Node,
+    definition: &str,
+    what: &str,
+) -> Vec<Diagnostic> {
     let mut walk = Walk { text, found: Vec::new() };
     let schema = json!({ "$ref": format!("#/$defs/{definition}") });
     walk.value(root, Spot { schema: &schema, what, at: &(0..0) });

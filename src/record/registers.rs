@@ -172,7 +172,8 @@ fn unchecked(record: &Record) -> Vec<OpenItem> {
         all.iter().partition(|member| kinds.iter().all(|kind| !shown(member, kind)));
     let mut out = Vec::new();
     if !none.is_empty() {
-        let lead = if some.is_empty() { "This package gives effects of actions only: " } else { "" };
+        let lead =
+            if some.is_empty() { "This package gives effects of actions only: " } else { "" };
         out.push(item(
             "members without checks",
             format!(

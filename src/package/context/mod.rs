@@ -105,7 +105,10 @@ struct SourceFile<'r> {
 impl Context<'_> {
     /// Every drawing: id and caption.
     pub(super) fn figure_captions(&self) -> Vec<(String, String)> {
-        self.figures.iter().map(|figure| (figure.id.to_owned(), figure.caption.to_owned())).collect()
+        self.figures
+            .iter()
+            .map(|figure| (figure.id.to_owned(), figure.caption.to_owned()))
+            .collect()
     }
 }
 

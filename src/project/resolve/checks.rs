@@ -9,8 +9,8 @@ use super::sheets::{Sheets, Used};
 use crate::catalogue::{Sheet, SheetShows, SheetTarget};
 use crate::diagnostic::{Diagnostic, Place};
 use crate::model::{
-    Assumption, Check, CheckTarget, Condition, DeflectionFrom, MemberId, Model, NodeId, On, Purpose,
-    Shows, StructureId,
+    Assumption, Check, CheckTarget, Condition, DeflectionFrom, MemberId, Model, NodeId, On,
+    Purpose, Shows, StructureId,
 };
 use crate::project::text::{Located, Map, Text};
 use crate::project::written::{self, words::CheckPurpose};
@@ -210,9 +210,12 @@ fn inputs<'s>(
             formulas.step(reader, (name, place.clone()), &source, meaning, input.clause.clone());
         } else {
             reader.problem(
-                Diagnostic::error("missing-key", format!("{whose}needs `{name}`: {}", input.meaning))
-                    .at(place.clone())
-                    .hint(format!("give it: `with: {{{name}: …}}`")),
+                Diagnostic::error(
+                    "missing-key",
+                    format!("{whose}needs `{name}`: {}", input.meaning),
+                )
+                .at(place.clone())
+                .hint(format!("give it: `with: {{{name}: …}}`")),
             );
         }
     }
@@ -494,7 +497,9 @@ fn bind(
 /// The input whose default reads this name can be given instead.
 fn input_of(sheet: Option<&Sheet>, name: &str) -> Option<String> {
     let reads = |default: &Option<String>| {
-        default.as_ref().is_some_and(|text| text.split(|c: char| !c.is_alphanumeric() && c != '_').any(|word| word == name))
+        default.as_ref().is_some_and(|text| {
+            text.split(|c: char| !c.is_alphanumeric() && c != '_').any(|word| word == name)
+        })
     };
     let (input, _) = sheet?.inputs.iter().find(|(_, input)| reads(&input.default))?;
     Some(format!("give the sheet's input: `with: {{{input}: …}}`"))
@@ -598,9 +603,10 @@ pub(super) fn deferrals(reader: &mut Reader, written: &written::Basis, model: &M
 
 /// Ids of checks and of agreements.
 pub(super) fn check_ids(model: &Model) -> impl Iterator<Item = &str> {
-    let agreements = model.workings.iter().flat_map(|working| &working.lines).filter_map(|line| match line {
-        crate::model::WorkingLine::Agreement(agreement) => Some(agreement.id.as_str()),
-        crate::model::WorkingLine::Remark(_) | crate::model::WorkingLine::Step(_) => None,
-    });
+    let agreements =
+        model.workings.iter().flat_map(|working| &working.lines).filter_map(|line| match line {
+            crate::model::WorkingLine::Agreement(agreement) => Some(agreement.id.as_str()),
+            crate::model::WorkingLine::Remark(_) | crate::model::WorkingLine::Step(_) => None,
+        });
     model.checks.iter().map(|check| check.id.as_str()).chain(agreements)
 }

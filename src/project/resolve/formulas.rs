@@ -114,7 +114,13 @@ fn part(source: &Source<'_>, range: &Range<usize>) -> Place {
 }
 
 /// Reports what is not in reach.
-pub(super) fn unbound(reader: &mut Reader, name: &str, unbound: Unbound, whose: &str, place: Place) {
+pub(super) fn unbound(
+    reader: &mut Reader,
+    name: &str,
+    unbound: Unbound,
+    whose: &str,
+    place: Place,
+) {
     let near = nearest(name, unbound.known.iter().map(String::as_str));
     reader.problem(
         Diagnostic::error("unknown-name", format!("{whose}{}", unbound.message))

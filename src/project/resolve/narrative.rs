@@ -31,16 +31,19 @@ pub(super) fn narrative<'s>(
 ) -> Vec<File<'s>> {
     let mut files: Vec<File<'s>> = Vec::new();
     for (path, after) in listed(reader, written, sources) {
-        let Some((path, text)) = sources.files.get_key_value(&path).and_then(|(path, _)| {
-            Some((path.as_str(), sources.text(path)?))
-        }) else {
+        let Some((path, text)) = sources
+            .files
+            .get_key_value(&path)
+            .and_then(|(path, _)| Some((path.as_str(), sources.text(path)?)))
+        else {
             continue;
         };
         heading(reader, path, text);
         let first = files.iter().map(|file| file.cut.blocks.len()).sum();
         let cut = cut(text, first);
         let blocks = cut.blocks.iter();
-        let blocks = blocks.map(|block| self::block(reader, path, text, block, ids, model)).collect();
+        let blocks =
+            blocks.map(|block| self::block(reader, path, text, block, ids, model)).collect();
         model.narrative.push(Narrative { file: path.to_owned(), after, blocks });
         files.push(File { path, text, cut });
     }
@@ -53,9 +56,8 @@ fn listed(
     written: Option<&Vec<written::Narrative>>,
     sources: &Sources,
 ) -> Vec<(String, String)> {
-    let there = || {
-        sources.files.keys().filter(|path| path.starts_with(FOLDER) && path.ends_with(".md"))
-    };
+    let there =
+        || sources.files.keys().filter(|path| path.starts_with(FOLDER) && path.ends_with(".md"));
     let summary = || "summary".to_owned();
     let Some(entries) = written else {
         return there().map(|path| (path.clone(), summary())).collect();
@@ -111,9 +113,12 @@ fn heading(reader: &mut Reader, path: &str, text: &str) {
         let chapter = bare.starts_with("# ");
         if first && !chapter {
             reader.problem(
-                Diagnostic::error("heading", "a narrative file begins with the heading of its chapter")
-                    .at(place(range.clone()))
-                    .hint("begin with a line such as `# Purpose`".to_owned()),
+                Diagnostic::error(
+                    "heading",
+                    "a narrative file begins with the heading of its chapter",
+                )
+                .at(place(range.clone()))
+                .hint("begin with a line such as `# Purpose`".to_owned()),
             );
         } else if !first && chapter {
             reader.problem(
@@ -144,39 +149,38 @@ fn block(
     let made = match block.kind {
         BlockKind::Working => Some(NarrativeBlock::Working),
         BlockKind::Assumption => {
-            read::<written::Assumption>(reader, body, "Assumption", "an assumption").map(|written| {
-                ids.take(reader, &written.id, "assumption");
-                let assumption = about::assumption(&written, place(path, block));
-                let id = assumption.id.clone();
-                model.basis.assumptions.push(assumption);
-                NarrativeBlock::Assumption(id)
-            })
+            read::<written::Assumption>(reader, body, "Assumption", "an assumption").map(
+                |written| {
+                    ids.take(reader, &written.id, "assumption");
+                    let assumption = about::assumption(&written, place(path, block));
+                    let id = assumption.id.clone();
+                    model.basis.assumptions.push(assumption);
+                    NarrativeBlock::Assumption(id)
+                },
+            )
         }
-        BlockKind::Deferral => {
-            read::<written::Deferral>(reader, body, "Deferral", "a deferral").map(|written| {
+        BlockKind::Deferral => read::<written::Deferral>(reader, body, "Deferral", "a deferral")
+            .map(|written| {
                 ids.take(reader, &written.id, "deferral");
                 model.basis.deferred.push(about::deferral(&written));
                 NarrativeBlock::Deferral(written.id.to_string())
-            })
-        }
-        BlockKind::Reference => {
-            read::<written::Standard>(reader, body, "Standard", "a reference").map(|written| {
+            }),
+        BlockKind::Reference => read::<written::Standard>(reader, body, "Standard", "a reference")
+            .map(|written| {
                 ids.take(reader, &written.id, "standard");
                 model.basis.standards.push(about::standard(&written));
                 NarrativeBlock::Reference(written.id.to_string())
-            })
-        }
-        BlockKind::Open => {
-            read::<written::OpenPoint>(reader, body, "OpenPoint", "an open point").map(|written| {
-                NarrativeBlock::Open {
-                    text: written.text.to_string(),
-                    by: about::words(written.by.as_ref()),
-                }
-            })
-        }
+            }),
+        BlockKind::Open => read::<written::OpenPoint>(reader, body, "OpenPoint", "an open point")
+            .map(|written| NarrativeBlock::Open {
+                text: written.text.to_string(),
+                by: about::words(written.by.as_ref()),
+            }),
     };
     // What was read from the block counts its bytes from the block.
-    for problem in reader.found.iter_mut().skip(before).filter(|problem| problem.code != "unclosed-block") {
+    for problem in
+        reader.found.iter_mut().skip(before).filter(|problem| problem.code != "unclosed-block")
+    {
         if let Some(place) = &mut problem.place {
             place.file = path.to_owned();
             place.range = block.body.start + place.range.start..block.body.start + place.range.end;
@@ -197,7 +201,11 @@ fn read<T: for<'t> serde::Deserialize<'t>>(
 ) -> Option<T> {
     let read = tree::read(body).and_then(|tree| {
         let problems = shape::problems_of(body, &tree, definition, what);
-        if problems.is_empty() { de::read(&tree).map_err(|problem| vec![problem]) } else { Err(problems) }
+        if problems.is_empty() {
+            de::read(&tree).map_err(|problem| vec![problem])
+        } else {
+            Err(problems)
+        }
     });
     match read {
         Ok(read) => Some(read),

@@ -31,7 +31,8 @@ pub(super) fn workings(
                 let start = at + line.len() - line.trim_start().len();
                 at += line.len();
                 let text = line.trim();
-                let mut line = Line { file, range: start..start + text.len(), formulas: &mut formulas };
+                let mut line =
+                    Line { file, range: start..start + text.len(), formulas: &mut formulas };
                 lines.extend(line.read(reader, taken, text));
             }
             let ids: Vec<String> = check_ids(model).map(str::to_owned).collect();
@@ -93,7 +94,10 @@ impl<'f> Line<'f> {
             reader.problem(
                 Diagnostic::error("template-mark", "a working block holds no template marks")
                     .at(place)
-                    .hint("read results by call: `effect('B1', 'M_y', 'max', purpose='strength')`".to_owned()),
+                    .hint(
+                        "read results by call: `effect('B1', 'M_y', 'max', purpose='strength')`"
+                            .to_owned(),
+                    ),
             );
             return None;
         }
@@ -122,7 +126,7 @@ impl<'f> Line<'f> {
         let steps = self.formulas.steps.len();
         self.formulas.step(reader, (name, self.place(0..name.len())), &source, meaning, None);
         let step = self.formulas.steps.get(steps)?;
-        Some(WorkingLine::Step(step.clone()))
+        Some(WorkingLine::Step(Box::new(step.clone())))
     }
 
     fn agreement(
@@ -158,7 +162,9 @@ impl<'f> Line<'f> {
             }
             Err(error) => {
                 let place = self.place(at..text.len());
-                reader.problem(Diagnostic::error("quantity", error.message).at(place).hint(error.hint));
+                reader.problem(
+                    Diagnostic::error("quantity", error.message).at(place).hint(error.hint),
+                );
                 None
             }
         };
@@ -167,14 +173,14 @@ impl<'f> Line<'f> {
         let other = self.source(text, trimmed(text, with + " with ".len()..within));
         let value = self.formulas.placed(reader, &value, true);
         let with = self.formulas.placed(reader, &other, true);
-        usable.then_some(WorkingLine::Agreement(Agreement {
+        usable.then_some(WorkingLine::Agreement(Box::new(Agreement {
             id: id.to_owned(),
             title: "Agreement of a hand calculation with the analysis".to_owned(),
             value: value?,
             with: with?,
             tolerance: share?,
             origin: self.place(0..text.len()),
-        }))
+        })))
     }
 
     fn source(&self, text: &'f str, range: Range<usize>) -> Source<'f> {

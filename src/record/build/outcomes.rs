@@ -2,9 +2,7 @@
 
 use super::steps::Bindings;
 use crate::checks::{CheckResult, Checked, LineResult};
-use crate::model::{
-    Agreement, Check, DeflectionFrom, Model, NarrativeBlock, On, WorkingLine,
-};
+use crate::model::{Agreement, Check, DeflectionFrom, Model, NarrativeBlock, On, WorkingLine};
 use crate::record::{
     CheckRecord, NarrativeBlockRecord, NarrativeRecord, NextRecord, OnRecord, WorkingLineRecord,
     WorkingRecord,
@@ -25,7 +23,9 @@ pub(super) fn outcomes(model: &Model, checked: &Checked) -> (Vec<CheckRecord>, V
         let mut lines = Vec::new();
         for (line, result) in working.lines.iter().zip(results) {
             match (line, result) {
-                (WorkingLine::Remark(text), _) => lines.push(WorkingLineRecord::Remark(text.clone())),
+                (WorkingLine::Remark(text), _) => {
+                    lines.push(WorkingLineRecord::Remark(text.clone()))
+                }
                 (WorkingLine::Step(step), Some(LineResult::Step(value))) => {
                     lines.push(WorkingLineRecord::Step(bindings.next(step, value)));
                 }
@@ -45,8 +45,7 @@ pub(super) fn outcomes(model: &Model, checked: &Checked) -> (Vec<CheckRecord>, V
 fn check(model: &Model, result: &CheckResult) -> CheckRecord {
     let check = &model.checks[result.check];
     let target = &check.targets[result.target];
-    let mut bindings =
-        Bindings { units: &model.units, bound: &target.bound, printed: Vec::new() };
+    let mut bindings = Bindings { units: &model.units, bound: &target.bound, printed: Vec::new() };
     let name = |index: usize| model.combinations[index].name.clone();
     let governing = result.governing.as_ref();
     let steps = governing.map_or_else(Vec::new, |governing| {
@@ -140,10 +139,7 @@ fn agreement(
         kind: "agreement".to_owned(),
         on: OnRecord { file: Some(file.to_owned()), ..OnRecord::default() },
         title: agreement.title.clone(),
-        reference: format!(
-            "within {} %",
-            crate::quantity::print(agreement.tolerance * 100.0, 4)
-        ),
+        reference: format!("within {} %", crate::quantity::print(agreement.tolerance * 100.0, 4)),
         sheet: None,
         shows: "analysis".to_owned(),
         purpose: String::new(),
@@ -195,4 +191,3 @@ pub(super) fn narrative(model: &Model) -> Vec<NarrativeRecord> {
         })
         .collect()
 }
-

@@ -45,7 +45,9 @@ impl Bindings<'_> {
             .collect();
         // A formula that only reads a value prints as that does.
         let only = match placed.slots.as_slice() {
-            [slot] if formula.text == formula.readings[0].text => Some(self.reading(slot, &value.value)),
+            [slot] if formula.text == formula.readings[0].text => {
+                Some(self.reading(slot, &value.value))
+            }
             _ => None,
         };
         StepRecord {
@@ -64,7 +66,9 @@ impl Bindings<'_> {
 
     fn reading(&self, slot: &Slot, value: &Value) -> StepValueRecord {
         match slot {
-            Slot::Step(index) => self.value(value, self.printed.get(*index).cloned().flatten(), None),
+            Slot::Step(index) => {
+                self.value(value, self.printed.get(*index).cloned().flatten(), None)
+            }
             Slot::Reading(index) => {
                 let kind = self.bound.get(*index).and_then(|bound| bound.as_ref()?.kind);
                 self.value(value, None, kind)

@@ -21,7 +21,7 @@ fn help_lists_the_commands() {
       start        Set up a new project folder from a small working example
       solve        Solve a project and print what governs; writes nothing
       issue        Write the calculation package into the project's `package` folder
-      catalogue    Find sections and materials, print their properties and source
+      catalogue    Find sections, materials and check sheets, print their properties and source
       schema       Print the JSON Schema of the project file, for editors
       completions  Print shell completions
       man          Print the manual page
@@ -38,7 +38,8 @@ fn help_lists_the_commands() {
               Print version
 
     Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); 2
-    the command line or the project is wrong.
+    the command line or the project is wrong; 3 a check is not satisfied, or deferred without being
+    named in `basis.deferred`.
     ");
 }
 
@@ -125,12 +126,13 @@ fn help_of_catalogue() {
     assert_snapshot!(run(&["catalogue", "--help"]).shown(), @r"
     exit: 0
     --- stdout
-    Find sections and materials, print their properties and source
+    Find sections, materials and check sheets, print their properties and source
 
     Usage: spanfolio catalogue [OPTIONS] [WORDS]...
 
     Arguments:
-      [WORDS]...  A name (`IPE 300`, `S275`), a family (`IPE`) or words to find; none lists the tables
+      [WORDS]...  A name (`IPE 300`, `S275`, `bending stress`), a family (`IPE`), `checks` or words to
+                  find; none lists what there is
 
     Options:
           --jobs <N>            Threads to use at most; the result does not depend on it

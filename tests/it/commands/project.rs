@@ -23,8 +23,12 @@ impl Project {
     /// A copy of a demo project, without its package.
     pub(super) fn demo(name: &str) -> Self {
         let demo = Path::new(env!("CARGO_MANIFEST_DIR")).join("demo-projects").join(name);
-        let text = std::fs::read(demo.join("project.yaml")).expect("a demo project");
-        Self::of(&String::from_utf8(text).expect("UTF-8"))
+        let sources = spanfolio::files::read(&demo).expect("a demo project");
+        let project = Self::empty();
+        for (name, content) in &sources.files {
+            project.put(name, content);
+        }
+        project
     }
 
     /// A folder with this project file.

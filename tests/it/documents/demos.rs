@@ -1,22 +1,15 @@
 //! Every demo project reads, resolves and solves, and governs as calculated by hand (`docs/hand-checks.md`).
 
-use std::path::Path;
-
 use spanfolio::model::{Effect, Model, Side};
+use spanfolio::project;
 use spanfolio::record::Record;
 
-use crate::support::{model, solved};
+use crate::support::{self, solved_demo};
 
 const DEMOS: [&str; 3] = ["gallery-floor", "workshop-portal", "pump-platform"];
 
-fn text(name: &str) -> String {
-    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("demo-projects").join(name);
-    let bytes = std::fs::read(folder.join("project.yaml")).expect("a demo project");
-    String::from_utf8(bytes).expect("UTF-8")
-}
-
 fn demo(name: &str) -> Model {
-    model(&text(name)).unwrap_or_else(|problems| panic!("{name}: {problems:#?}"))
+    project::read(&support::demo(name)).unwrap_or_else(|problems| panic!("{name}: {problems:#?}")).0
 }
 
 #[test]
@@ -49,7 +42,7 @@ fn near(computed: f64, by_hand: f64, tolerance: f64) {
 /// Simple beam: q L²/8, q L/2, 5 q L⁴/384 E I + q L²/8 G A_s (common practice, no source).
 #[test]
 fn the_joist_of_the_gallery_floor_is_a_simple_beam() {
-    let record = solved(&text("gallery-floor"));
+    let record = solved_demo("gallery-floor");
     let dead = 0.075 * 0.22 * 420.0 * 9.80665 + 540.0 * 0.4;
     let (strength, service) = (1.35 * dead + 1.5 * 2000.0, dead + 2000.0);
     let (moment, combination) = governing(&record, "J2", "strength", Effect::My, true);
@@ -65,7 +58,7 @@ fn the_joist_of_the_gallery_floor_is_a_simple_beam() {
 /// The weight that comes down on the post is what the beam's support carries.
 #[test]
 fn the_post_of_the_gallery_floor_carries_the_beams_reaction() {
-    let record = solved(&text("gallery-floor"));
+    let record = solved_demo("gallery-floor");
     let reaction = |case: &str| record.reaction("B", case).expect("a support")[2];
     let own = record.effect("P1", Effect::N, "G", 0.0, Side::After).expect("a place")
         - record.effect("P1", Effect::N, "G", 2.7, Side::Before).expect("a place");
@@ -77,7 +70,7 @@ fn the_post_of_the_gallery_floor_carries_the_beams_reaction() {
 /// The formula leaves out axial and shear deformation: half a per cent.
 #[test]
 fn the_portal_thrusts_as_published() {
-    let record = solved(&text("workshop-portal"));
+    let record = solved_demo("workshop-portal");
     let second = |name: &str| record.model.sections[name].properties["I_y"];
     let (span, height, rise) = (17.0_f64, 5.2_f64, 1.5_f64);
     let slope = (8.5 * 8.5 + rise * rise).sqrt();
@@ -102,7 +95,7 @@ fn the_portal_thrusts_as_published() {
 /// Beam hinged at both ends with a force at midspan: F L/4 + q L²/8 (common practice, no source).
 #[test]
 fn the_beam_under_the_pump_is_a_simple_beam() {
-    let record = solved(&text("pump-platform"));
+    let record = solved_demo("pump-platform");
     const KIP: f64 = 4_448.221_615_260_5;
     const FOOT: f64 = 0.3048;
     let (length, force) = (8.0 * FOOT, |kip: f64| kip * KIP);

@@ -65,9 +65,10 @@ fn a_simple_beam_says_what_governs() {
         "# 4 Actions",
         "# 5 Combinations",
         "# 6 Effects",
-        "# 7 Self-check",
-        "# 8 Deferred",
-        "# 9 Appendix",
+        "# 7 Checks",
+        "# 8 Self-check",
+        "# 9 Deferred",
+        "# 10 Appendix",
     ] {
         assert!(markdown.contains(chapter), "no {chapter}");
     }

@@ -73,12 +73,27 @@ combinations:
 "#;
 
 /// One mistake each: what it is, the text taken out of [`GOOD`] and the text put in.
-pub(super) const SHAPE_ERRORS: [(&str, &str, &str); 35] = [
+pub(super) const SHAPE_ERRORS: [(&str, &str, &str); 38] = [
     ("unknown key with a near one", "uplift: anchored", "uplfit: anchored"),
     ("unknown key without a near one", "paper: A4", "perfume: A4"),
     ("unknown block", "precision: {significant: 4}", "colours: {red: 4}"),
     ("key of a later version", "purpose: strength, ", "purpose: strength, priority: 2, "),
-    ("block of a later version", "precision: {significant: 4}", "checks: []"),
+    ("checks that are no list", "precision: {significant: 4}", "checks: {}"),
+    (
+        "check without a reference",
+        "precision: {significant: 4}",
+        "checks: [{id: c, purpose: strength, members: all, title: t, demand: N, capacity: 1 kN}]",
+    ),
+    (
+        "check with a sheet and a demand",
+        "precision: {significant: 4}",
+        "checks: [{id: c, purpose: strength, members: all, sheet: sway, demand: N}]",
+    ),
+    (
+        "check of no purpose",
+        "precision: {significant: 4}",
+        "checks: [{id: c, members: all, sheet: sway}]",
+    ),
     ("span loading of a later version", "nature: live", "nature: live\n    by_span: true"),
     ("rules of a later version", "  written:\n", "  rules: []\n  written:\n"),
     ("missing key", "title: Self-weight and planks", "source: a drawing"),

@@ -1,12 +1,10 @@
 //! The Record: settled once, the same when written and read.
 
-use std::path::Path;
-
 use spanfolio::analysis::{self, evaluate};
 use spanfolio::model::{EFFECTS, Side};
 use spanfolio::record::Record;
 
-use crate::support::{model, solved};
+use crate::support::{model, solved, solved_demo};
 
 const BEAM: &str = "format: 1\n\
     project: {title: Beam, number: 1, revisions: [{mark: A, date: 2026-01-01, status: test}]}\n\
@@ -20,16 +18,9 @@ const BEAM: &str = "format: 1\n\
     load_cases:\n  Q: {title: Q, nature: imposed, loads: [{member: B2, uniform: 5 kN/m}]}\n\
     combinations: {written: [{title: all, purpose: strength, factors: {Q: 1.5}}]}\n";
 
-fn demo(name: &str) -> Record {
-    let path =
-        Path::new(env!("CARGO_MANIFEST_DIR")).join("demo-projects").join(name).join("project.yaml");
-    let text = String::from_utf8(std::fs::read(path).expect("a demo project")).expect("UTF-8");
-    solved(&text)
-}
-
 #[test]
 fn a_record_equals_itself_written_and_read() {
-    let demos = ["gallery-floor", "workshop-portal", "pump-platform"].map(demo);
+    let demos = ["gallery-floor", "workshop-portal", "pump-platform"].map(solved_demo);
     for record in demos.into_iter().chain([solved(BEAM)]) {
         let text = record.to_json();
         let read = Record::from_json(&text).expect("our own record");
