@@ -20,6 +20,7 @@ pub mod project;
 pub mod quantity;
 pub mod record;
 pub mod section;
+pub mod trial;
 
 use diagnostic::Diagnostic;
 use files::Sources;

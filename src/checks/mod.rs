@@ -50,12 +50,12 @@ pub struct CheckResult {
     pub further: usize,
 }
 
-/// What came out.
+/// What came out, the best first.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum Outcome {
     Satisfied,
-    NotSatisfied,
     Deferred,
+    NotSatisfied,
 }
 
 /// A check at its governing place, every step kept.
@@ -106,6 +106,16 @@ pub enum LineResult {
     },
 }
 
+impl CheckResult {
+    /// How bad it is: not satisfied is worse than deferred, deferred than satisfied; then the utilisation as
+    /// a share of its limit counts, and nothing is worse than a capacity that is not above zero.
+    #[must_use]
+    pub fn rank(&self, model: &Model) -> (Outcome, f64) {
+        let utilisation = self.governing.as_ref().and_then(|governing| governing.utilisation);
+        (self.outcome, utilisation.unwrap_or(f64::MAX) / model.checks[self.check].limit)
+    }
+}
+
 impl Outcome {
     /// The word of the record and the package.
     #[must_use]
@@ -132,6 +142,16 @@ pub fn check(
     solution: &Solution,
     governing: &Governing,
 ) -> Result<Checked, Vec<Diagnostic>> {
+    let checks = checks(model, solution)?;
+    let workings = agreement::workings(model, solution, governing, &checks)?;
+    Ok(Checked { checks, workings })
+}
+
+/// Evaluates every check, without the hand calculations.
+///
+/// # Errors
+/// As [`check`].
+pub fn checks(model: &Model, solution: &Solution) -> Result<Vec<CheckResult>, Vec<Diagnostic>> {
     let scales = fields::scales(model, solution);
     let pairs: Vec<(usize, usize)> = model
         .checks
@@ -151,11 +171,11 @@ pub fn check(
             }
         })
         .collect();
-    let mut checks = Vec::new();
+    let mut found = Vec::new();
     let mut problems: Vec<Diagnostic> = Vec::new();
     for result in results {
         match result {
-            Ok(result) => checks.push(result),
+            Ok(result) => found.push(result),
             // A mistake in a formula shows on every target: once is enough.
             Err(problem) => {
                 if problems.iter().all(|other| other.place != problem.place) {
@@ -164,11 +184,7 @@ pub fn check(
             }
         }
     }
-    if !problems.is_empty() {
-        return Err(problems);
-    }
-    let workings = agreement::workings(model, solution, governing, &checks)?;
-    Ok(Checked { checks, workings })
+    if problems.is_empty() { Ok(found) } else { Err(problems) }
 }
 
 /// One check on one target.

@@ -15,6 +15,7 @@ mod shell;
 mod solve;
 mod start;
 mod table;
+mod trial;
 
 use std::path::{Path, PathBuf};
 
@@ -64,6 +65,8 @@ enum Command {
     Solve(solve::Arguments),
     /// Write the calculation package into the project's `package` folder
     Issue(issue::Arguments),
+    /// Try the sections of a family in place of one section, lightest first
+    Try(trial::Arguments),
     /// Find sections, materials and check sheets, print their properties and source
     Catalogue(catalogue::CatalogueArgs),
     /// Print the JSON Schema of the project file, for editors
@@ -83,6 +86,7 @@ pub fn run(arguments: Arguments) -> Status {
         Command::Start(arguments) => start::run(&arguments),
         Command::Solve(arguments) => solve::run(&arguments),
         Command::Issue(arguments) => issue::run(&arguments),
+        Command::Try(arguments) => trial::run(&arguments),
         Command::Catalogue(arguments) => match catalogue::run(&arguments) {
             Ok(text) => {
                 anstream::print!("{text}");

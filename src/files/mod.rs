@@ -13,7 +13,7 @@ use std::collections::BTreeMap;
 use std::io;
 
 pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, folder, read};
-pub use write::{CONTENTS, PACKAGE, create, heal, write};
+pub use write::{CONTENTS, PACKAGE, create, heal, replace, write};
 
 use sha2::{Digest, Sha256};
 

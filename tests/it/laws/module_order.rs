@@ -2,7 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-const ORDER: [&str; 14] = [
+const ORDER: [&str; 15] = [
     "quantity",
     "diagnostic",
     "files",
@@ -13,6 +13,7 @@ const ORDER: [&str; 14] = [
     "project",
     "analysis",
     "checks",
+    "trial",
     "record",
     "figures",
     "package",
