@@ -286,8 +286,9 @@ impl Parser<'_> {
             return Ok(out);
         }
         loop {
-            let key = match (&self.spots[self.at].token, &self.spots[self.at + 1].token) {
-                (Token::Name(key), Token::Sign("=")) => Some(key.clone()),
+            let next = self.spots.get(self.at + 1).map(|spot| &spot.token);
+            let key = match (&self.spots[self.at].token, next) {
+                (Token::Name(key), Some(Token::Sign("="))) => Some(key.clone()),
                 _ => None,
             };
             if key.is_some() {

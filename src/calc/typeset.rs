@@ -74,7 +74,7 @@ impl Set<'_> {
             ExprKind::Read(index) => self.reading(*index, level),
             ExprKind::Negate(inner) => {
                 let row = Math::Row(vec![Math::Sign("-"), self.math(inner, 7)]);
-                bracketed(row, level >= PRODUCT)
+                bracketed(row, level > PRODUCT)
             }
             ExprKind::Not(inner) => Math::Row(vec![Math::Sign("¬"), self.math(inner, 7)]),
             ExprKind::Binary(Binary::Divide, left, right) => {

@@ -90,7 +90,8 @@ pub fn replace(
     edited.extend_from_slice(text.as_bytes());
     edited.extend_from_slice(&raw[*end..]);
     let beside = folder.join(format!(".{name}-new"));
-    fs::write(&beside, edited)
+    fs::File::create(&beside)
+        .and_then(|mut file| file.write_all(&edited))
         .and_then(|()| fs::rename(&beside, &path))
         .map_err(|error| unwritable(&path, &error))
 }

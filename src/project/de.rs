@@ -128,9 +128,15 @@ impl<'de> Deserializer<'de> for Reader<'de> {
         visitor: V,
     ) -> Result<V::Value, Error> {
         if name == KIND {
-            self.placed(visitor.visit_enum(ByKind(self)))
-        } else {
-            self.deserialize_any(visitor)
+            return self.placed(visitor.visit_enum(ByKind(self)));
+        }
+        match self {
+            // A word that names a variant without content.
+            Self::Node(Node { kind: Kind::Leaf(word), .. }) => {
+                let word: StrDeserializer<'_, Error> = word.as_str().into_deserializer();
+                self.placed(visitor.visit_enum(word))
+            }
+            _ => self.deserialize_any(visitor),
         }
     }
 

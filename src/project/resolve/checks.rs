@@ -70,6 +70,7 @@ fn check(
         None => None,
         Some(id) => match given.sheets.find(id) {
             Ok(used) => Some((used, id.place(), format!("sheet `{id}`: "))),
+            Err(_) if given.sheets.incomplete => return None,
             Err(near) => {
                 reader.problem(
                     Diagnostic::error("unknown-sheet", format!("no check sheet named `{id}`"))
@@ -308,6 +309,7 @@ fn targets(
         return None;
     }
     stray(reader, written, on_members, on_nodes);
+    let before = reader.found.len();
     let found = if on_members {
         of_members(reader, written, groups, model)
     } else if on_nodes {
@@ -316,8 +318,11 @@ fn targets(
         of_structure(reader, written, model)
     }?;
     if found.is_empty() {
-        let message = format!("the check `{}` is made on nothing", written.id);
-        reader.error("empty", message, written.id.place());
+        // Names that are not there are reported by themselves.
+        if reader.found.len() == before {
+            let message = format!("the check `{}` is made on nothing", written.id);
+            reader.error("empty", message, written.id.place());
+        }
         return None;
     }
     Some(found)

@@ -15,6 +15,8 @@ const FOLDER: &str = "checks/";
 #[derive(Debug, Default)]
 pub(super) struct Sheets<'s> {
     own: Vec<OwnSheet<'s>>,
+    /// Some sheet was wrong and is reported: an unknown id may be its.
+    pub(super) incomplete: bool,
 }
 
 #[derive(Debug)]
@@ -35,6 +37,7 @@ pub(super) struct Used<'s> {
 /// Reads the project's own sheets.
 pub(super) fn sheets<'s>(reader: &mut Reader, sources: &'s Sources) -> Sheets<'s> {
     let mut own: Vec<OwnSheet<'s>> = Vec::new();
+    let mut incomplete = false;
     for file in sources.files.keys().filter(|path| path.starts_with(FOLDER)) {
         if !file.ends_with(".yaml") {
             continue;
@@ -52,6 +55,7 @@ pub(super) fn sheets<'s>(reader: &mut Reader, sources: &'s Sources) -> Sheets<'s
                 own.push(OwnSheet { sheet, file, text, tree });
             }
             Err(problems) => {
+                incomplete = true;
                 for mut problem in problems {
                     if let Some(place) = &mut problem.place {
                         place.file.clone_from(file);
@@ -61,7 +65,7 @@ pub(super) fn sheets<'s>(reader: &mut Reader, sources: &'s Sources) -> Sheets<'s
             }
         }
     }
-    Sheets { own }
+    Sheets { own, incomplete }
 }
 
 fn read(text: &str) -> Result<(Sheet, Node), Vec<Diagnostic>> {

@@ -1,5 +1,7 @@
 //! See the files beside this one.
 
+mod checks;
+mod formulas;
 mod frames;
 mod governing;
 mod module_order;
