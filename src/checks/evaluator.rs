@@ -197,7 +197,8 @@ impl Problem {
         let state = combination
             .map(|index| format!(" in {}", task.model.combinations[index].number))
             .unwrap_or_default();
-        let place = x.map(|x| format!(" at x = {x:.6} m")).unwrap_or_default();
+        let place =
+            x.map(|x| format!(" at x = {} m", crate::quantity::print(x, 6))).unwrap_or_default();
         self.diagnostic.label(format!("check `{}` on {target}{state}{place}", check.id))
     }
 }

@@ -53,8 +53,8 @@ pub(super) struct Renderer<'r> {
     context: Value,
     /// Templates of the project, by name.
     own: BTreeMap<String, String>,
-    /// Narrative files as read, by path.
-    narrative: BTreeMap<String, String>,
+    /// Narrative files by path: as read, and as the template that is left of each.
+    narrative: BTreeMap<String, (String, String)>,
 }
 
 impl<'r> Renderer<'r> {
@@ -78,6 +78,11 @@ impl<'r> Renderer<'r> {
         environment.set_formatter(format);
         let mut templates = own.clone();
         let (files, blocks) = narrative::templates(record, sources);
+        let read = |(path, template): &(String, String)| {
+            let text = sources.text(path).unwrap_or_default().to_owned();
+            (path.clone(), (text, template.clone()))
+        };
+        let narrative = files.iter().map(read).collect();
         templates.extend(files);
         environment.set_loader(move |name| {
             let built_in = || BUILT_IN.iter().find(|(own, _)| *own == name).map(|(_, text)| *text);
@@ -91,9 +96,6 @@ impl<'r> Renderer<'r> {
             let text = state.env().get_template("block.md")?.render(block)?;
             Ok::<Value, Error>(Value::from_safe_string(text))
         });
-        let of = |file: &String| Some((file.clone(), sources.text(file)?.to_owned()));
-        let narrative = record.narrative.iter().filter_map(|narrative| of(&narrative.file));
-        let narrative = narrative.collect();
         Self { environment, context: Value::from(Serde(context)), own, narrative }
     }
 
@@ -119,27 +121,36 @@ impl<'r> Renderer<'r> {
         if self.own.contains_key(file) {
             let range = deepest.range().unwrap_or(0..0);
             problem = problem.at(Place { file: format!("templates/{file}"), range });
-        } else if let Some(text) = self.narrative.get(file) {
+        } else if let Some((text, template)) = self.narrative.get(file) {
             problem = Diagnostic::error("narrative", detail);
-            let range = deepest.line().map_or(0..0, |line| line_of(text, line));
+            let range = deepest.line().map_or(0..0, |line| {
+                in_line(text, template, line, &deepest.range().unwrap_or_default())
+            });
             problem = problem.at(Place { file: file.to_owned(), range });
         }
         problem
     }
 }
 
-/// Bytes of a line counted from 1, without the blanks at its ends. Cutting blocks out of the narrative leaves
-/// its lines where they were.
-fn line_of(text: &str, number: usize) -> Range<usize> {
-    let mut at = 0;
-    for (index, line) in text.split_inclusive('\n').enumerate() {
-        if index + 1 == number {
-            let start = at + line.len() - line.trim_start().len();
-            return start..(at + line.trim_end().len()).max(start);
+/// A stretch of a template as a stretch of the file it was cut from: cutting leaves lines where they were,
+/// and all but the blocks' own as they were. Where it does not lie within its line, the whole line.
+fn in_line(text: &str, template: &str, number: usize, range: &Range<usize>) -> Range<usize> {
+    let line = |of: &str| -> Range<usize> {
+        let mut at = 0;
+        for (index, line) in of.split_inclusive('\n').enumerate() {
+            if index + 1 == number {
+                return at..at + line.trim_end().len();
+            }
+            at += line.len();
         }
-        at += line.len();
+        of.len()..of.len()
+    };
+    let (own, cut) = (line(text), line(template));
+    let inside = cut.start <= range.start && range.end <= cut.end && !range.is_empty();
+    if inside && text[own.clone()] == template[cut.clone()] {
+        return own.start + range.start - cut.start..own.start + range.end - cut.start;
     }
-    text.len()..text.len()
+    own
 }
 
 fn no_block(number: usize) -> Error {

@@ -482,6 +482,7 @@ fn bind(
                 .iter()
                 .map(|(reading, place)| match model.bind(*on, reading) {
                     Ok(bound) => Some(bound),
+                    Err(_) if formulas.is_broken(&reading.name) => None,
                     Err(problem) => {
                         if !reported.contains(&problem.message) {
                             reported.push(problem.message.clone());

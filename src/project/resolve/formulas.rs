@@ -38,9 +38,16 @@ pub(super) struct Formulas {
     /// Every reading, each once, with the formula in which it stands first.
     pub(super) readings: Vec<(crate::calc::Reading, Place)>,
     pub(super) steps: Vec<Step>,
+    /// Names of steps that were wrong and are reported: what reads them stays silent.
+    broken: Vec<String>,
 }
 
 impl Formulas {
+    /// Whether a reading that is not in reach is one that was reported already.
+    pub(super) fn is_broken(&self, name: &str) -> bool {
+        self.broken.iter().any(|broken| broken == name)
+    }
+
     /// Adds a step whose name later formulas read.
     pub(super) fn step(
         &mut self,
@@ -64,8 +71,11 @@ impl Formulas {
             reader.error("duplicate-name", message, place);
             return;
         }
-        if let Some(formula) = self.placed(reader, source, true) {
-            self.steps.push(Step { symbol: name.to_owned(), formula, meaning, clause });
+        match self.placed(reader, source, true) {
+            Some(formula) => {
+                self.steps.push(Step { symbol: name.to_owned(), formula, meaning, clause });
+            }
+            None => self.broken.push(name.to_owned()),
         }
     }
 

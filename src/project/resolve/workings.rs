@@ -64,6 +64,7 @@ fn bind(
         .iter()
         .map(|(reading, place)| match model.bind_result(reading, ids) {
             Ok(bound) => Some(bound),
+            Err(_) if formulas.is_broken(&reading.name) => None,
             Err(mut problem) => {
                 problem.known.extend(formulas.steps.iter().map(|step| step.symbol.clone()));
                 unbound(reader, &reading.name, problem, "", place.clone());

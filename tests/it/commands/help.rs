@@ -21,6 +21,7 @@ fn help_lists_the_commands() {
       start        Set up a new project folder from a small working example
       solve        Solve a project and print what governs; writes nothing
       issue        Write the calculation package into the project's `package` folder
+      try          Try the sections of a family in place of one section, lightest first
       catalogue    Find sections, materials and check sheets, print their properties and source
       schema       Print the JSON Schema of the project file, for editors
       completions  Print shell completions

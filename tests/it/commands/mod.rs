@@ -1,9 +1,11 @@
 //! The built program, run the way an engineer runs it.
 
 mod catalogue;
+mod checks;
 mod files;
 mod help;
 mod issue;
 mod project;
 mod solve;
 mod start;
+mod trial;

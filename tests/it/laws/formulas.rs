@@ -60,7 +60,7 @@ fn values_are_as_calculated_by_hand() {
         ("10 kN/m * (6 m)^2 / 8", 45e3, Dimension::MOMENT),
         ("45 kN m / 557 cm3", 80.789_946_140_035_9e6, Dimension::PRESSURE),
         ("210 GPa * 8356 cm^4 / (2 m)^2", 4.3869e6, Dimension::FORCE),
-        ("2 kip ft / (3 ft)", 2.0 * 4448.221_615_260_5 / 3.0, Dimension::FORCE),
+        ("2 kip ft / (3 ft)", 2.0 * 4_448.221_615_260_5 / 3.0, Dimension::FORCE),
         ("sqrt(16 m^2)", 4.0, Dimension::LENGTH),
         ("(27 m^3)^(1/3)", 3.0, Dimension::LENGTH),
         ("abs(-3 kN)", 3e3, Dimension::FORCE),
@@ -162,7 +162,9 @@ fn too_long_and_too_deep_are_refused() {
     let deep = format!("{}1{}", "(".repeat(60), ")".repeat(60));
     assert!(formula(&deep).unwrap_err().message.contains("nests at most"));
     assert!(formula(&"1+".repeat(3_000)).unwrap_err().message.contains("at most 4000 characters"));
-    assert!(formula(&format!("1{}", "+1".repeat(900))).unwrap_err().message.contains("at most 1000"));
+    assert!(
+        formula(&format!("1{}", "+1".repeat(900))).unwrap_err().message.contains("at most 1000")
+    );
     assert!(formula(&format!("1{}", "+1".repeat(490))).is_ok());
 }
 
@@ -198,13 +200,11 @@ fn formulas_are_set_as_mathematics() {
         "effect('B1', 'M_y', 'max', purpose='strength')",
         "not a and b or c != 2 kN/m2",
     ];
-    let set: Vec<String> = texts
-        .iter()
-        .map(|text| latex(&formula(text).expect("a formula").symbols()))
-        .collect();
+    let set: Vec<String> =
+        texts.iter().map(|text| latex(&formula(text).expect("a formula").symbols())).collect();
     assert_snapshot!(set.join("\n"), @r"
     \frac{M_{y}}{W_{\mathrm{el},y}}
-    \left( - {a}^{2}\right) \cdot \left(b - \left(c + d\right)\right)
+     - {a}^{2} \cdot \left(b - \left(c + d\right)\right)
     \bar{\lambda}_{\mathrm{LT}} \ge 0.4
     \sqrt{{\sigma}^{2} + 3 \cdot {\tau}^{2}}
     \left\lvert x\right\rvert  + \left\lfloor y\right\rfloor  + \left\lceil z\right\rceil 
@@ -235,7 +235,13 @@ fn a_step_shows_formula_values_and_result() {
         step("if x > 0 then 2 * x else x", &[("3", "")], &[0], ("6", "")),
         step(
             "1.35 * (g_roof + g_services + g_self_weight) * b_spacing + 1.5 * q_snow * b_spacing",
-            &[("0.25", "kN/m²"), ("0.35", "kN/m²"), ("0.11", "kN/m²"), ("5.5", "m"), ("0.72", "kN/m²")],
+            &[
+                ("0.25", "kN/m²"),
+                ("0.35", "kN/m²"),
+                ("0.11", "kN/m²"),
+                ("5.5", "m"),
+                ("0.72", "kN/m²"),
+            ],
             &[],
             ("11.21", "kN/m"),
         ),
@@ -276,7 +282,8 @@ fn expressions() -> impl Strategy<Value = String> {
             (inner.clone(), 0..4_u32).prop_map(|(a, n)| format!("({a})^{n}")),
             (
                 prop::sample::select(vec![
-                    "sqrt", "abs", "sin", "cos", "tan", "exp", "ln", "log10", "atan", "floor", "ceil"
+                    "sqrt", "abs", "sin", "cos", "tan", "exp", "ln", "log10", "atan", "floor",
+                    "ceil"
                 ]),
                 inner
             )

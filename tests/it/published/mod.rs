@@ -2,6 +2,7 @@
 
 mod case;
 mod catalogue;
+mod checks;
 mod compare;
 mod families;
 mod sections;
