@@ -106,16 +106,6 @@ pub enum LineResult {
     },
 }
 
-impl CheckResult {
-    /// How bad it is: not satisfied is worse than deferred, deferred than satisfied; then the utilisation as
-    /// a share of its limit counts, and nothing is worse than a capacity that is not above zero.
-    #[must_use]
-    pub fn rank(&self, model: &Model) -> (Outcome, f64) {
-        let utilisation = self.governing.as_ref().and_then(|governing| governing.utilisation);
-        (self.outcome, utilisation.unwrap_or(f64::MAX) / model.checks[self.check].limit)
-    }
-}
-
 impl Outcome {
     /// The word of the record and the package.
     #[must_use]

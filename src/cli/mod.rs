@@ -33,7 +33,8 @@ pub enum Status {
     CouldNot = 1,
     /// The command line or the project is wrong.
     Wrong = 2,
-    /// A check is not satisfied, or deferred without being named in `basis.deferred`.
+    /// A check is not satisfied, or deferred without being named in `basis.deferred`; of `try`: so with
+    /// every section tried.
     NotSatisfied = 3,
 }
 

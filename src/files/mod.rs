@@ -4,16 +4,19 @@
 //! - A project is read once, whole, before anything is computed; text has LF line ends and no byte-order
 //!   mark.
 //! - Nothing outside the project's own folder is read: no `..`, no absolute path, no link out.
-//! - Writing is all or nothing: beside the old package, then exchanged by two renames.
+//! - Writing is all or nothing: beside the old package, then exchanged by two renames; a changed project
+//!   file likewise by one.
 
+mod edit;
 mod read;
 mod write;
 
 use std::collections::BTreeMap;
 use std::io;
 
+pub use edit::edit;
 pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, folder, read};
-pub use write::{CONTENTS, PACKAGE, create, heal, replace, write};
+pub use write::{CONTENTS, PACKAGE, create, heal, write};
 
 use sha2::{Digest, Sha256};
 

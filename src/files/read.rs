@@ -16,7 +16,7 @@ pub const MOST_FILES: usize = 500;
 /// Folders inside each other below the project's own.
 const DEEPEST: usize = 8;
 
-const PROJECT: &str = "project.yaml";
+pub(super) const PROJECT: &str = "project.yaml";
 /// Folders read whole, apart from files whose name begins with a point.
 const FOLDERS: [&str; 3] = ["checks", "narrative", "templates"];
 
@@ -152,9 +152,13 @@ impl Reader {
             return Err(Diagnostic::error("too-large", message));
         }
         let text = String::from_utf8(bytes).map_err(|error| not_text(path, &error))?;
-        let text = text.strip_prefix('\u{feff}').unwrap_or(&text);
-        Ok(text.replace("\r\n", "\n"))
+        Ok(as_text(&text))
     }
+}
+
+/// The text of a file: without byte-order mark, line ends LF.
+pub(super) fn as_text(raw: &str) -> String {
+    raw.strip_prefix('\u{feff}').unwrap_or(raw).replace("\r\n", "\n")
 }
 
 fn unreadable(path: &Path, reason: &str) -> Diagnostic {

@@ -12,7 +12,6 @@
 use std::collections::{BTreeMap, BTreeSet};
 use std::fs;
 use std::io::{self, Write as _};
-use std::ops::Range;
 use std::path::{Component, Path};
 
 use sha2::{Digest, Sha256};
@@ -60,40 +59,6 @@ pub fn heal(folder: &Path) -> Result<(), Diagnostic> {
         }
     }
     Ok(())
-}
-
-/// Replaces a stretch of a text file, counted with LF line ends and without a byte-order mark as
-/// [`super::Sources`] holds it; everything else, line ends included, stays as it is. Written beside, then
-/// exchanged by one rename.
-///
-/// # Errors
-/// When the file cannot be read or is no longer what was read, or the disk refuses.
-pub fn replace(
-    folder: &Path,
-    name: &str,
-    range: &Range<usize>,
-    text: &str,
-) -> Result<(), Diagnostic> {
-    let path = folder.join(name);
-    let raw = fs::read(&path).map_err(|error| unwritable(&path, &error))?;
-    let mark = if raw.starts_with("\u{feff}".as_bytes()) { 3 } else { 0 };
-    // Where the bytes of the text with LF line ends stand in the file.
-    let mut places: Vec<usize> = (mark..raw.len())
-        .filter(|at| !(raw[*at] == b'\r' && raw.get(at + 1) == Some(&b'\n')))
-        .collect();
-    places.push(raw.len());
-    let (Some(start), Some(end)) = (places.get(range.start), places.get(range.end)) else {
-        let message = format!("`{}` changed while it was being edited", path.display());
-        return Err(Diagnostic::error("cannot-write", message));
-    };
-    let mut edited = raw[..*start].to_vec();
-    edited.extend_from_slice(text.as_bytes());
-    edited.extend_from_slice(&raw[*end..]);
-    let beside = folder.join(format!(".{name}-new"));
-    fs::File::create(&beside)
-        .and_then(|mut file| file.write_all(&edited))
-        .and_then(|()| fs::rename(&beside, &path))
-        .map_err(|error| unwritable(&path, &error))
 }
 
 /// Fills a new or empty folder with files, for a new project.
@@ -215,7 +180,7 @@ fn list(folder: &Path, prefix: &str, found: &mut Vec<String>) -> io::Result<()> 
     Ok(())
 }
 
-fn unwritable(path: &Path, error: &io::Error) -> Diagnostic {
+pub(super) fn unwritable(path: &Path, error: &io::Error) -> Diagnostic {
     Diagnostic::error(
         "cannot-write",
         format!("cannot write `{}`: {}", path.display(), reason(error)),

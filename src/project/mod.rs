@@ -18,7 +18,7 @@ pub mod text;
 mod tree;
 pub mod written;
 
-pub use edit::{Edit, section_edit};
+pub use edit::{Edit, section, section_edit, with_section};
 
 use crate::diagnostic::Diagnostic;
 use crate::files::Sources;
@@ -30,25 +30,6 @@ use crate::model::Model;
 /// Every problem found, in the order of the file; warnings never stand alone here.
 pub fn read(sources: &Sources) -> Result<(Model, Vec<Diagnostic>), Vec<Diagnostic>> {
     resolve::resolve(&written(sources)?, sources)
-}
-
-/// Resolves a project with another section of the catalogue in place of one of its sections.
-///
-/// # Errors
-/// Everything that does not hold with that section.
-pub fn with_section(
-    written: &written::Project,
-    sources: &Sources,
-    section: &str,
-    designation: &str,
-) -> Result<Model, Vec<Diagnostic>> {
-    let mut written = written.clone();
-    if let Some((_, name, section)) = written.sections.get_full_mut(section) {
-        let range = section.catalogue.as_ref().map_or(name.range(), |text| text.range()).clone();
-        section.catalogue = Some(text::Text::new(designation.to_owned(), range));
-        section.source = None;
-    }
-    resolve::resolve(&written, sources).map(|(model, _)| model)
 }
 
 /// Reads `project.yaml` as written: the three reading steps, without resolving anything.

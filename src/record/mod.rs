@@ -16,6 +16,7 @@ mod types;
 pub use checked::*;
 pub use look_up::{Band, Piece};
 pub use registers::printed_utilisation;
+pub use settle::rounded;
 pub use types::*;
 
 use crate::analysis::{Governing, SelfCheck, Solution};

@@ -277,7 +277,8 @@ fn largest<'v>(values: impl IntoIterator<Item = &'v f64>) -> f64 {
 }
 
 /// Twelve significant digits; never −0.
-fn rounded(value: f64) -> f64 {
+#[must_use]
+pub fn rounded(value: f64) -> f64 {
     if value == 0.0 {
         return 0.0;
     }

@@ -8,7 +8,7 @@ use crate::model::Frame;
 use crate::project::text::{Map, Text, Word};
 
 /// Catalogue designation, a shape with its dimensions, or properties given by hand.
-#[derive(Clone, Debug, Deserialize, JsonSchema)]
+#[derive(Clone, Debug, Default, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields)]
 pub struct Section {
     /// Designation in the catalogue.

@@ -123,6 +123,31 @@ fn help_of_start() {
 }
 
 #[test]
+fn help_of_try() {
+    assert_snapshot!(run(&["try", "--help"]).shown(), @r"
+    exit: 0
+    --- stdout
+    Try the sections of a family in place of one section, lightest first
+
+    Usage: spanfolio try [OPTIONS] --section <NAME> <PROJECT>
+
+    Arguments:
+      <PROJECT>  Folder of the project, or its `project.yaml`
+
+    Options:
+          --jobs <N>               Threads to use at most; the result does not depend on it
+          --section <NAME>         Name of the section in the project
+          --family <FAMILY>        Family of the catalogue; left out: that of the section as written
+          --adopt [<DESIGNATION>]  Write a designation into `project.yaml`: this one, or the lightest
+                                   that satisfies every check
+          --all                    Print those that do not satisfy as well
+          --json                   Print JSON, all values in SI base units
+      -h, --help                   Print help
+      -V, --version                Print version
+    ");
+}
+
+#[test]
 fn help_of_catalogue() {
     assert_snapshot!(run(&["catalogue", "--help"]).shown(), @r"
     exit: 0
