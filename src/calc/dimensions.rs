@@ -26,3 +26,9 @@ pub(super) fn raised(dimension: Dimension, power: f64) -> Option<Dimension> {
         angle: 0,
     })
 }
+
+/// No exponent is larger than any structural quantity needs; far larger ones would not be kept.
+pub(super) fn usable(dimension: Dimension) -> bool {
+    let Dimension { length, mass, time, temperature, angle } = dimension;
+    [length, mass, time, temperature, angle].iter().all(|n| f64::from(*n).abs() <= LARGEST)
+}

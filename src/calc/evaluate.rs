@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use super::dimensions::raised;
+use super::dimensions::{raised, usable};
 use super::expression::{Binary, Expr, ExprKind, Formula};
 use super::{CalcError, Function};
 use crate::quantity::{Dimension, Quantity};
@@ -56,6 +56,9 @@ impl Formula {
     pub fn evaluate(&self, readings: &[Value]) -> Result<Evaluation, CalcError> {
         let mut run = Run { readings, taken: Vec::new() };
         let value = run.value(&self.root)?;
+        if let Value::Number(quantity) = &value {
+            self.printable(*quantity)?;
+        }
         Ok(Evaluation { value, taken: run.taken })
     }
 
@@ -64,7 +67,21 @@ impl Formula {
     /// # Errors
     /// As [`Formula::evaluate`], and where the result is a truth value or a word.
     pub fn quantity(&self, readings: &[Value]) -> Result<Quantity, CalcError> {
-        Run { readings, taken: Vec::new() }.quantity(&self.root)
+        let quantity = Run { readings, taken: Vec::new() }.quantity(&self.root)?;
+        self.printable(quantity)?;
+        Ok(quantity)
+    }
+
+    /// The result can be printed in the unit stated for it.
+    fn printable(&self, quantity: Quantity) -> Result<(), CalcError> {
+        match &self.unit {
+            Some(unit) if unit.dimension != quantity.dimension => {
+                let what = quantity.dimension.name_with_article();
+                let message = format!("the result is {what}, which has no value in {}", unit.label);
+                Err(CalcError::new(message, self.root.range.clone()))
+            }
+            _ => Ok(()),
+        }
     }
 
     /// The value where it must be true or false.
@@ -126,13 +143,8 @@ impl Run<'_> {
     }
 
     fn quantity(&mut self, expr: &Expr) -> Result<Quantity, CalcError> {
-        match self.value(expr)? {
-            Value::Number(quantity) => Ok(quantity),
-            other => {
-                let message = format!("this is {}, expected a quantity", other.what());
-                Err(CalcError::new(message, expr.range.clone()))
-            }
-        }
+        let value = self.value(expr)?;
+        quantity_of(expr, &value)
     }
 
     fn truth(&mut self, expr: &Expr) -> Result<bool, CalcError> {
@@ -159,20 +171,26 @@ impl Run<'_> {
         left: &Expr,
         right: &Expr,
     ) -> Result<Value, CalcError> {
-        if matches!(binary, Binary::Equal | Binary::NotEqual)
-            && let (Value::Word(a), Value::Word(b)) = (self.value(left)?, self.value(right)?)
+        let (a, b) = (self.value(left)?, self.value(right)?);
+        if let (Binary::Equal | Binary::NotEqual, Value::Word(a), Value::Word(b)) = (binary, &a, &b)
         {
             return Ok(Value::Truth((a == b) == (binary == Binary::Equal)));
         }
-        let (a, b) = (self.quantity(left)?, self.quantity(right)?);
-        let number = |value, dimension| finite(expr, Quantity { value, dimension });
+        let (a, b) = (quantity_of(left, &a)?, quantity_of(right, &b)?);
+        let number = |value, dimension: Dimension| {
+            if !usable(dimension) {
+                let message = format!("a {} is beyond any use", dimension.name());
+                return Err(CalcError::new(message, expr.range.clone()));
+            }
+            finite(expr, Quantity { value, dimension }).map(Value::Number)
+        };
         match binary {
             Binary::Multiply => number(a.value * b.value, a.dimension * b.dimension),
             Binary::Divide if b.value == 0.0 => {
                 Err(CalcError::new("this divides by zero", right.range.clone()))
             }
             Binary::Divide => number(a.value / b.value, a.dimension / b.dimension),
-            Binary::Power => power(expr, left, right, a, b),
+            Binary::Power => power(expr, left, right, a, b).map(Value::Number),
             _ => {
                 let dimension = same(expr, binary.sign(), &[(left, a), (right, b)])?;
                 match binary {
@@ -238,10 +256,7 @@ impl Run<'_> {
                 plain(of_number(function, x.value, first)?)
             }
         };
-        match finite(expr, result)? {
-            Value::Number(quantity) => Ok(quantity),
-            Value::Truth(_) | Value::Word(_) => Ok(result),
-        }
+        finite(expr, result)
     }
 
     fn interpolated(
@@ -251,34 +266,30 @@ impl Run<'_> {
         rows: &[[Expr; 2]],
     ) -> Result<Quantity, CalcError> {
         let x = self.quantity(at)?;
-        let mut points: Vec<(Quantity, Quantity)> = Vec::with_capacity(rows.len());
+        let mut across = vec![(at, x)];
+        let mut up = Vec::with_capacity(rows.len());
         for [first, second] in rows {
-            let point = (self.quantity(first)?, self.quantity(second)?);
-            same(expr, "interpolate", &[(at, x), (first, point.0)])?;
-            if let Some(before) = points.last() {
-                same(expr, "interpolate", &[(second, point.1), (&rows[0][1], points[0].1)])?;
-                if point.0.value <= before.0.value {
-                    let message = "rows must ascend in their first entry";
-                    return Err(CalcError::new(message, first.range.clone()));
-                }
-            }
-            points.push(point);
+            across.push((first, self.quantity(first)?));
+            up.push((second, self.quantity(second)?));
         }
-        let between =
-            points.windows(2).find(|pair| pair[0].0.value <= x.value && x.value <= pair[1].0.value);
-        let Some([low, high]) = between else {
+        same(expr, "interpolate", &across)?;
+        let dimension = same(expr, "interpolate", &up)?;
+        let across = &across[1..];
+        if let Some(pair) = across.windows(2).find(|pair| pair[1].1.value <= pair[0].1.value) {
+            let message = "rows must ascend in their first entry";
+            return Err(CalcError::new(message, pair[1].0.range.clone()));
+        }
+        let between = across
+            .windows(2)
+            .position(|pair| pair[0].1.value <= x.value && x.value <= pair[1].1.value);
+        let Some(low) = between else {
             let message = "this lies outside the rows, and nothing is extrapolated";
             return Err(CalcError::new(message, at.range.clone()));
         };
-        let share = (x.value - low.0.value) / (high.0.value - low.0.value);
-        let value = low.1.value + share * (high.1.value - low.1.value);
-        // A nought among the second entries goes with every dimension.
-        let dimension = points
-            .iter()
-            .zip(rows)
-            .find(|(_, row)| !row[1].is_nought())
-            .map_or(low.1.dimension, |(point, _)| point.1.dimension);
-        Ok(Quantity { value, dimension })
+        let [x_low, x_high] = [low, low + 1].map(|row| across[row].1.value);
+        let [y_low, y_high] = [low, low + 1].map(|row| up[row].1.value);
+        let share = (x.value - x_low) / (x_high - x_low);
+        finite(expr, Quantity { value: y_low + share * (y_high - y_low), dimension })
     }
 
     fn chosen(&mut self, expr: &Expr, of: &Expr, rows: &[[Expr; 2]]) -> Result<Value, CalcError> {
@@ -306,6 +317,16 @@ impl Run<'_> {
             _ => "no row for this value".to_owned(),
         };
         Err(CalcError::new(said, of.range.clone()))
+    }
+}
+
+fn quantity_of(expr: &Expr, value: &Value) -> Result<Quantity, CalcError> {
+    match value {
+        Value::Number(quantity) => Ok(*quantity),
+        other => {
+            let message = format!("this is {}, expected a quantity", other.what());
+            Err(CalcError::new(message, expr.range.clone()))
+        }
     }
 }
 
@@ -339,7 +360,7 @@ fn power(
     right: &Expr,
     a: Quantity,
     b: Quantity,
-) -> Result<Value, CalcError> {
+) -> Result<Quantity, CalcError> {
     if b.dimension != Dimension::NONE {
         let message =
             format!("an exponent is a plain number, not {}", b.dimension.name_with_article());
@@ -390,9 +411,9 @@ fn equal(a: f64, b: f64) -> bool {
     (a - b).abs() <= 1e-12 * a.abs().max(b.abs())
 }
 
-fn finite(expr: &Expr, quantity: Quantity) -> Result<Value, CalcError> {
+fn finite(expr: &Expr, quantity: Quantity) -> Result<Quantity, CalcError> {
     if quantity.value.is_finite() {
-        return Ok(Value::Number(quantity));
+        return Ok(quantity);
     }
     Err(CalcError::new("the result is not a finite number", expr.range.clone()))
 }

@@ -98,23 +98,33 @@ fn spelled(sign: &str) -> &str {
 /// `W_el_y` → `W_{\mathrm{el},y}`, `lambda_bar_LT` → `\bar{\lambda}_{\mathrm{LT}}`, `span` → `\mathrm{span}`.
 pub(super) fn symbol(name: &str) -> String {
     let mut parts = name.split('_').filter(|part| !part.is_empty());
-    let base = letters(parts.next().unwrap_or(name));
+    let (base, digits) = greek_with_digits(parts.next().unwrap_or(name));
+    let base = letters(base);
     let mut rest = parts.peekable();
     let barred = rest.next_if(|part| *part == "bar").is_some();
     let base = if barred { format!("\\bar{{{base}}}") } else { base };
-    let indices: Vec<String> = rest.map(letters).collect();
+    // A letter has one place for all its indices.
+    let indices: Vec<String> = digits.into_iter().chain(rest).map(letters).collect();
     if indices.is_empty() { base } else { format!("{base}_{{{}}}", indices.join(",")) }
+}
+
+/// `sigma1` → `sigma`, `1`; other words whole.
+fn greek_with_digits(word: &str) -> (&str, Option<&str>) {
+    let stem = word.trim_end_matches(|c: char| c.is_ascii_digit());
+    if stem.len() < word.len() && GREEK.contains(&stem) {
+        (stem, Some(&word[stem.len()..]))
+    } else {
+        (word, None)
+    }
 }
 
 /// One letter leans, words stand upright; Greek by name, followed by digits or not.
 fn letters(word: &str) -> String {
-    let stem = word.trim_end_matches(|c: char| c.is_ascii_digit());
-    let digits = &word[stem.len()..];
+    let (stem, digits) = greek_with_digits(word);
     if GREEK.contains(&stem) {
-        return if digits.is_empty() {
-            format!("\\{stem}")
-        } else {
-            format!("\\{stem}_{{{digits}}}")
+        return match digits {
+            None => format!("\\{stem}"),
+            Some(digits) => format!("\\{stem}_{{{digits}}}"),
         };
     }
     if word.chars().count() == 1 || word.chars().all(|c| c.is_ascii_digit()) {
@@ -123,8 +133,12 @@ fn letters(word: &str) -> String {
     format!("\\mathrm{{{}}}", escaped(word))
 }
 
-/// A number as printed: thin spaces, the minus of print, `×10⁻⁵`.
+/// A number as printed: thin spaces, the minus of print, `×10⁻⁵`; or as written, `1.2e-5`.
 fn number(text: &str) -> String {
+    if let Some((mantissa, exponent)) = text.split_once(['e', 'E']) {
+        let exponent = exponent.trim_start_matches('+');
+        return format!("{} \\times 10^{{{exponent}}}", number(mantissa));
+    }
     let mut out = String::new();
     let mut raised = String::new();
     for c in text.chars() {

@@ -51,7 +51,7 @@ fn read(text: &str, takes_unit: bool) -> Result<Formula, CalcError> {
         let message = format!("a formula has at most {MOST} numbers, names and signs");
         return Err(CalcError::new(message, 0..text.len()));
     }
-    let mut parser = Parser { text, spots, at: 0, depth: 0, readings: Vec::new() };
+    let mut parser = Parser { text, spots, at: 0, depth: 0, parts: 0, readings: Vec::new() };
     let root = parser.expression(0)?;
     let body = parser.spots[parser.at].range.start;
     let unit = if takes_unit && parser.takes("[") {
@@ -73,6 +73,8 @@ struct Parser<'t> {
     spots: Vec<Spot>,
     at: usize,
     depth: usize,
+    /// Expressions so far, those that a chain of comparisons holds twice counted twice.
+    parts: usize,
     readings: Vec<Reading>,
 }
 
@@ -84,7 +86,9 @@ impl Parser<'_> {
         while let Some(binary) = self.binary().filter(|binary| binary.level() >= level) {
             self.at += 1;
             let compares = binary.level() == Binary::Less.level();
+            let before = self.parts;
             let right = self.expression(binary.level() + 1)?;
+            let copied = self.parts - before;
             let range = left.range.start..right.range.end;
             let middle = compares.then(|| right.clone());
             left = pair(binary, left, right, range);
@@ -93,6 +97,11 @@ impl Parser<'_> {
                 && next.level() == binary.level()
             {
                 self.at += 1;
+                self.parts += copied;
+                if self.parts > MOST {
+                    let message = "comparisons in a row nest too deep here";
+                    return Err(CalcError::new(message, middle.range.clone()));
+                }
                 let last = self.expression(next.level() + 1)?;
                 let range = left.range.start..last.range.end;
                 let second = pair(next, middle.clone(), last, middle.range.start..range.end);
@@ -105,6 +114,7 @@ impl Parser<'_> {
 
     fn deeper(&mut self) -> Result<(), CalcError> {
         self.depth += 1;
+        self.parts += 1;
         if self.depth > DEEPEST {
             let message = format!("a formula nests at most {DEEPEST} deep");
             return Err(CalcError::new(message, self.spots[self.at].range.clone()));
@@ -230,7 +240,7 @@ impl Parser<'_> {
             }
             ("interpolate" | "choose", _) => {
                 let value = Box::new(self.expression(0)?);
-                let rows = self.rows(name, opening)?;
+                let rows = self.rows(name, start, opening)?;
                 if name == "choose" {
                     ExprKind::Choose(value, rows)
                 } else {
@@ -256,7 +266,12 @@ impl Parser<'_> {
     }
 
     /// Rows of two behind semicolons: `; 0 m, 1.0; 10 m, 0.8)`.
-    fn rows(&mut self, name: &str, opening: &Range<usize>) -> Result<Vec<[Expr; 2]>, CalcError> {
+    fn rows(
+        &mut self,
+        name: &str,
+        start: usize,
+        opening: &Range<usize>,
+    ) -> Result<Vec<[Expr; 2]>, CalcError> {
         let mut rows = Vec::new();
         while self.takes(";") {
             let first = self.expression(0)?;
@@ -269,9 +284,9 @@ impl Parser<'_> {
         if rows.len() < least {
             let message =
                 format!("`{name}` needs at least {least} row{}", if least == 1 { "" } else { "s" });
-            return Err(CalcError::new(message, opening.start - name.len()..self.here().end).hint(
-                format!("write rows behind semicolons: `{name}(value; first, 1.0; second, 0.8)`"),
-            ));
+            return Err(CalcError::new(message, start..self.here().end).hint(format!(
+                "write rows behind semicolons: `{name}(value; first, 1.0; second, 0.8)`"
+            )));
         }
         self.close(opening)?;
         Ok(rows)

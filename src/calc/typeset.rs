@@ -9,7 +9,7 @@ use crate::quantity::parse_unit;
 pub enum Math {
     /// A symbol with its indices: `W_el_y` is W with `el`, `y`.
     Symbol(String),
-    /// A printed number with its unit, which may be empty.
+    /// A number, printed or as written in the formula, with its unit, which may be empty.
     Value(String, String),
     Text(String),
     /// An operator or relation, in one spelling: `+ - · < ≤ = ≠ ∧ ∨ ¬ ,`.
@@ -67,7 +67,9 @@ impl Set<'_> {
             ExprKind::Quantity { number, unit, .. } => {
                 // `kN/m2` is set as `kN/m²`.
                 let label = parse_unit(unit).map_or_else(|_| unit.clone(), |unit| unit.label);
-                bracketed(Math::Value(number.clone(), label), level >= POWER && !unit.is_empty())
+                let raised = number.contains(['e', 'E']);
+                let needed = level >= POWER && (!unit.is_empty() || raised);
+                bracketed(Math::Value(number.clone(), label), needed)
             }
             ExprKind::Pi => Math::Symbol("pi".to_owned()),
             ExprKind::Word(word) => Math::Text(word.clone()),
@@ -83,7 +85,9 @@ impl Set<'_> {
                 bracketed(fraction, level >= POWER)
             }
             ExprKind::Binary(Binary::Power, base, exponent) => {
-                Math::Power(Box::new(self.math(base, POWER)), Box::new(self.math(exponent, 0)))
+                let power =
+                    Math::Power(Box::new(self.math(base, POWER)), Box::new(self.math(exponent, 0)));
+                bracketed(power, level >= POWER)
             }
             ExprKind::Binary(binary, left, right) => self.binary(*binary, left, right, level),
             ExprKind::Call(function, arguments) => self.call(*function, arguments),
