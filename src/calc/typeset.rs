@@ -138,7 +138,9 @@ impl Set<'_> {
         let own = binary.level();
         let first = self.math(left, own);
         // What is subtracted keeps its brackets: a - (b + c).
-        let second = self.math(right, own + 1);
+        // So does what has a sign of its own: a - (-b).
+        let signed = own >= 5 && matches!(right.kind, ExprKind::Negate(_));
+        let second = self.math(right, if signed { POWER } else { own + 1 });
         let sign = match binary {
             Binary::Add => "+",
             Binary::Subtract => "-",
