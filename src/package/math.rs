@@ -20,7 +20,12 @@ impl Mathematics {
             .as_ref()
             .and_then(|converter| converter.convert_with_local_state(latex, display).ok());
         match converted {
-            Some(result) => result.mathml,
+            // MathML Core has no level of scripts on tables, and a formula of its own stands at the left as
+            // inline mathematics in its display style.
+            Some(result) => result
+                .mathml
+                .replace(" scriptlevel=\"0\"", "")
+                .replace("<math display=\"block\">", "<math class=\"formula\" displaystyle=\"true\">"),
             None => format!("<code>{}</code>", super::html::escaped(latex)),
         }
     }
