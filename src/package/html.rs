@@ -419,15 +419,22 @@ impl<'d> Body<'d> {
             self.html += &symbols(&description);
             return;
         };
-        // A drawing placed again, as narrative may, has no id of its own.
+        // A drawing placed again, as narrative may, has no id of its own, and its parts have others.
         let id = format!("figure-{}", figure.id);
-        let again = self.ids.contains(&id);
-        let named = if again { String::new() } else { format!(" id=\"{}\"", escaped(&id)) };
+        let times = self.ids.iter().filter(|other| **other == id).count();
+        let named = if times > 0 { String::new() } else { format!(" id=\"{}\"", escaped(&id)) };
+        let mut svg = figure.svg.trim().to_owned();
+        if times > 0 {
+            for part in ["title", "desc"] {
+                let own = format!("{}-{part}", figure.id);
+                svg = svg.replace(&own, &format!("{own}-{times}"));
+            }
+        }
         self.ids.push(id);
         let _ = write!(
             self.html,
             "<figure{named}>\n{}\n<figcaption>{}</figcaption>\n</figure>\n",
-            figure.svg.trim(),
+            svg,
             symbols(&description)
         );
     }
