@@ -269,11 +269,11 @@ fn mistakes_in_the_narrative_are_located_in_its_file() {
     8 | M = 1.5 * q * L^2 / (8 [kN m]  # largest moment
       |                        ^
     ## L / 8
-    error[formula]: a force cannot agree with a moment
-     --> [PROJECT]/narrative/by-hand.md:9:1
+    error[formula]: the result is a force, which has no value in kN m
+     --> [PROJECT]/narrative/by-hand.md:8:5
       |
-    9 | agree hand: M with effect('B1', 'M_y', 'max', purpose='strength') within 1 %
-      | ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^
+    8 | M = 1.5 * q * L / 8 [kN m]  # largest moment
+      |     ^^^^^^^^^^^^^^^
     ## 'lenght'
     error[unknown-name]: nothing named `lenght` is in reach here
      --> [PROJECT]/narrative/by-hand.md:7:5
