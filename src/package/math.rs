@@ -22,10 +22,10 @@ impl Mathematics {
         match converted {
             // MathML Core has no level of scripts on tables, and a formula of its own stands at the left as
             // inline mathematics in its display style.
-            Some(result) => result
-                .mathml
-                .replace(" scriptlevel=\"0\"", "")
-                .replace("<math display=\"block\">", "<math class=\"formula\" displaystyle=\"true\">"),
+            Some(result) => result.mathml.replace(" scriptlevel=\"0\"", "").replace(
+                "<math display=\"block\">",
+                "<math class=\"formula\" displaystyle=\"true\">",
+            ),
             None => format!("<code>{}</code>", super::html::escaped(latex)),
         }
     }

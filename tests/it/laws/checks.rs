@@ -515,3 +515,20 @@ fn every_sheet_of_the_catalogue_reads_as_one_of_the_project() {
         }
     }
 }
+
+#[test]
+fn a_step_states_only_a_unit_of_its_value() {
+    let (yaml, problem) =
+        refused(&own("let: {d: \"N / A [mm]\"}, demand: abs(M_y), capacity: 200 kN m"));
+    assert_eq!(problem.message, "the result is a force per area, which has no value in mm");
+    assert_eq!(part(&yaml, &problem), "N / A");
+}
+
+#[test]
+fn a_step_is_named_once_and_not_as_a_word_of_the_language() {
+    let (yaml, problem) =
+        refused(&own("let: {s: N / A, s: M_y}, demand: abs(M_y), capacity: 200 kN m"));
+    assert_eq!((problem.code, part(&yaml, &problem)), ("duplicate-key", "s"));
+    let (yaml, problem) = refused(&own("let: {sqrt: N / A}, demand: abs(M_y), capacity: 200 kN m"));
+    assert_eq!((problem.code, part(&yaml, &problem)), ("name", "sqrt"));
+}

@@ -9,3 +9,4 @@ mod quantities;
 mod record;
 mod sections;
 mod self_check;
+mod worst_place;

@@ -7,4 +7,5 @@ mod compare;
 mod families;
 mod sections;
 mod shapes;
+mod sheets;
 mod translate;
