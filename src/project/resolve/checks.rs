@@ -325,7 +325,14 @@ fn targets(
         }
         return None;
     }
-    Some(found)
+    // What is named twice, by itself and in a group say, is checked once.
+    let mut once: Vec<On> = Vec::with_capacity(found.len());
+    for on in found {
+        if !once.contains(&on) {
+            once.push(on);
+        }
+    }
+    Some(once)
 }
 
 /// Keys that only go with another kind of target.
@@ -374,12 +381,6 @@ fn of_members(
             members.extend(&groups[index].1);
         }
     }
-    let mut seen = Vec::new();
-    members.retain(|id| {
-        let first = !seen.contains(id);
-        seen.push(*id);
-        first
-    });
     let Some(spans) = &written.spans else {
         return Some(members.into_iter().map(|member| On::Member { member, span: None }).collect());
     };

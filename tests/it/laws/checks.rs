@@ -532,3 +532,14 @@ fn a_step_is_named_once_and_not_as_a_word_of_the_language() {
     let (yaml, problem) = refused(&own("let: {sqrt: N / A}, demand: abs(M_y), capacity: 200 kN m"));
     assert_eq!((problem.code, part(&yaml, &problem)), ("name", "sqrt"));
 }
+
+#[test]
+fn what_is_named_twice_is_checked_once() {
+    let count = |check: &str| record(check).checks.len();
+    let moment = "title: t, reference: r, demand: abs(M_y), capacity: 200 kN m";
+    assert_eq!(count(&format!("{{id: c, purpose: strength, members: [B1, B1], {moment}}}")), 1);
+    let spans = "members: [B1], spans: [2, 1, 2]";
+    assert_eq!(count(&format!("{{id: c, purpose: strength, {spans}, {moment}}}")), 2);
+    let uplift = "sheet: uplift, with: {holding: 3 kN}";
+    assert_eq!(count(&format!("{{id: c, purpose: strength, nodes: [A, B, A], {uplift}}}")), 2);
+}
