@@ -1,6 +1,8 @@
 //! Checks against published values: the utilisation is the published value over itself, and the sheets give
 //! what statics and strength of materials give by hand.
 
+mod sheets;
+
 use std::f64::consts::PI;
 use std::fmt::Write;
 

@@ -7,5 +7,4 @@ mod compare;
 mod families;
 mod sections;
 mod shapes;
-mod sheets;
 mod translate;

@@ -5,8 +5,8 @@ use std::f64::consts::PI;
 
 use spanfolio::record::Record;
 
-use super::case::{Case, Expected, Family};
-use super::translate::project_file;
+use crate::published::case::{Case, Expected, Family};
+use crate::published::translate::project_file;
 use crate::support::solved;
 
 /// Span over the deflection that is accepted.
@@ -86,17 +86,17 @@ fn utilisation(record: &Record, id: &str) -> f64 {
 
 #[test]
 fn single_span_beams() {
-    run(include_str!("data/A-single-span-beams.yaml"), 9, 11);
+    run(include_str!("../data/A-single-span-beams.yaml"), 9, 11);
 }
 
 #[test]
 fn continuous_beams() {
-    run(include_str!("data/B-continuous-beams.yaml"), 9, 8);
+    run(include_str!("../data/B-continuous-beams.yaml"), 9, 8);
 }
 
 #[test]
 fn combinations() {
-    run(include_str!("data/L-combinations.yaml"), 0, 3);
+    run(include_str!("../data/L-combinations.yaml"), 0, 3);
 }
 
 const HEAD: &str = "format: 1
