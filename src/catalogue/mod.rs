@@ -10,17 +10,21 @@
 //! - Values are SI.
 
 mod checks;
+mod expression;
 mod find;
 mod materials;
 mod names;
+mod rules;
 mod sections;
 mod table;
 
 pub use checks::{
     Sheet, SheetCondition, SheetInput, SheetShows, SheetStep, SheetTarget, sheet_texts, sheets,
 };
+pub use expression::{ExpressionError, Factor, KINDS, Term, branches};
 pub use find::{Entry, find};
 pub use materials::{CatalogueMaterial, material, material_tables};
+pub use rules::{Rule, RuleRow, RuleSet, rule, rule_sets};
 pub use sections::{CatalogueSection, Family, families, family, section};
 pub use table::Printed;
 

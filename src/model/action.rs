@@ -1,6 +1,6 @@
 //! Load cases and their loads, resolved to global axes and SI.
 
-use super::{BuildUpId, MemberId, NodeId, Origin};
+use super::{BuildUpId, CaseId, MemberId, NodeId, Origin};
 
 /// One load case.
 #[derive(Clone, Debug, PartialEq)]
@@ -9,11 +9,27 @@ pub struct LoadCase {
     pub title: String,
     pub nature: Nature,
     pub category: Option<String>,
+    /// ψ0, ψ1, ψ2 where stated.
+    pub psi: Option<[f64; 3]>,
+    pub relations: Relations,
     pub duration: Option<Duration>,
     pub source: Option<String>,
     pub self_weight: bool,
     pub loads: Vec<Load>,
     pub origin: Origin,
+}
+
+/// How a case acts with others.
+#[derive(Clone, Debug, Default, PartialEq, Eq)]
+pub struct Relations {
+    /// At most one case of this name acts at a time.
+    pub one_of: Option<String>,
+    /// Acts only when all of these act.
+    pub together_with: Vec<CaseId>,
+    /// Acts in the opposite sense too.
+    pub reverses: bool,
+    /// Permanent actions of one group are favourable or unfavourable together.
+    pub source_group: Option<String>,
 }
 
 /// Nature of an action, in the words of the standards.

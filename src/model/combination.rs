@@ -83,3 +83,28 @@ pub struct Combination {
     pub duration: Option<Duration>,
     pub origin: Origin,
 }
+
+/// A rule in use, with what it made.
+#[derive(Clone, Debug, PartialEq)]
+pub struct RuleUse {
+    pub rule: String,
+    /// Code, edition and clause; the source stated of a rule of the project.
+    pub reference: String,
+    pub annex: Option<String>,
+    pub purpose: Purpose,
+    /// `all subsets`, `maximal` or `as written`.
+    pub expansion: String,
+    /// Named factors as used.
+    pub values: Vec<(String, f64)>,
+    pub expressions: Vec<String>,
+    /// Combinations made and kept.
+    pub kept: usize,
+    /// Left out because another rule or row of the purpose made the same.
+    pub same: usize,
+    /// Those that can never govern, because others have the same or worse factors for every sign; `None`
+    /// where there are too many to tell.
+    pub dominated: Option<usize>,
+    /// The dominated ones were left out.
+    pub dropped: bool,
+    pub notes: Option<String>,
+}

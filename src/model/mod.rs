@@ -16,13 +16,14 @@ mod settings;
 mod structure;
 
 pub use action::{
-    Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Per, Target, Written,
+    Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Per, Relations,
+    Target, Written,
 };
 pub use check::{
     Agreement, Check, CheckTarget, Condition, DeflectionFrom, On, Placed, Shows, Slot, Step,
     Working, WorkingLine, located,
 };
-pub use combination::{Combination, Purpose};
+pub use combination::{Combination, Purpose, RuleUse};
 pub use effect::{EFFECTS, Effect, FORCES, STORED, Side};
 pub use reach::{Bound, Of, Query, Source, State, Unbound};
 pub use settings::{
@@ -88,6 +89,8 @@ pub struct Model {
     pub cases: Vec<LoadCase>,
     /// In the order written; `combinations[i].number` is what tables print.
     pub combinations: Vec<Combination>,
+    /// Rules in use with what they made, in order.
+    pub rules: Vec<RuleUse>,
     pub checks: Vec<Check>,
     /// Hand calculations of the narrative, in its order.
     pub workings: Vec<Working>,

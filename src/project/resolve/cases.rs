@@ -4,10 +4,12 @@ use super::about::words;
 use super::loads;
 use super::names::Names;
 use super::reader::Reader;
-use crate::model::{Direction, Load, LoadCase, LoadForm, LoadKind, MemberId, Model, Per, Written};
+use crate::model::{
+    CaseId, Direction, Load, LoadCase, LoadForm, LoadKind, MemberId, Model, Per, Relations, Written,
+};
 use crate::project::text::{Map, Text};
 use crate::project::written;
-use crate::quantity::STANDARD_GRAVITY;
+use crate::quantity::{Kind, STANDARD_GRAVITY};
 
 pub(super) fn cases(reader: &mut Reader, written: &Map<written::LoadCase>, model: &mut Model) {
     let mut names = Names::default();
@@ -19,6 +21,13 @@ pub(super) fn cases(reader: &mut Reader, written: &Map<written::LoadCase>, model
             title: case.title.to_string(),
             nature: case.nature.is,
             category: words(case.category.as_ref()),
+            psi: case.psi.as_ref().and_then(|psi| self::psi(reader, psi)),
+            relations: Relations {
+                one_of: words(case.one_of.as_ref()),
+                together_with: Vec::new(),
+                reverses: case.reverses.unwrap_or(false),
+                source_group: words(case.source_group.as_ref()),
+            },
             duration: case.duration.as_ref().map(|word| word.is),
             source: words(case.source.as_ref()),
             self_weight: !weighted.is_empty(),
@@ -30,6 +39,26 @@ pub(super) fn cases(reader: &mut Reader, written: &Map<written::LoadCase>, model
         }
         model.cases.push(out);
     }
+    // Cases can name those that are written after them.
+    for (index, case) in written.values().enumerate() {
+        let known: Vec<&str> = written.keys().map(Text::as_str).collect();
+        let found = case.together_with.iter().filter_map(|name| {
+            reader.find(name, "load case", "unknown-case", known.iter().copied()).map(CaseId)
+        });
+        model.cases[index].relations.together_with = found.collect();
+    }
+}
+
+fn psi(reader: &mut Reader, written: &[Text; 3]) -> Option<[f64; 3]> {
+    let read = written.each_ref().map(|text| {
+        let value = reader.quantity(text, Kind::Number)?;
+        if !(0.0..=1.0).contains(&value) {
+            reader.error("psi", format!("`{text}` is not between 0 and 1"), text.place());
+            return None;
+        }
+        Some(value)
+    });
+    Some([read[0]?, read[1]?, read[2]?])
 }
 
 /// The members whose weight acts, in order.

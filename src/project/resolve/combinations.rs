@@ -1,4 +1,4 @@
-//! Combinations written out.
+//! Combinations: those that rules make, then those written out.
 
 use super::about::words;
 use super::reader::Reader;
@@ -12,6 +12,7 @@ pub(super) fn combinations(
     written: &written::Combinations,
     model: &mut Model,
 ) {
+    super::rules::rules(reader, &written.rules, model);
     for combination in &written.written {
         let mut factors = Vec::new();
         for (name, text) in &combination.factors {

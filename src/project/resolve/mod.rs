@@ -9,6 +9,7 @@ mod about;
 mod cases;
 mod checks;
 mod combinations;
+mod expand;
 mod formulas;
 mod geometry;
 mod handed;
@@ -19,6 +20,7 @@ mod names;
 mod narrative;
 mod order;
 mod reader;
+mod rules;
 mod sections;
 mod sheets;
 mod stretch;
@@ -64,6 +66,7 @@ pub(super) fn resolve(
         members: Vec::new(),
         cases: Vec::new(),
         combinations: Vec::new(),
+        rules: Vec::new(),
         checks: Vec::new(),
         workings: Vec::new(),
         narrative: Vec::new(),

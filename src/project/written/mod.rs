@@ -18,7 +18,7 @@ pub use about::{
     ProjectInfo, Revision, Standard, Units,
 };
 pub use actions::{
-    Combination, Combinations, Components, Load, LoadCase, Movement, SelfWeight, Warming,
+    Combination, Combinations, Components, Load, LoadCase, Movement, Rule, SelfWeight, Warming,
 };
 pub use checks::{Check, Condition, Members, Narrative, OpenPoint, Placed};
 pub use parts::{

@@ -50,6 +50,10 @@ plain! {
     AllWord { All }
     /// The part of a combination that counts.
     Only { Variable }
+    /// Which combinations are made of a rule.
+    Expansion { AllSubsets, Maximal, AsWritten }
+    /// What happens to combinations that can never govern.
+    Dominated { Keep, Drop }
     /// Chapters that narrative can follow.
     Chapter { Cover, Summary, Basis, Model, Actions, Combinations, Effects, Checks, SelfCheck, Deferred }
     /// Shapes that sections are made of.
@@ -128,6 +132,12 @@ words! {
     Duration: "Duration", "Load duration class, for timber." {
         "permanent" => Self::Permanent, "long" => Self::Long, "medium" => Self::Medium,
         "short" => Self::Short, "instantaneous" => Self::Instantaneous,
+    }
+    Expansion: "Expansion", "Which combinations are made of a rule." {
+        "all subsets" => Self::AllSubsets, "maximal" => Self::Maximal, "as written" => Self::AsWritten,
+    }
+    Dominated: "Dominated", "What happens to combinations that can never govern." {
+        "keep" => Self::Keep, "drop" => Self::Drop,
     }
     AllWord: "All", "Every one." { "all" => Self::All }
     Only: "Only", "The part of each combination that counts." { "variable" => Self::Variable }

@@ -3,6 +3,7 @@
 mod case;
 mod catalogue;
 mod checks;
+mod combinations;
 mod compare;
 mod families;
 mod sections;
