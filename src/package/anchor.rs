@@ -4,15 +4,19 @@
 //! numbers; an empty text is filled in. Ids of headings are made as the usual git hosts make them, so that the
 //! same link works in the Markdown and in the page.
 
-/// The id that a heading gets: lower case, spaces to hyphens, everything but letters, digits, `-` and `_`
-/// left out.
+use unicode_normalization::char::is_combining_mark;
+
+/// The id that a heading gets: lower case, spaces to hyphens, everything but letters with their marks, digits,
+/// `-` and `_` left out; `²` and `½` are no digits.
 pub(super) fn anchor(heading: &str) -> String {
     let mut out = String::new();
     for c in heading.trim().chars() {
         match c {
             ' ' => out.push('-'),
             '-' | '_' => out.push(c),
-            c if c.is_alphanumeric() => out.extend(c.to_lowercase()),
+            c if c.is_alphabetic() || c.is_ascii_digit() || is_combining_mark(c) => {
+                out.extend(c.to_lowercase());
+            }
             _ => {}
         }
     }

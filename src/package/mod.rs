@@ -22,7 +22,7 @@ mod templates;
 
 use std::collections::BTreeMap;
 
-use crate::diagnostic::Diagnostic;
+use crate::diagnostic::{Diagnostic, Place};
 use crate::figures::{Figure, figures, method};
 use crate::files::Sources;
 use crate::record::Record;
@@ -61,6 +61,7 @@ pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagno
                 "unknown-link",
                 format!("a link leads to `#{id}`, which is not there"),
             )
+            .at(place_of_link(id, sources))
         };
         return Err(missing.iter().map(problem).collect());
     }
@@ -72,6 +73,16 @@ pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagno
         package.insert(format!("figures/{}.svg", figure.id), figure.svg.into_bytes());
     }
     Ok(package)
+}
+
+/// Where the project's own text has a link to an id, in its first file that has one.
+fn place_of_link(id: &str, sources: &Sources) -> Option<Place> {
+    let link = format!("](#{id})");
+    let own = |path: &&String| path.starts_with("narrative/") || path.starts_with("templates/");
+    sources.files.keys().filter(own).find_map(|path| {
+        let start = sources.text(path)?.find(&link)? + "](".len();
+        Some(Place { file: path.clone(), range: start..start + 1 + id.len() })
+    })
 }
 
 /// The Markdown of all chapters, numbered, links led to their places.

@@ -3,6 +3,7 @@
 mod demos;
 mod figures;
 mod package;
+mod page;
 mod project_file;
 mod project_schema;
 mod project_untrusted;
