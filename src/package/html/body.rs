@@ -220,22 +220,17 @@ impl<'d> Body<'d> {
     /// The text of the present paragraph so far, which ends with it.
     fn paragraph_text(&mut self) -> Option<String> {
         let text = self.html.split_off(self.paragraph.take()?);
-        Some(text.trim().to_owned()).filter(|text| !text.is_empty())
+        // Not `trim`: a paragraph of one no-break space is there to be seen.
+        Some(text.trim_matches([' ', '\n']).to_owned()).filter(|text| !text.is_empty())
     }
 
     fn end_paragraph(&mut self, before_table: bool) {
-        match self.paragraph_text() {
-            Some(text)
-                if before_table
-                    && TABLE.starts_with("**Table ")
-                    && text.starts_with("<strong>Table ") =>
-            {
-                self.caption = Some(text);
-            }
-            Some(text) => {
-                let _ = writeln!(self.html, "<p>{text}</p>");
-            }
-            None => {}
+        let Some(text) = self.paragraph_text() else { return };
+        let caption = format!("<strong>{}", TABLE.trim_start_matches('*'));
+        if before_table && text.starts_with(&caption) {
+            self.caption = Some(text);
+        } else {
+            let _ = writeln!(self.html, "<p>{text}</p>");
         }
     }
 
