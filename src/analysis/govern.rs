@@ -4,11 +4,16 @@ use rayon::prelude::*;
 
 use super::combine::superpose;
 use super::extremes::{FLAT, Found, Stretch, bound, extremes};
+use super::loading_by_span::choices;
+use super::roots::{shifted, sign_changes};
 use super::{
-    Extreme, Extremes, Fields, Governing, GoverningMember, MemberSolution, Runner, Segment,
-    Solution, evaluate,
+    Extreme, Extremes, Fields, Governing, GoverningMember, MemberSolution, Polynomial, Runner,
+    Segment, Solution, evaluate,
 };
-use crate::model::{EFFECTS, FORCES, Member, Model, NodeId, Purpose, Side};
+use crate::model::{CaseId, EFFECTS, Member, Model, NodeId, Purpose, Side};
+
+/// Places closer than this share of a segment are one.
+const SAME_PLACE: f64 = 1e-12;
 
 pub(super) fn govern(model: &Model, solution: &Solution) -> Governing {
     let members: Vec<usize> = (0..model.members.len()).collect();
@@ -41,21 +46,31 @@ fn member(model: &Model, member: &Member, solution: &MemberSolution) -> Governin
         let mut wholly = Best::new();
         let mut by_span: Vec<Best> = member.spans.iter().map(|_| Best::new()).collect();
         for combination in combinations {
-            let fields: Vec<Fields> =
-                segments.iter().map(|segment| combined(model, combination, segment)).collect();
-            wholly.take(combination, segments, &fields);
-            for (span, best) in member.spans.iter().zip(&mut by_span) {
-                let inside = |segment: &Segment| {
-                    let middle = 0.5 * (segment.from + segment.to);
-                    span.from < middle && middle < span.to
-                };
-                let first = segments.iter().position(inside).unwrap_or(0);
-                let count = segments[first..].iter().take_while(|segment| inside(segment)).count();
-                best.take(
+            let choices = choices(model, &model.combinations[combination].factors);
+            for variant in &choices.variants {
+                let acting = || choices.fixed.iter().chain(variant);
+                let fields: Vec<Fields> =
+                    segments.iter().map(|segment| combined(acting(), segment)).collect();
+                let candidate = Candidate {
                     combination,
-                    &segments[first..first + count],
-                    &fields[first..first + count],
-                );
+                    variant: variant.iter().map(|(part, _)| *part).collect(),
+                    free: &choices.free,
+                };
+                wholly.take(&candidate, segments, &fields);
+                for (span, best) in member.spans.iter().zip(&mut by_span) {
+                    let inside = |segment: &Segment| {
+                        let middle = 0.5 * (segment.from + segment.to);
+                        span.from < middle && middle < span.to
+                    };
+                    let first = segments.iter().position(inside).unwrap_or(0);
+                    let count =
+                        segments[first..].iter().take_while(|segment| inside(segment)).count();
+                    best.take(
+                        &candidate,
+                        &segments[first..first + count],
+                        &fields[first..first + count],
+                    );
+                }
             }
         }
         whole.extend(wholly.ended().map(|all| (purpose, all)));
@@ -66,9 +81,17 @@ fn member(model: &Model, member: &Member, solution: &MemberSolution) -> Governin
     GoverningMember { whole, spans }
 }
 
-fn combined(model: &Model, combination: usize, segment: &Segment) -> Fields {
-    let factors = &model.combinations[combination].factors;
-    superpose(factors.iter().map(|(case, factor)| (*factor, &segment.states[case.0])))
+fn combined<'f>(factors: impl Iterator<Item = &'f (CaseId, f64)>, segment: &Segment) -> Fields {
+    superpose(factors.map(|(case, factor)| (*factor, &segment.states[case.0])))
+}
+
+/// A combination that stands for election.
+struct Candidate<'c> {
+    combination: usize,
+    /// Parts that act in this variant of it.
+    variant: Vec<CaseId>,
+    /// Parts that act where they are adverse.
+    free: &'c [(CaseId, f64)],
 }
 
 /// The best so far of every effect, in both senses.
@@ -90,37 +113,54 @@ impl Best {
     }
 
     /// Lets one combination stand for every effect.
-    fn take(&mut self, combination: usize, segments: &[Segment], fields: &[Fields]) {
+    fn take(&mut self, candidate: &Candidate<'_>, segments: &[Segment], fields: &[Fields]) {
         for (index, best) in self.effects.iter_mut().enumerate() {
-            let stretches: Vec<Stretch> = segments
-                .iter()
-                .zip(fields)
-                .map(|(segment, fields)| Stretch {
-                    from: segment.from,
-                    to: segment.to,
-                    polynomial: fields.0[index],
-                })
-                .collect();
-            let Some((greatest, least)) = extremes(&stretches) else { continue };
-            let scale = stretches.iter().map(bound).fold(0.0, f64::max);
-            let here = |found: &Found| Extreme {
-                value: found.value,
-                x: Some(found.x),
-                side: found.side,
-                combination,
-                with: forces(segments, fields, found),
-                next: None,
+            let greatest = stretches(candidate.free, segments, fields, index, 1.0);
+            let Some((high, mut low)) = extremes(&greatest) else { continue };
+            let mut scale = greatest.iter().map(bound).fold(0.0, f64::max);
+            if !candidate.free.is_empty() {
+                let least = stretches(candidate.free, segments, fields, index, -1.0);
+                low = extremes(&least).map_or(low, |(_, low)| low);
+                scale = least.iter().map(bound).fold(scale, f64::max);
+            }
+            let here = |found: &Found, sign: f64| {
+                let place = place_of(segments, found);
+                let s = found.x - segments[place].from;
+                let acts = |(part, factor): &&(CaseId, f64)| {
+                    let part = &segments[place].states[part.0].0[index];
+                    sign * factor * evaluate(part, s) > FLAT * scale
+                };
+                let adverse: Vec<(CaseId, f64)> =
+                    candidate.free.iter().filter(acts).copied().collect();
+                let part = |k: usize| -> f64 {
+                    let of = |(part, factor): &(CaseId, f64)| {
+                        factor * evaluate(&segments[place].states[part.0].0[k], s)
+                    };
+                    adverse.iter().map(of).sum()
+                };
+                let mut loaded = candidate.variant.clone();
+                loaded.extend(adverse.iter().map(|(part, _)| *part));
+                loaded.sort();
+                Extreme {
+                    value: found.value,
+                    x: Some(found.x),
+                    side: found.side,
+                    combination: candidate.combination,
+                    loaded,
+                    with: std::array::from_fn(|k| evaluate(&fields[place].0[k], s) + part(k)),
+                    next: None,
+                }
             };
             match best {
                 None => {
                     *best = Some((
-                        Standing { sign: 1.0, scale, best: here(&greatest) },
-                        Standing { sign: -1.0, scale, best: here(&least) },
+                        Standing { sign: 1.0, scale, best: here(&high, 1.0) },
+                        Standing { sign: -1.0, scale, best: here(&low, -1.0) },
                     ));
                 }
-                Some((high, low)) => {
-                    high.meet(here(&greatest), scale);
-                    low.meet(here(&least), scale);
+                Some((most, fewest)) => {
+                    most.meet(here(&high, 1.0), scale);
+                    fewest.meet(here(&low, -1.0), scale);
                 }
             }
         }
@@ -144,7 +184,15 @@ impl Standing {
         let margin = FLAT * self.scale;
         let runner =
             |extreme: &Extreme| Runner { value: extreme.value, combination: extreme.combination };
-        if self.sign * (challenger.value - self.best.value) > margin {
+        let wins = self.sign * (challenger.value - self.best.value) > margin;
+        if challenger.combination == self.best.combination {
+            // Another variant of the same combination is no runner-up to itself.
+            if wins {
+                self.best = Extreme { next: self.best.next, ..challenger };
+            }
+            return;
+        }
+        if wins {
             let next = Some(runner(&self.best));
             self.best = Extreme { next, ..challenger };
         } else if self
@@ -157,15 +205,65 @@ impl Standing {
     }
 }
 
-/// The six internal forces at a place found.
-fn forces(segments: &[Segment], fields: &[Fields], found: &Found) -> [f64; FORCES] {
+/// One effect along neighbouring segments, with what adds to it in one sense of the parts that act or not:
+/// cut where a part changes sign, so that each stretch is one polynomial.
+fn stretches(
+    free: &[(CaseId, f64)],
+    segments: &[Segment],
+    fields: &[Fields],
+    effect: usize,
+    sign: f64,
+) -> Vec<Stretch> {
+    let mut out = Vec::with_capacity(segments.len());
+    for (segment, fields) in segments.iter().zip(fields) {
+        let own = fields.0[effect];
+        let whole = Stretch { from: segment.from, to: segment.to, polynomial: own };
+        let parts: Vec<Polynomial> = free
+            .iter()
+            .map(|(part, factor)| segment.states[part.0].0[effect].map(|c| c * factor))
+            .filter(|part| part.iter().any(|c| c.abs() > 0.0))
+            .collect();
+        if parts.is_empty() {
+            out.push(whole);
+            continue;
+        }
+        let length = segment.to - segment.from;
+        let mut cuts: Vec<f64> = vec![0.0];
+        let mut inner: Vec<f64> =
+            parts.iter().flat_map(|part| sign_changes(part, length)).collect();
+        inner.sort_by(f64::total_cmp);
+        for s in inner {
+            if cuts.last().is_none_or(|last| s - last > SAME_PLACE * length) {
+                cuts.push(s);
+            }
+        }
+        cuts.push(length);
+        for pair in cuts.windows(2) {
+            let middle = 0.5 * (pair[0] + pair[1]);
+            let mut sum = own;
+            for part in parts.iter().filter(|part| sign * evaluate(part, middle) > 0.0) {
+                for (into, from) in sum.iter_mut().zip(part) {
+                    *into += from;
+                }
+            }
+            let to = if pair[1] >= length { segment.to } else { segment.from + pair[1] };
+            out.push(Stretch {
+                from: segment.from + pair[0],
+                to,
+                polynomial: shifted(&sum, pair[0]),
+            });
+        }
+    }
+    out
+}
+
+/// The segment that holds a place found.
+fn place_of(segments: &[Segment], found: &Found) -> usize {
     let before = found.side == Some(Side::Before);
-    let place = segments
+    segments
         .iter()
         .position(|segment| if before { found.x <= segment.to } else { found.x < segment.to })
-        .unwrap_or(segments.len() - 1);
-    let s = found.x - segments[place].from;
-    std::array::from_fn(|k| evaluate(&fields[place].0[k], s))
+        .unwrap_or(segments.len() - 1)
 }
 
 fn reactions(model: &Model, solution: &Solution) -> Vec<(Purpose, NodeId, [Extremes; 6])> {
@@ -177,32 +275,49 @@ fn reactions(model: &Model, solution: &Solution) -> Vec<(Purpose, NodeId, [Extre
             }
             let mut standing: Vec<Option<(Standing, Standing)>> = (0..6).map(|_| None).collect();
             for combination in &combinations {
-                let mut with = [0.0; 6];
-                for (case, factor) in &model.combinations[*combination].factors {
-                    for k in 0..6 {
-                        with[k] += factor * node.reaction[case.0][k];
-                    }
-                }
-                let scale = with.iter().fold(0.0_f64, |most, value| most.max(value.abs()));
-                for (k, best) in standing.iter_mut().enumerate() {
-                    let here = || Extreme {
-                        value: with[k],
-                        x: None,
-                        side: None,
-                        combination: *combination,
-                        with,
-                        next: None,
-                    };
-                    match best {
-                        None => {
-                            *best = Some((
-                                Standing { sign: 1.0, scale, best: here() },
-                                Standing { sign: -1.0, scale, best: here() },
-                            ));
-                        }
-                        Some((high, low)) => {
-                            high.meet(here(), scale);
-                            low.meet(here(), scale);
+                let choices = choices(model, &model.combinations[*combination].factors);
+                for variant in &choices.variants {
+                    let acting = choices.fixed.iter().chain(variant);
+                    let own = summed(acting, &node.reaction);
+                    for (k, best) in standing.iter_mut().enumerate() {
+                        let here = |sign: f64| {
+                            let adverse: Vec<(CaseId, f64)> = choices
+                                .free
+                                .iter()
+                                .filter(|(part, factor)| {
+                                    sign * factor * node.reaction[part.0][k] > 0.0
+                                })
+                                .copied()
+                                .collect();
+                            let more = summed(adverse.iter(), &node.reaction);
+                            let with: [f64; 6] = std::array::from_fn(|k| own[k] + more[k]);
+                            let mut loaded: Vec<CaseId> =
+                                variant.iter().chain(&adverse).map(|(part, _)| *part).collect();
+                            loaded.sort();
+                            Extreme {
+                                value: with[k],
+                                x: None,
+                                side: None,
+                                combination: *combination,
+                                loaded,
+                                with,
+                                next: None,
+                            }
+                        };
+                        let (high, low) = (here(1.0), here(-1.0));
+                        let scale = high.with.iter().chain(&low.with);
+                        let scale = scale.fold(0.0_f64, |most, value| most.max(value.abs()));
+                        match best {
+                            None => {
+                                *best = Some((
+                                    Standing { sign: 1.0, scale, best: high },
+                                    Standing { sign: -1.0, scale, best: low },
+                                ));
+                            }
+                            Some((most, fewest)) => {
+                                most.meet(high, scale);
+                                fewest.meet(low, scale);
+                            }
                         }
                     }
                 }
@@ -217,4 +332,15 @@ fn reactions(model: &Model, solution: &Solution) -> Vec<(Purpose, NodeId, [Extre
         }
     }
     out
+}
+
+/// Σ factor · values.
+fn summed<'f>(factors: impl Iterator<Item = &'f (CaseId, f64)>, values: &[[f64; 6]]) -> [f64; 6] {
+    let mut sum = [0.0; 6];
+    for (case, factor) in factors {
+        for (into, value) in sum.iter_mut().zip(values[case.0]) {
+            *into += factor * value;
+        }
+    }
+    sum
 }

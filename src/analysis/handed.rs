@@ -12,7 +12,10 @@ pub(super) fn handed_forces(
     solution: &Solution,
 ) -> Vec<HandedForce> {
     let mut out = Vec::new();
-    for (place, case) in solution.states.iter().enumerate() {
+    for case in &solution.states {
+        // Under `by_span` the parts are the receiving member's spans: what is handed on to each is the
+        // reaction with all parts acting.
+        let place = model.whole_of(*case).0;
         for (load, written) in model[*case].loads.iter().enumerate() {
             let LoadKind::Handed(handed) = &written.kind else { continue };
             let receiver = match handed.to {

@@ -15,6 +15,7 @@ mod govern;
 mod handed;
 mod hinge;
 mod loading;
+mod loading_by_span;
 mod mechanism;
 mod member;
 mod parts;
@@ -29,6 +30,7 @@ mod sparse;
 pub use combine::{superpose, superpose_one};
 pub use extremes::{Found, Stretch, extremes};
 pub use fields::{Fields, Polynomial, evaluate};
+pub use loading_by_span::{Choices, arrangements, choices};
 pub use roots::{derivative, sign_changes};
 pub use solution::{
     Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,

@@ -19,6 +19,19 @@ pub fn derivative(polynomial: &Polynomial) -> Polynomial {
     })
 }
 
+/// The same polynomial counted from a later place: p(s + offset).
+#[must_use]
+pub(super) fn shifted(polynomial: &Polynomial, offset: f64) -> Polynomial {
+    // Horner's scheme, once for each coefficient.
+    let mut out = *polynomial;
+    for first in 0..out.len() {
+        for k in (first..out.len() - 1).rev() {
+            out[k] += offset * out[k + 1];
+        }
+    }
+    out
+}
+
 /// Where the polynomial changes sign strictly inside (0, length), ascending.
 #[must_use]
 pub fn sign_changes(polynomial: &Polynomial, length: f64) -> Vec<f64> {

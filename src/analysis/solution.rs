@@ -98,6 +98,8 @@ pub struct Extreme {
     pub side: Option<Side>,
     /// Index into the model's combinations.
     pub combination: usize,
+    /// The parts that act, of cases that act by span.
+    pub loaded: Vec<CaseId>,
     /// N, V_y, V_z, T, M_y, M_z there (for reactions the six components).
     pub with: [f64; FORCES],
     /// The next combination's own extreme of the same effect.

@@ -22,7 +22,7 @@ pub(super) fn solve(model: &Model) -> Result<Solution, Vec<Diagnostic>> {
     let mut problems = Vec::new();
     let mut solution = Solution {
         arithmetic: Arithmetic::Portable,
-        states: (0..model.cases.len()).map(CaseId).collect(),
+        states: model.solved_states().collect(),
         nodes: vec![NodeSolution::default(); model.nodes.len()],
         members: vec![MemberSolution { segments: Vec::new() }; model.members.len()],
         handed: Vec::new(),
@@ -201,7 +201,7 @@ fn empty_segments(model: &Model, frame: &Frame, stretches: &[Vec<Stretch>]) -> V
             out[element.member].push(Segment {
                 from: stretch.from,
                 to: stretch.to,
-                states: Vec::with_capacity(model.cases.len()),
+                states: Vec::with_capacity(model.solved_states().count()),
             });
         }
     }

@@ -1,6 +1,6 @@
 //! Runs the formulas of one check for the values of its readings.
 
-use super::{Evaluated, StepValue, Task};
+use super::{Entry, Evaluated, StepValue, Task};
 use crate::calc::{CalcError, Value};
 use crate::diagnostic::Diagnostic;
 use crate::model::{Check, Placed, Slot, Source};
@@ -128,11 +128,7 @@ impl<'t> Evaluator<'t> {
     }
 
     /// Every step kept, at the readings as they stand.
-    pub(super) fn in_full(
-        &mut self,
-        combination: usize,
-        x: Option<f64>,
-    ) -> Result<Evaluated, Problem> {
+    pub(super) fn in_full(&mut self, entry: &Entry, x: Option<f64>) -> Result<Evaluated, Problem> {
         self.run(Level::Target)?;
         let kept = |formula: &Placed| -> Result<StepValue, Problem> {
             let readings = self.values(formula);
@@ -145,7 +141,8 @@ impl<'t> Evaluator<'t> {
         let validity: Result<_, Problem> =
             self.check.validity.iter().map(|condition| kept(&condition.formula)).collect();
         Ok(Evaluated {
-            combination,
+            combination: entry.combination,
+            loaded: entry.loaded.clone(),
             x,
             side: None,
             utilisation: None,
@@ -186,15 +183,11 @@ impl Problem {
     }
 
     /// With what was being evaluated.
-    pub(super) fn on(
-        self,
-        task: &Task<'_>,
-        combination: Option<usize>,
-        x: Option<f64>,
-    ) -> Diagnostic {
+    pub(super) fn on(self, task: &Task<'_>, entry: Option<usize>, x: Option<f64>) -> Diagnostic {
         let check = &task.model.checks[task.check];
         let target = task.model.on_name(check.targets[task.target].on);
-        let state = combination
+        let state = entry
+            .map(|entry| task.entries[entry].combination)
             .map(|index| format!(" in {}", task.model.combinations[index].number))
             .unwrap_or_default();
         let place =

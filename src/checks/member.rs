@@ -34,15 +34,14 @@ pub(super) fn check(
     };
     run.effects = effects(&run.evaluator.sources);
     let mut weighing = Weighing::new();
-    for (combination, factors) in &task.combinations {
+    for entry in 0..task.entries.len() {
         weighing.begin();
         let mut at = None;
-        run.combination(*combination, factors, &mut weighing, &mut at)
-            .map_err(|problem| problem.on(task, Some(*combination), at))?;
+        run.entry(entry, &mut weighing, &mut at)
+            .map_err(|problem| problem.on(task, Some(entry), at))?;
     }
-    weighing.ended(task, |combination, spot| {
-        run.in_full(combination, spot)
-            .map_err(|problem| problem.on(task, Some(combination), spot.x))
+    weighing.ended(task, |entry, spot| {
+        run.in_full(entry, spot).map_err(|problem| problem.on(task, Some(entry), spot.x))
     })
 }
 
@@ -85,10 +84,10 @@ impl Run<'_> {
     }
 
     /// Everything that is the same along the member.
-    fn set_combination(&mut self, combination: usize, along: &Along) -> Result<(), Problem> {
+    fn set_entry(&mut self, entry: usize, along: &Along) -> Result<(), Problem> {
         for index in 0..self.evaluator.sources.len() {
             let value = match self.evaluator.sources[index] {
-                Source::Duration => super::node::duration(self.task, combination)?,
+                Source::Duration => super::node::duration(self.task, entry)?,
                 Source::Greatest(effect) => number(*effect, along.extremes(*effect).0),
                 Source::Least(effect) => number(*effect, along.extremes(*effect).1),
                 Source::At(effect, share) => {
@@ -121,19 +120,18 @@ impl Run<'_> {
         }
     }
 
-    /// One combination; `place` is where it stands, for messages.
-    fn combination(
+    /// One entry; `place` is where it stands, for messages.
+    fn entry(
         &mut self,
-        combination: usize,
-        factors: &[(CaseId, f64)],
+        entry: usize,
         weighing: &mut Weighing,
         place: &mut Option<f64>,
     ) -> Result<(), Problem> {
-        let along = self.along(factors);
-        self.set_combination(combination, &along)?;
+        let along = self.along(&self.task.entries[entry].factors);
+        self.set_entry(entry, &along)?;
         if !self.evaluator.varies() {
             let said = self.evaluator.run(Level::Combination)?;
-            weighing.take(combination, None, None, said);
+            weighing.take(entry, None, None, said);
             return Ok(());
         }
         let mut fresh = Level::Combination;
@@ -163,7 +161,7 @@ impl Run<'_> {
                     } else {
                         None
                     };
-                    if let Some(value) = weighing.take(combination, Some(x), side, said) {
+                    if let Some(value) = weighing.take(entry, Some(x), side, said) {
                         samples.push((x, value));
                     }
                 }
@@ -184,7 +182,7 @@ impl Run<'_> {
                     *place = Some(x);
                     self.set_point(&along, piece, x);
                     let said = self.evaluator.run(Level::Point)?;
-                    let value = weighing.take(combination, Some(x), None, said);
+                    let value = weighing.take(entry, Some(x), None, said);
                     Ok(value.unwrap_or(f64::NEG_INFINITY))
                 })?;
             }
@@ -192,16 +190,15 @@ impl Run<'_> {
         Ok(())
     }
 
-    fn in_full(&mut self, combination: usize, spot: Spot) -> Result<super::Evaluated, Problem> {
+    fn in_full(&mut self, entry: usize, spot: Spot) -> Result<super::Evaluated, Problem> {
         let task = self.task;
-        let factors = task.combinations.iter().find(|(index, _)| *index == combination);
-        let along = self.along(factors.map_or(&[], |(_, factors)| factors));
-        self.set_combination(combination, &along)?;
+        let along = self.along(&task.entries[entry].factors);
+        self.set_entry(entry, &along)?;
         if let Some(x) = spot.x {
             let piece = along.piece_at(x, spot.side.unwrap_or(Side::Before));
             self.set_point(&along, piece, x);
         }
-        self.evaluator.in_full(combination, spot.x)
+        self.evaluator.in_full(&task.entries[entry], spot.x)
     }
 }
 

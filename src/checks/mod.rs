@@ -10,6 +10,7 @@
 mod agreement;
 mod evaluator;
 mod fields;
+mod loaded;
 mod member;
 mod node;
 mod search;
@@ -63,6 +64,8 @@ pub enum Outcome {
 pub struct Evaluated {
     /// Index into the model's combinations.
     pub combination: usize,
+    /// Parts that act, of cases that act by span.
+    pub loaded: Vec<CaseId>,
     /// Position along the member, m.
     pub x: Option<f64>,
     /// Set where the utilisation jumps at `x`.
@@ -185,8 +188,18 @@ struct Task<'t> {
     scales: &'t fields::Scales,
     check: usize,
     target: usize,
-    /// The combinations of the check's purpose with the factors that count.
-    combinations: Vec<(usize, Vec<(CaseId, f64)>)>,
+    /// The combinations of the check's purpose, one entry for each choice of loaded spans.
+    entries: Vec<Entry>,
+}
+
+/// A combination with one choice of loaded spans.
+struct Entry {
+    /// Index into the model's combinations.
+    combination: usize,
+    /// The factors that count.
+    factors: Vec<(CaseId, f64)>,
+    /// Parts that act, of cases that act by span.
+    loaded: Vec<CaseId>,
 }
 
 impl<'t> Task<'t> {
@@ -198,7 +211,9 @@ impl<'t> Task<'t> {
         target: usize,
     ) -> Self {
         let content = &model.checks[check];
-        let combinations = model
+        let on = content.targets[target].on;
+        let mut patterns = loaded::Patterns::new(model, solution, on);
+        let entries = model
             .combinations
             .iter()
             .enumerate()
@@ -211,8 +226,9 @@ impl<'t> Task<'t> {
             })
             // A combination without a variable action has nothing to say about them.
             .filter(|(_, factors)| !factors.is_empty())
+            .flat_map(|(combination, factors)| patterns.entries(combination, &factors))
             .collect();
-        Self { model, solution, scales, check, target, combinations }
+        Self { model, solution, scales, check, target, entries }
     }
 }
 

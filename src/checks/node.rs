@@ -14,12 +14,12 @@ pub(super) fn check(
     node: NodeId,
     relative_to: Option<NodeId>,
 ) -> Result<CheckResult, Diagnostic> {
-    by_combination(task, |source, combination, factors| {
+    by_combination(task, |source, entry, factors| {
         let reaction = || reaction(task, node, factors);
         let up = || global(task, node, reaction())[2];
         let force = |value: f64| Value::number(value, Dimension::FORCE);
         Ok(match source {
-            Source::Duration => duration(task, combination)?,
+            Source::Duration => duration(task, entry)?,
             Source::Reaction(component) => {
                 let dimension = if *component < 3 { Dimension::FORCE } else { Dimension::MOMENT };
                 Value::number(reaction()[*component], dimension)
@@ -50,35 +50,34 @@ pub(super) fn by_combination(
         return Ok(result);
     }
     let mut evaluator = Evaluator::new(task);
-    let set = |evaluator: &mut Evaluator<'_>, combination: usize| -> Result<(), Problem> {
-        let factors = task.combinations.iter().find(|(index, _)| *index == combination);
-        let factors = factors.map_or(&[][..], |(_, factors)| factors);
+    let set = |evaluator: &mut Evaluator<'_>, entry: usize| -> Result<(), Problem> {
+        let factors = &task.entries[entry].factors;
         for index in 0..evaluator.sources.len() {
             let source = evaluator.sources[index];
             if !matches!(source, Source::Constant(_)) {
-                evaluator.readings[index] = read(source, combination, factors)?;
+                evaluator.readings[index] = read(source, entry, factors)?;
             }
         }
         Ok(())
     };
     let mut weighing = Weighing::new();
-    for (combination, _) in &task.combinations {
+    for entry in 0..task.entries.len() {
         weighing.begin();
-        let said = set(&mut evaluator, *combination)
+        let said = set(&mut evaluator, entry)
             .and_then(|()| evaluator.run(Level::Combination))
-            .map_err(|problem| problem.on(task, Some(*combination), None))?;
-        weighing.take(*combination, None, None, said);
+            .map_err(|problem| problem.on(task, Some(entry), None))?;
+        weighing.take(entry, None, None, said);
     }
-    weighing.ended(task, |combination, _| {
-        set(&mut evaluator, combination)
-            .and_then(|()| evaluator.in_full(combination, None))
-            .map_err(|problem| problem.on(task, Some(combination), None))
+    weighing.ended(task, |entry, _| {
+        set(&mut evaluator, entry)
+            .and_then(|()| evaluator.in_full(&task.entries[entry], None))
+            .map_err(|problem| problem.on(task, Some(entry), None))
     })
 }
 
 /// Shortest duration of a combination's cases.
-pub(super) fn duration(task: &Task<'_>, combination: usize) -> Result<Value, Problem> {
-    let of = &task.model.combinations[combination];
+pub(super) fn duration(task: &Task<'_>, entry: usize) -> Result<Value, Problem> {
+    let of = &task.model.combinations[task.entries[entry].combination];
     of.duration.map(|duration| Value::word(duration.name())).ok_or_else(|| {
         let check = &task.model.checks[task.check];
         let message = format!("no load case of {} states its `duration`", of.number);

@@ -12,9 +12,9 @@ pub(super) fn check(
     structure: StructureId,
     about: Option<NodeId>,
 ) -> Result<CheckResult, Diagnostic> {
-    by_combination(task, |source, combination, factors| {
+    by_combination(task, |source, entry, factors| {
         Ok(match source {
-            Source::Duration => duration(task, combination)?,
+            Source::Duration => duration(task, entry)?,
             Source::SumOfReactions(component) => {
                 let dimension = if *component < 3 { Dimension::FORCE } else { Dimension::MOMENT };
                 Value::number(sum(task, structure, factors)[*component], dimension)

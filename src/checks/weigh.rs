@@ -21,10 +21,10 @@ pub(super) struct Spot {
 
 /// Keeps what the outcome needs.
 pub(super) struct Weighing {
-    /// The worst place of each combination, in order.
+    /// The worst place of each entry, in order.
     worst: Vec<(usize, Spot)>,
     present: Option<(usize, Spot)>,
-    /// First condition that did not hold: which, combination, place.
+    /// First condition that did not hold: which, entry, place.
     invalid: Option<(usize, usize, Option<f64>)>,
     least: Option<(f64, usize, Option<f64>)>,
     largest: f64,
@@ -35,7 +35,7 @@ impl Weighing {
         Self { worst: Vec::new(), present: None, invalid: None, least: None, largest: 0.0 }
     }
 
-    /// The evaluations that follow are of this combination.
+    /// The evaluations that follow are of another entry.
     pub(super) fn begin(&mut self) {
         self.worst.extend(self.present.take());
     }
@@ -43,7 +43,7 @@ impl Weighing {
     /// Takes one evaluation; gives its utilisation.
     pub(super) fn take(
         &mut self,
-        combination: usize,
+        entry: usize,
         x: Option<f64>,
         side: Option<Side>,
         said: Said,
@@ -51,13 +51,13 @@ impl Weighing {
         let (demand, capacity) = match said {
             Said::Values { demand, capacity } => (demand, capacity),
             Said::Invalid(condition) => {
-                self.invalid = self.invalid.or(Some((condition, combination, x)));
+                self.invalid = self.invalid.or(Some((condition, entry, x)));
                 return None;
             }
         };
         self.largest = self.largest.max(demand.abs());
         if self.least.is_none_or(|(least, ..)| demand < least) {
-            self.least = Some((demand, combination, x));
+            self.least = Some((demand, entry, x));
         }
         let utilisation = if capacity > 0.0 { demand / capacity } else { f64::INFINITY };
         let better = match self.present {
@@ -65,12 +65,12 @@ impl Weighing {
             Some((_, spot)) => utilisation > spot.utilisation + EQUAL * spot.utilisation.abs(),
         };
         if better {
-            self.present = Some((combination, Spot { x, side, utilisation }));
+            self.present = Some((entry, Spot { x, side, utilisation }));
         }
         Some(utilisation)
     }
 
-    /// The governing combination with its place: ties stay with the earlier one.
+    /// The governing entry with its place: ties stay with the earlier one.
     fn governing(&self) -> Option<usize> {
         let mut best: Option<usize> = None;
         for (index, (_, spot)) in self.worst.iter().enumerate() {
@@ -102,15 +102,15 @@ impl Weighing {
             next: Vec::new(),
             further: 0,
         };
-        if task.combinations.is_empty() {
+        if task.entries.is_empty() {
             let what = if check.variable_only { " with a variable action" } else { "" };
             return Ok(deferred(format!(
                 "there is no combination of purpose {}{what}",
                 check.purpose
             )));
         }
-        let place = |combination: usize, x: Option<f64>| {
-            let number = &task.model.combinations[combination].number;
+        let place = |entry: usize, x: Option<f64>| {
+            let number = &task.model.combinations[task.entries[entry].combination].number;
             let at = x.map(|x| format!(" at x = {} m", crate::quantity::print(x, 4)));
             format!("{number}{}", at.unwrap_or_default())
         };
@@ -130,21 +130,25 @@ impl Weighing {
                 place(combination, x)
             )));
         }
-        let (combination, spot) = self.worst.remove(index);
-        let mut next: Vec<Next> = self
-            .worst
-            .iter()
-            .map(|(combination, spot)| Next {
-                combination: *combination,
-                utilisation: spot.utilisation,
-                x: spot.x,
-            })
-            .collect();
+        let (entry, spot) = self.worst[index];
+        // Each combination once, with its worst choice of loaded spans.
+        let governs = task.entries[entry].combination;
+        let mut next: Vec<Next> = Vec::new();
+        for (other, spot) in &self.worst {
+            let combination = task.entries[*other].combination;
+            let own = Next { combination, utilisation: spot.utilisation, x: spot.x };
+            match next.iter_mut().find(|next| next.combination == combination) {
+                _ if combination == governs => {}
+                Some(known) if own.utilisation > known.utilisation => *known = own,
+                Some(_) => {}
+                None => next.push(own),
+            }
+        }
         // Stable, so that equal ones stay in order.
         next.sort_by(|a, b| b.utilisation.total_cmp(&a.utilisation));
         let further = next.len().saturating_sub(LISTED);
         next.truncate(LISTED);
-        let mut governing = in_full(combination, spot)?;
+        let mut governing = in_full(entry, spot)?;
         governing.side = spot.side;
         governing.utilisation = spot.utilisation.is_finite().then_some(spot.utilisation);
         let (outcome, reason) = match governing.utilisation {

@@ -12,11 +12,34 @@ pub struct LoadCase {
     /// ψ0, ψ1, ψ2 where stated.
     pub psi: Option<[f64; 3]>,
     pub relations: Relations,
+    /// Each span may be loaded or not.
+    pub by_span: Option<SpanLoading>,
     pub duration: Option<Duration>,
     pub source: Option<String>,
     pub self_weight: bool,
     pub loads: Vec<Load>,
     pub origin: Origin,
+}
+
+/// Which spans of a case that acts by span can be loaded together.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum SpanLoading {
+    /// Every choice of spans.
+    Any,
+    /// Alternate spans, and two adjacent spans (EN 1992-1-1, 5.1.3(1)P, from memory).
+    AlternateAndAdjacent,
+    /// Alternate spans, and all of them.
+    Alternate,
+}
+
+/// The part of a case that one span takes; a solved state of its own.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Part {
+    pub of: CaseId,
+    /// Member and span, counted from 0; `None` for what acts on no span.
+    pub on: Option<(MemberId, usize)>,
+    /// Its loads, under a name such as `Q/B1.1`.
+    pub case: LoadCase,
 }
 
 /// How a case acts with others.

@@ -16,8 +16,8 @@ mod settings;
 mod structure;
 
 pub use action::{
-    Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Per, Relations,
-    Target, Written,
+    Direction, Duration, Handed, Load, LoadCase, LoadForm, LoadKind, Nature, Part, Per, Relations,
+    SpanLoading, Target, Written,
 };
 pub use check::{
     Agreement, Check, CheckTarget, Condition, DeflectionFrom, On, Placed, Shows, Slot, Step,
@@ -87,6 +87,8 @@ pub struct Model {
     pub nodes: Vec<Node>,
     pub members: Vec<Member>,
     pub cases: Vec<LoadCase>,
+    /// Parts of cases that act by span; their ids follow those of the cases.
+    pub parts: Vec<Part>,
     /// In the order written; `combinations[i].number` is what tables print.
     pub combinations: Vec<Combination>,
     /// Rules in use with what they made, in order.
@@ -178,6 +180,41 @@ index_by_id! {
     MemberId => members: Member,
     SectionId => sections: Section,
     MaterialId => materials: Material,
-    CaseId => cases: LoadCase,
     BuildUpId => build_ups: BuildUp,
+}
+
+impl std::ops::Index<CaseId> for Model {
+    type Output = LoadCase;
+    fn index(&self, id: CaseId) -> &LoadCase {
+        match id.0.checked_sub(self.cases.len()) {
+            None => &self.cases[id.0],
+            Some(part) => &self.parts[part].case,
+        }
+    }
+}
+
+impl Model {
+    /// Cases and their parts: every state that is solved.
+    pub fn solved_states(&self) -> impl Iterator<Item = CaseId> + use<> {
+        (0..self.cases.len() + self.parts.len()).map(CaseId)
+    }
+
+    /// The case that a part is of.
+    #[must_use]
+    pub fn whole_of(&self, id: CaseId) -> CaseId {
+        id.0.checked_sub(self.cases.len()).map_or(id, |part| self.parts[part].of)
+    }
+
+    /// The parts of a case, none where it does not act by span.
+    pub fn parts_of(&self, case: CaseId) -> impl Iterator<Item = CaseId> + '_ {
+        let own = move |(_, part): &(usize, &Part)| part.of == case;
+        let parts = self.parts.iter().enumerate().filter(own);
+        parts.map(|(index, _)| CaseId(self.cases.len() + index))
+    }
+
+    /// The part behind an id.
+    #[must_use]
+    pub fn part(&self, id: CaseId) -> Option<&Part> {
+        self.parts.get(id.0.checked_sub(self.cases.len())?)
+    }
 }

@@ -4,6 +4,9 @@ use indexmap::IndexMap;
 use schemars::{Schema, SchemaGenerator};
 use serde_json::{Value, json};
 
+use super::text::Words as _;
+use crate::model::SpanLoading;
+
 /// Keys of a section's `given` block.
 pub const GIVEN: [(&str, &str); 34] = [
     ("A", "Area."),
@@ -118,4 +121,12 @@ pub(super) fn units(_: &mut SchemaGenerator) -> Schema {
 pub(super) fn nodes(_: &mut SchemaGenerator) -> Schema {
     let at = json!({ "type": "array", "items": { "type": ["string", "number", "boolean"] }, "minItems": 2, "maxItems": 3 });
     schema(json!({ "type": "object", "additionalProperties": at }))
+}
+
+/// `by_span`: `true` is a truth value to editors and a word to us.
+pub(super) fn by_span(_: &mut SchemaGenerator) -> Schema {
+    let words: Vec<Value> = std::iter::once(json!(true))
+        .chain(SpanLoading::WORDS.iter().map(|(word, _)| json!(word)))
+        .collect();
+    schemars::json_schema!({ "description": SpanLoading::DESCRIPTION, "enum": words })
 }

@@ -16,7 +16,7 @@ use super::tree::{Kind, Node};
 use crate::diagnostic::Diagnostic;
 
 /// Keys that a later version reads, by the definition in which they stand.
-const NOT_YET: [(&str, &str); 2] = [("LoadCase", "by_span"), ("Member", "imposed_reduction")];
+const NOT_YET: [(&str, &str); 1] = [("Member", "imposed_reduction")];
 
 /// Longest list of keys or words that a hint gives in full.
 const LISTED: usize = 16;
@@ -334,7 +334,9 @@ fn expected(schema: &Value) -> String {
         return parts.join(", or ");
     }
     if let Some(words) = schema["enum"].as_array() {
-        let words: Vec<String> = words.iter().map(plain).collect();
+        let mut words: Vec<String> = words.iter().map(plain).collect();
+        // A truth value and its word read alike.
+        words.dedup();
         return one_of(words.iter().map(String::as_str));
     }
     match schema["type"].as_str() {

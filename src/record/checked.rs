@@ -27,6 +27,9 @@ pub struct CheckRecord {
     pub deflection: String,
     /// Name of the governing combination.
     pub state: Option<String>,
+    /// Parts that act, of cases that act by span.
+    #[serde(skip_serializing_if = "Vec::is_empty", default)]
+    pub loaded: Vec<String>,
     /// Position along the member, m.
     pub x: Option<f64>,
     #[serde(skip_serializing_if = "Option::is_none", default)]

@@ -1,6 +1,6 @@
 //! Looking up effects in a Record: the only way downstream gets a structural value.
 
-use super::{MemberRecord, Record, SegmentRecord};
+use super::{CaseRecord, CombinationRecord, MemberRecord, Record, SegmentRecord};
 use crate::analysis::{Polynomial, evaluate, superpose_one};
 use crate::model::{Effect, Purpose, Side};
 
@@ -18,6 +18,13 @@ pub struct Piece {
 /// The band between the least and the greatest of an effect over a purpose, as points (x, least,
 /// greatest); two points at the same x where it jumps.
 pub type Band = Vec<[f64; 3]>;
+
+/// States with factors that act, and parts of cases that act or not.
+#[derive(Clone)]
+struct Acting<'r> {
+    terms: Vec<(&'r str, f64)>,
+    free: Vec<(&'r str, f64)>,
+}
 
 impl Record {
     /// An effect at position `x` of a member in a state: a load case or a combination.
@@ -63,29 +70,38 @@ impl Record {
     #[must_use]
     pub fn band(&self, member: &str, effect: Effect, purpose: Purpose) -> Option<Band> {
         let segments = &self.results.members.get(member)?.segments;
-        let states: Vec<Vec<(&str, f64)>> = self
+        let states: Vec<Acting<'_>> = self
             .combinations
             .iter()
             .filter(|(_, combination)| combination.purpose == purpose.name())
-            .filter_map(|(name, _)| self.terms(name))
+            .flat_map(|(_, combination)| self.acting(combination))
             .collect();
         if states.is_empty() {
             return None;
         }
         let mut band = Band::new();
         for segment in segments {
-            let polynomials: Option<Vec<Polynomial>> =
-                states.iter().map(|terms| self.polynomial(segment, effect, terms)).collect();
+            let polynomials: Option<Vec<(Polynomial, Vec<Polynomial>)>> = states
+                .iter()
+                .map(|acting| {
+                    let own = self.polynomial(segment, effect, &acting.terms)?;
+                    let one = |part: &(&str, f64)| self.polynomial(segment, effect, &[*part]);
+                    Some((own, acting.free.iter().map(one).collect::<Option<Vec<_>>>()?))
+                })
+                .collect();
             let polynomials = polynomials?;
             let length = segment.to - segment.from;
             for point in 0..=BETWEEN + 1 {
                 let s = length * f64::from(point) / f64::from(BETWEEN + 1);
                 let mut least = f64::INFINITY;
                 let mut greatest = f64::NEG_INFINITY;
-                for polynomial in &polynomials {
-                    let value = evaluate(polynomial, s);
-                    least = least.min(value);
-                    greatest = greatest.max(value);
+                for (own, parts) in &polynomials {
+                    let value = evaluate(own, s);
+                    let parts = || parts.iter().map(|part| evaluate(part, s));
+                    let more: f64 = parts().filter(|part| *part > 0.0).sum();
+                    let less: f64 = parts().filter(|part| *part < 0.0).sum();
+                    least = least.min(value + less);
+                    greatest = greatest.max(value + more);
                 }
                 band.push([segment.from + s, least, greatest]);
             }
@@ -120,11 +136,42 @@ impl Record {
 
     /// A state as factors on solved states.
     fn terms<'r>(&'r self, state: &'r str) -> Option<Vec<(&'r str, f64)>> {
-        if self.model.cases.contains_key(state) {
+        let is_part = |case: &CaseRecord| {
+            case.by_span.as_ref().is_some_and(|by_span| by_span.parts.iter().any(|p| p == state))
+        };
+        if self.model.cases.contains_key(state) || self.model.cases.values().any(is_part) {
             return Some(vec![(state, 1.0)]);
         }
         let combination = self.combinations.get(state)?;
         Some(combination.factors.iter().map(|(case, factor)| (case.as_str(), *factor)).collect())
+    }
+
+    /// What a combination lets act, one entry for each simplified arrangement of loaded spans.
+    fn acting<'r>(&'r self, combination: &'r CombinationRecord) -> Vec<Acting<'r>> {
+        let mut out = vec![Acting { terms: Vec::new(), free: Vec::new() }];
+        for (name, factor) in &combination.factors {
+            let by_span = self.model.cases.get(name).and_then(|case| case.by_span.as_ref());
+            match by_span {
+                None => out.iter_mut().for_each(|acting| acting.terms.push((name, *factor))),
+                Some(by_span) if by_span.sets.is_empty() => {
+                    for acting in &mut out {
+                        acting.free.extend(by_span.parts.iter().map(|p| (p.as_str(), *factor)));
+                    }
+                }
+                Some(by_span) => {
+                    let with = |acting: &Acting<'r>, set: &'r Vec<String>| {
+                        let mut acting = acting.clone();
+                        acting.terms.extend(set.iter().map(|part| (part.as_str(), *factor)));
+                        acting
+                    };
+                    out = out
+                        .iter()
+                        .flat_map(|acting| by_span.sets.iter().map(|set| with(acting, set)))
+                        .collect();
+                }
+            }
+        }
+        out
     }
 
     fn polynomial(

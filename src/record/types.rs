@@ -300,9 +300,24 @@ pub struct CaseRecord {
     pub duration: Option<String>,
     pub source: Option<String>,
     pub self_weight: bool,
+    /// Of a case that acts by span.
+    #[serde(skip_serializing_if = "Option::is_none", default)]
+    pub by_span: Option<BySpanRecord>,
     pub loads: Vec<LoadRecord>,
     /// Structure → Fx Fy Fz Mx My Mz of all loads about the global origin.
     pub resultant: Map<[f64; 6]>,
+}
+
+/// A case whose spans may be loaded or not.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+pub struct BySpanRecord {
+    /// `any`, `alternate` or `alternate and adjacent`.
+    pub loading: String,
+    /// Names of its parts; each is a state.
+    pub parts: Vec<String>,
+    /// Parts that act together; left out where any may.
+    #[serde(skip_serializing_if = "Vec::is_empty", default)]
+    pub sets: Vec<Vec<String>>,
 }
 
 /// A load as tables and drawings need it.
@@ -414,6 +429,9 @@ pub struct ExtremeRecord {
     pub side: Option<Side>,
     /// Name of the combination.
     pub state: String,
+    /// Parts that act, of cases that act by span.
+    #[serde(skip_serializing_if = "Vec::is_empty", default)]
+    pub loaded: Vec<String>,
     pub with: [f64; FORCES],
     #[serde(skip_serializing_if = "Option::is_none", default)]
     pub next: Option<RunnerRecord>,

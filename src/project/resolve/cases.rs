@@ -28,6 +28,7 @@ pub(super) fn cases(reader: &mut Reader, written: &Map<written::LoadCase>, model
                 reverses: case.reverses.unwrap_or(false),
                 source_group: words(case.source_group.as_ref()),
             },
+            by_span: case.by_span.as_ref().map(|word| word.is),
             duration: case.duration.as_ref().map(|word| word.is),
             source: words(case.source.as_ref()),
             self_weight: !weighted.is_empty(),

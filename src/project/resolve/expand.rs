@@ -150,13 +150,13 @@ pub(super) fn rows(
                         factors.push((action.case, value(&term.choices[0], *action)));
                     }
                 }
-                for (permanent, reason) in permanents(model, branch, &cases) {
+                for (permanent, reasons) in permanents(model, branch, &cases) {
                     let mut all = permanent;
                     all.extend(&factors);
                     all.retain(|(_, factor)| factor.abs() > 0.0);
                     all.sort_by_key(|(case, _)| *case);
                     let lead = leading.map(|case| format!("{} leads", model[case].name));
-                    let parts: Vec<String> = lead.into_iter().chain(reason).collect();
+                    let parts: Vec<String> = lead.into_iter().chain(reasons).collect();
                     out.push(Row { factors: all, leading, reason: parts.join(", ") });
                     if out.len() > MOST {
                         return Err(TooMany);
@@ -216,13 +216,16 @@ fn fits(model: &Model, actions: &[Action], set: u32) -> bool {
     })
 }
 
-/// Factors of what always acts, every source choosing for itself, with the choice in words.
+/// Factors of what always acts, with the choices in words.
+type Permanent = (Vec<(CaseId, f64)>, Vec<String>);
+
+/// Factors of what always acts, every source choosing for itself.
 fn permanents(
     model: &Model,
     branch: &[Term],
     cases: &dyn Fn(&str) -> Vec<CaseId>,
-) -> Vec<(Vec<(CaseId, f64)>, Option<String>)> {
-    let mut out: Vec<(Vec<(CaseId, f64)>, Vec<String>)> = vec![(Vec::new(), Vec::new())];
+) -> Vec<Permanent> {
+    let mut out: Vec<Permanent> = vec![(Vec::new(), Vec::new())];
     for term in branch.iter().filter(|term| always(&term.kind)) {
         let mut groups: Vec<(Option<&String>, Vec<CaseId>)> = Vec::new();
         for case in cases(&term.kind) {
@@ -255,9 +258,7 @@ fn permanents(
             out = next;
         }
     }
-    out.into_iter()
-        .map(|(factors, reasons)| (factors, (!reasons.is_empty()).then(|| reasons.join(", "))))
-        .collect()
+    out
 }
 
 /// Which rows can never govern: for every choice of signs of the actions' effects another row has the same

@@ -19,6 +19,7 @@ mod members;
 mod names;
 mod narrative;
 mod order;
+mod parts;
 mod reader;
 mod rules;
 mod sections;
@@ -66,6 +67,7 @@ pub(super) fn resolve(
         members: Vec::new(),
         cases: Vec::new(),
         combinations: Vec::new(),
+        parts: Vec::new(),
         rules: Vec::new(),
         checks: Vec::new(),
         workings: Vec::new(),
@@ -75,6 +77,7 @@ pub(super) fn resolve(
     structures::structures(&mut reader, project, &mut model);
     about::drawn(&mut reader, project.package.as_ref(), &model);
     cases::cases(&mut reader, &project.load_cases, &mut model);
+    parts::parts(&mut reader, &project.load_cases, &mut model);
     combinations::combinations(&mut reader, &project.combinations, &mut model);
     order::solve_order(&mut reader, &mut model);
     let narrative = project.narrative.as_ref();

@@ -4,7 +4,7 @@ use schemars::JsonSchema;
 use serde::Deserialize;
 
 use super::words::{Axis, Dominated, Expansion};
-use crate::model::{Direction, Duration, Nature, Per, Purpose};
+use crate::model::{Direction, Duration, Nature, Per, Purpose, SpanLoading};
 use crate::project::text::{Located, Map, Text, Word};
 
 /// One load case.
@@ -21,6 +21,10 @@ pub struct LoadCase {
     pub psi: Option<[Text; 3]>,
     /// Load duration class, for timber.
     pub duration: Option<Word<Duration>>,
+    /// Each span may be loaded or not: `true` for every choice of spans, or a simplified set of arrangements.
+    #[serde(default)]
+    #[schemars(schema_with = "crate::project::keys::by_span")]
+    pub by_span: Option<Word<SpanLoading>>,
     /// At most one case of this name acts at a time.
     pub one_of: Option<Text>,
     /// Acts only when all of these act.

@@ -2,6 +2,7 @@
 
 use crate::model::{
     DeflectionFrom, Direction, Duration, Frame, MomentSide, Nature, Paper, Per, Purpose, Shows,
+    SpanLoading,
 };
 use crate::project::text::Words;
 use crate::quantity::System;
@@ -138,6 +139,10 @@ words! {
     }
     Dominated: "Dominated", "What happens to combinations that can never govern." {
         "keep" => Self::Keep, "drop" => Self::Drop,
+    }
+    SpanLoading: "SpanLoading", "Which spans can be loaded together." {
+        "true" => Self::Any, "alternate and adjacent" => Self::AlternateAndAdjacent,
+        "alternate" => Self::Alternate,
     }
     AllWord: "All", "Every one." { "all" => Self::All }
     Only: "Only", "The part of each combination that counts." { "variable" => Self::Variable }

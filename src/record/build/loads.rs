@@ -1,8 +1,8 @@
 //! Load cases with their loads, as tables and drawings need them.
 
-use crate::analysis::{SelfCheck, Solution};
-use crate::model::{CaseId, Load, LoadKind, Model, Per, StructureId, Target};
-use crate::record::{CaseRecord, LoadRecord, Map, TargetRecord};
+use crate::analysis::{SelfCheck, Solution, arrangements};
+use crate::model::{CaseId, Load, LoadKind, Model, Per, SpanLoading, StructureId, Target};
+use crate::record::{BySpanRecord, CaseRecord, LoadRecord, Map, TargetRecord};
 
 pub(super) fn cases(model: &Model, solution: &Solution, self_check: &SelfCheck) -> Map<CaseRecord> {
     model
@@ -18,6 +18,7 @@ pub(super) fn cases(model: &Model, solution: &Solution, self_check: &SelfCheck) 
                 duration: case.duration.map(|duration| duration.name().to_owned()),
                 source: case.source.clone(),
                 self_weight: case.self_weight,
+                by_span: case.by_span.map(|loading| by_span(model, id, loading)),
                 loads: case
                     .loads
                     .iter()
@@ -36,6 +37,23 @@ pub(super) fn cases(model: &Model, solution: &Solution, self_check: &SelfCheck) 
             (case.name.clone(), record)
         })
         .collect()
+}
+
+fn by_span(model: &Model, case: CaseId, loading: SpanLoading) -> BySpanRecord {
+    let names = |parts: &[CaseId]| -> Vec<String> {
+        parts.iter().map(|part| model[*part].name.clone()).collect()
+    };
+    let parts: Vec<CaseId> = model.parts_of(case).collect();
+    let sets = match loading {
+        SpanLoading::Any => Vec::new(),
+        _ => arrangements(model, &parts, loading).iter().map(|set| names(set)).collect(),
+    };
+    let loading = match loading {
+        SpanLoading::Any => "any",
+        SpanLoading::AlternateAndAdjacent => "alternate and adjacent",
+        SpanLoading::Alternate => "alternate",
+    };
+    BySpanRecord { loading: loading.to_owned(), parts: names(&parts), sets }
 }
 
 fn load(model: &Model, solution: &Solution, case: CaseId, index: usize, load: &Load) -> LoadRecord {

@@ -71,6 +71,9 @@ fn check(model: &Model, result: &CheckResult) -> CheckRecord {
         variable_only: check.variable_only,
         deflection: deflection(check).to_owned(),
         state: governing.map(|governing| name(governing.combination)),
+        loaded: governing.map_or_else(Vec::new, |governing| {
+            governing.loaded.iter().map(|part| model[*part].name.clone()).collect()
+        }),
         x: governing.and_then(|governing| governing.x),
         side: governing.and_then(|governing| governing.side),
         demand: governing
@@ -146,6 +149,7 @@ fn agreement(
         variable_only: false,
         deflection: "chord".to_owned(),
         state: None,
+        loaded: Vec::new(),
         x: None,
         side: None,
         demand: Some(bindings.step(("", &agreement.value), value, None, None)),

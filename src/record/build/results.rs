@@ -119,6 +119,7 @@ fn extreme(model: &Model, extreme: &Extreme) -> ExtremeRecord {
         x: extreme.x,
         side: extreme.side,
         state: state(extreme.combination),
+        loaded: extreme.loaded.iter().map(|part| model[*part].name.clone()).collect(),
         with: extreme.with,
         next: extreme
             .next

@@ -1,5 +1,6 @@
 //! See the files beside this one.
 
+mod by_span;
 mod checks;
 mod formulas;
 mod frames;
