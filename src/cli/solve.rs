@@ -105,7 +105,7 @@ fn of(record: &Record, printer: &Printer, kind: Kind, extreme: &ExtremeRecord) -
     vec![
         printer.number(kind, extreme.value),
         extreme.x.map(|x| printer.number(Kind::Length, x)).unwrap_or_default(),
-        number(&extreme.state).to_owned(),
+        record.in_short(&extreme.state, &extreme.loaded),
         extreme.next.as_ref().map_or_else(String::new, |next| {
             format!("{} {}", number(&next.state), printer.number(kind, next.value))
         }),
@@ -169,7 +169,7 @@ fn checks(record: &Record, printer: &Printer) -> String {
             check.id.clone(),
             check.on_words(),
             check.utilisation.map_or_else(|| "–".to_owned(), printed_utilisation),
-            record.combinations.get(state).map_or("", |c| c.number.as_str()).to_owned(),
+            record.in_short(state, &check.loaded),
             check.x.map(|x| printer.number(Kind::Length, x)).unwrap_or_default(),
             format!("{}{reason}", check.outcome),
         ]);

@@ -123,6 +123,38 @@ impl Record {
         self.vector(state, |case| values.get(case))
     }
 
+    /// The short number of a combination, with the spans that are loaded where it leaves that open:
+    /// `C3 [Q on B1.1, B1.3]`, `C3 [no Q]`.
+    #[must_use]
+    pub fn in_short(&self, state: &str, loaded: &[String]) -> String {
+        let Some(combination) = self.combinations.get(state) else { return String::new() };
+        let mut choices = Vec::new();
+        for (name, case) in &self.model.cases {
+            let Some(by_span) = &case.by_span else { continue };
+            if !combination.factors.contains_key(name) {
+                continue;
+            }
+            let acting: Vec<&str> = by_span
+                .parts
+                .iter()
+                .filter(|part| loaded.contains(part))
+                .map(|part| {
+                    part.strip_prefix(name.as_str()).unwrap_or(part).trim_start_matches('/')
+                })
+                .collect();
+            choices.push(match acting.as_slice() {
+                [] => format!("no {name}"),
+                some => format!("{name} on {}", some.join(", ")),
+            });
+        }
+        let number = &combination.number;
+        if choices.is_empty() {
+            number.clone()
+        } else {
+            format!("{number} [{}]", choices.join("; "))
+        }
+    }
+
     /// A member as resolved, whatever its structure.
     #[must_use]
     pub fn member(&self, name: &str) -> Option<&MemberRecord> {

@@ -41,7 +41,7 @@ struct Governing<'r> {
     rows: Vec<EffectRow<'r>>,
     /// Which of the six internal forces occur at all.
     forces: Vec<&'static str>,
-    together: Vec<TogetherRow<'r>>,
+    together: Vec<TogetherRow>,
 }
 
 #[derive(Serialize)]
@@ -57,17 +57,17 @@ struct ExtremeView<'r> {
     value: Quantity,
     x: Option<Quantity>,
     side: Option<&'static str>,
-    combination: &'r str,
+    combination: String,
     next: Option<Quantity>,
     next_combination: &'r str,
 }
 
 /// The internal forces that act together at one governing value.
 #[derive(Serialize)]
-struct TogetherRow<'r> {
+struct TogetherRow {
     what: String,
     x: Option<Quantity>,
-    combination: &'r str,
+    combination: String,
     values: Vec<Quantity>,
 }
 
@@ -126,7 +126,7 @@ fn governing<'r>(record: &'r Record, purposes: &'r Map<Map<ExtremesRecord>>) -> 
                         |(which, extreme)| TogetherRow {
                             what: format!("{which} {name}"),
                             x: extreme.x.map(|x| Quantity::new(Kind::Length, x)),
-                            combination: number(record, &extreme.state),
+                            combination: record.in_short(&extreme.state, &extreme.loaded),
                             values: forces
                                 .iter()
                                 .map(|force| {
@@ -167,7 +167,7 @@ fn extreme<'r>(record: &'r Record, kind: Kind, extreme: &'r ExtremeRecord) -> Ex
             crate::model::Side::Before => "before",
             crate::model::Side::After => "after",
         }),
-        combination: number(record, &extreme.state),
+        combination: record.in_short(&extreme.state, &extreme.loaded),
         next: extreme.next.as_ref().map(|next| Quantity::new(kind, next.value)),
         next_combination: extreme.next.as_ref().map_or("", |next| number(record, &next.state)),
     }
@@ -206,7 +206,7 @@ struct GoverningReactions<'r> {
 struct ActionRow<'r> {
     node: &'r str,
     what: String,
-    combination: &'r str,
+    combination: String,
     values: Vec<Quantity>,
 }
 
@@ -215,7 +215,7 @@ struct ReactionRow<'r> {
     node: &'r str,
     what: String,
     value: Quantity,
-    combination: &'r str,
+    combination: String,
     next: Option<Quantity>,
     next_combination: &'r str,
     /// Components acting together.
@@ -239,7 +239,8 @@ pub(super) fn reactions(record: &Record) -> Reactions<'_> {
     };
     let mut by_case = Vec::new();
     for (node, result) in &record.results.nodes {
-        for (case, reaction) in &result.reaction {
+        let whole = |case: &String| record.model.cases.contains_key(case);
+        for (case, reaction) in result.reaction.iter().filter(|(case, _)| whole(case)) {
             by_case.push(CaseReaction { node, case, values: quantities(reaction, 1.0) });
         }
     }
@@ -262,7 +263,7 @@ pub(super) fn reactions(record: &Record) -> Reactions<'_> {
                             node,
                             what: format!("{which} {component}"),
                             value: Quantity::new(kind, extreme.value),
-                            combination: number(record, &extreme.state),
+                            combination: record.in_short(&extreme.state, &extreme.loaded),
                             next: extreme.next.as_ref().map(|next| Quantity::new(kind, next.value)),
                             next_combination: extreme
                                 .next
@@ -276,7 +277,7 @@ pub(super) fn reactions(record: &Record) -> Reactions<'_> {
                         foundation.push(ActionRow {
                             node,
                             what: format!("{which} {component}"),
-                            combination: number(record, &extreme.state),
+                            combination: record.in_short(&extreme.state, &extreme.loaded),
                             values: quantities(&extreme.with, -1.0),
                         });
                     }
