@@ -1,14 +1,16 @@
 //! Governing values: every combination superposed, the greatest and least of each effect found.
 
+use std::ops::Range;
+
 use rayon::prelude::*;
 
-use super::combine::superpose;
-use super::extremes::{FLAT, Found, Stretch, bound, extremes};
+use super::combine::superpose_one;
+use super::extremes::{FLAT, Found, Stretch, extremes};
 use super::loading_by_span::choices;
 use super::roots::{shifted, sign_changes};
 use super::{
-    Extreme, Extremes, Fields, Governing, GoverningMember, MemberSolution, Polynomial, Runner,
-    Segment, Solution, evaluate,
+    Extreme, Extremes, Governing, GoverningMember, MemberSolution, Polynomial, Runner, Segment,
+    Solution, evaluate,
 };
 use crate::model::{CaseId, EFFECTS, Member, Model, NodeId, Purpose, Side};
 
@@ -40,6 +42,9 @@ fn by_purpose(model: &Model) -> Vec<(Purpose, Vec<usize>)> {
 
 fn member(model: &Model, member: &Member, solution: &MemberSolution) -> GoverningMember {
     let segments = &solution.segments;
+    let bounds = Bounds::new(segments);
+    let ranges: Vec<Range<usize>> =
+        member.spans.iter().map(|span| inside(segments, span.from, span.to)).collect();
     let mut whole = Vec::new();
     let mut spans = vec![Vec::new(); member.spans.len()];
     for (purpose, combinations) in by_purpose(model) {
@@ -48,28 +53,18 @@ fn member(model: &Model, member: &Member, solution: &MemberSolution) -> Governin
         for combination in combinations {
             let choices = choices(model, &model.combinations[combination].factors);
             for variant in &choices.variants {
-                let acting = || choices.fixed.iter().chain(variant);
-                let fields: Vec<Fields> =
-                    segments.iter().map(|segment| combined(acting(), segment)).collect();
+                let acting: Vec<(CaseId, f64)> =
+                    choices.fixed.iter().chain(variant).copied().collect();
                 let candidate = Candidate {
                     combination,
+                    bounds: bounds.of(&acting, &choices.free),
+                    acting,
                     variant: variant.iter().map(|(part, _)| *part).collect(),
                     free: &choices.free,
                 };
-                wholly.take(&candidate, segments, &fields);
-                for (span, best) in member.spans.iter().zip(&mut by_span) {
-                    let inside = |segment: &Segment| {
-                        let middle = 0.5 * (segment.from + segment.to);
-                        span.from < middle && middle < span.to
-                    };
-                    let first = segments.iter().position(inside).unwrap_or(0);
-                    let count =
-                        segments[first..].iter().take_while(|segment| inside(segment)).count();
-                    best.take(
-                        &candidate,
-                        &segments[first..first + count],
-                        &fields[first..first + count],
-                    );
+                wholly.take(&candidate, segments, 0..segments.len());
+                for (range, best) in ranges.iter().zip(&mut by_span) {
+                    best.take(&candidate, segments, range.clone());
                 }
             }
         }
@@ -81,17 +76,108 @@ fn member(model: &Model, member: &Member, solution: &MemberSolution) -> Governin
     GoverningMember { whole, spans }
 }
 
-fn combined<'f>(factors: impl Iterator<Item = &'f (CaseId, f64)>, segment: &Segment) -> Fields {
-    superpose(factors.map(|(case, factor)| (*factor, &segment.states[case.0])))
+/// The segments of a stretch of the member.
+fn inside(segments: &[Segment], from: f64, to: f64) -> Range<usize> {
+    let inside = |segment: &Segment| {
+        let middle = 0.5 * (segment.from + segment.to);
+        from < middle && middle < to
+    };
+    let first = segments.iter().position(inside).unwrap_or(0);
+    first..first + segments[first..].iter().take_while(|segment| inside(segment)).count()
 }
 
 /// A combination that stands for election.
 struct Candidate<'c> {
     combination: usize,
+    /// What acts in any case.
+    acting: Vec<(CaseId, f64)>,
     /// Parts that act in this variant of it.
     variant: Vec<CaseId>,
     /// Parts that act where they are adverse.
     free: &'c [(CaseId, f64)],
+    /// By segment and effect: no value lies outside.
+    bounds: Vec<[(f64, f64); EFFECTS.len()]>,
+}
+
+impl Candidate<'_> {
+    fn polynomial(&self, segment: &Segment, effect: usize) -> Polynomial {
+        let of = |(case, factor): &(CaseId, f64)| (*factor, &segment.states[case.0].0[effect]);
+        superpose_one(self.acting.iter().map(of))
+    }
+
+    /// Bounds of an effect over some segments.
+    fn within(&self, range: Range<usize>, effect: usize) -> (f64, f64) {
+        self.bounds[range]
+            .iter()
+            .map(|bounds| bounds[effect])
+            .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), (least, greatest)| {
+                (low.min(least), high.max(greatest))
+            })
+    }
+}
+
+/// Bernstein coefficients of every state: a polynomial lies between the least and the greatest of its own, and
+/// those of a combination are superposed like the effects themselves. Most combinations are told apart by
+/// them alone, without looking for extremes.
+struct Bounds {
+    /// By segment, state and effect.
+    segments: Vec<Vec<[Polynomial; EFFECTS.len()]>>,
+}
+
+impl Bounds {
+    fn new(segments: &[Segment]) -> Self {
+        let of = |segment: &Segment| {
+            let length = segment.to - segment.from;
+            segment.states.iter().map(|fields| fields.0.map(|p| bernstein(&p, length))).collect()
+        };
+        Self { segments: segments.iter().map(of).collect() }
+    }
+
+    fn of(
+        &self,
+        acting: &[(CaseId, f64)],
+        free: &[(CaseId, f64)],
+    ) -> Vec<[(f64, f64); EFFECTS.len()]> {
+        let of_segment = |states: &Vec<[Polynomial; EFFECTS.len()]>| {
+            std::array::from_fn(|effect| {
+                let terms = acting.iter().map(|(case, factor)| (*factor, &states[case.0][effect]));
+                let (mut low, mut high) = spread(&superpose_one(terms));
+                for (part, factor) in free {
+                    let (least, greatest) = spread(&states[part.0][effect].map(|c| c * factor));
+                    low += least.min(0.0);
+                    high += greatest.max(0.0);
+                }
+                (low, high)
+            })
+        };
+        self.segments.iter().map(of_segment).collect()
+    }
+}
+
+/// Coefficients in the Bernstein basis of degree five over the length.
+fn bernstein(polynomial: &Polynomial, length: f64) -> Polynomial {
+    /// C(j, k) / C(5, k).
+    const SHARES: [[f64; 6]; 6] = [
+        [1.0, 0.0, 0.0, 0.0, 0.0, 0.0],
+        [1.0, 0.2, 0.0, 0.0, 0.0, 0.0],
+        [1.0, 0.4, 0.1, 0.0, 0.0, 0.0],
+        [1.0, 0.6, 0.3, 0.1, 0.0, 0.0],
+        [1.0, 0.8, 0.6, 0.4, 0.2, 0.0],
+        [1.0, 1.0, 1.0, 1.0, 1.0, 1.0],
+    ];
+    let mut power = 1.0;
+    let scaled = polynomial.map(|c| {
+        let scaled = c * power;
+        power *= length;
+        scaled
+    });
+    SHARES.map(|shares| shares.iter().zip(scaled).map(|(share, c)| share * c).sum())
+}
+
+fn spread(coefficients: &Polynomial) -> (f64, f64) {
+    coefficients
+        .iter()
+        .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), c| (low.min(*c), high.max(*c)))
 }
 
 /// The best so far of every effect, in both senses.
@@ -113,28 +199,41 @@ impl Best {
     }
 
     /// Lets one combination stand for every effect.
-    fn take(&mut self, candidate: &Candidate<'_>, segments: &[Segment], fields: &[Fields]) {
+    fn take(&mut self, candidate: &Candidate<'_>, segments: &[Segment], range: Range<usize>) {
+        if range.is_empty() {
+            return;
+        }
+        let own = &segments[range.clone()];
         for (index, best) in self.effects.iter_mut().enumerate() {
-            let greatest = stretches(candidate.free, segments, fields, index, 1.0);
+            let (low, high) = candidate.within(range.clone(), index);
+            let scale = low.abs().max(high.abs());
+            if let Some((most, fewest)) = best {
+                most.scale = most.scale.max(scale);
+                fewest.scale = fewest.scale.max(scale);
+                if !most.can_change(high) && !fewest.can_change(low) {
+                    continue;
+                }
+            }
+            let fields: Vec<Polynomial> =
+                own.iter().map(|segment| candidate.polynomial(segment, index)).collect();
+            let greatest = stretches(candidate.free, own, &fields, index, 1.0);
             let Some((high, mut low)) = extremes(&greatest) else { continue };
-            let mut scale = greatest.iter().map(bound).fold(0.0, f64::max);
             if !candidate.free.is_empty() {
-                let least = stretches(candidate.free, segments, fields, index, -1.0);
+                let least = stretches(candidate.free, own, &fields, index, -1.0);
                 low = extremes(&least).map_or(low, |(_, low)| low);
-                scale = least.iter().map(bound).fold(scale, f64::max);
             }
             let here = |found: &Found, sign: f64| {
-                let place = place_of(segments, found);
-                let s = found.x - segments[place].from;
+                let segment = &own[place_of(own, found)];
+                let s = found.x - segment.from;
                 let acts = |(part, factor): &&(CaseId, f64)| {
-                    let part = &segments[place].states[part.0].0[index];
+                    let part = &segment.states[part.0].0[index];
                     sign * factor * evaluate(part, s) > FLAT * scale
                 };
                 let adverse: Vec<(CaseId, f64)> =
                     candidate.free.iter().filter(acts).copied().collect();
                 let part = |k: usize| -> f64 {
                     let of = |(part, factor): &(CaseId, f64)| {
-                        factor * evaluate(&segments[place].states[part.0].0[k], s)
+                        factor * evaluate(&segment.states[part.0].0[k], s)
                     };
                     adverse.iter().map(of).sum()
                 };
@@ -147,7 +246,9 @@ impl Best {
                     side: found.side,
                     combination: candidate.combination,
                     loaded,
-                    with: std::array::from_fn(|k| evaluate(&fields[place].0[k], s) + part(k)),
+                    with: std::array::from_fn(|k| {
+                        evaluate(&candidate.polynomial(segment, k), s) + part(k)
+                    }),
                     next: None,
                 }
             };
@@ -178,6 +279,12 @@ impl Best {
 }
 
 impl Standing {
+    /// A value that no challenger of a combination exceeds could still win or be the runner-up.
+    fn can_change(&self, bound: f64) -> bool {
+        let beaten = |value: f64| self.sign * (bound - value) > FLAT * self.scale;
+        self.best.next.is_none_or(|next| beaten(next.value))
+    }
+
     /// A challenger must win by more than round-off: ties stay with the earlier combination.
     fn meet(&mut self, challenger: Extreme, scale: f64) {
         self.scale = self.scale.max(scale);
@@ -210,13 +317,13 @@ impl Standing {
 fn stretches(
     free: &[(CaseId, f64)],
     segments: &[Segment],
-    fields: &[Fields],
+    fields: &[Polynomial],
     effect: usize,
     sign: f64,
 ) -> Vec<Stretch> {
     let mut out = Vec::with_capacity(segments.len());
-    for (segment, fields) in segments.iter().zip(fields) {
-        let own = fields.0[effect];
+    for (segment, own) in segments.iter().zip(fields) {
+        let own = *own;
         let whole = Stretch { from: segment.from, to: segment.to, polynomial: own };
         let parts: Vec<Polynomial> = free
             .iter()
