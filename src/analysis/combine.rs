@@ -1,7 +1,18 @@
 //! Superposition: the only place where effects of load cases are added up.
 
 use super::{Fields, Polynomial};
-use crate::model::EFFECTS;
+use crate::model::{CaseId, EFFECTS, Member, Model, Nature};
+
+/// The factors of a combination as they count for one member: imposed loads reduced where the project says so.
+#[must_use]
+pub fn on_member(model: &Model, member: &Member, factors: &[(CaseId, f64)]) -> Vec<(CaseId, f64)> {
+    let reduction = member.imposed_reduction.as_ref().map_or(1.0, |(factor, _)| *factor);
+    let of = |(case, factor): &(CaseId, f64)| {
+        let reduced = model[*case].nature == Nature::Imposed;
+        (*case, if reduced { factor * reduction } else { *factor })
+    };
+    factors.iter().map(of).collect()
+}
 
 /// Σ factor · fields, in the order given; nothing given is zero.
 ///

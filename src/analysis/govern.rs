@@ -4,7 +4,7 @@ use std::ops::Range;
 
 use rayon::prelude::*;
 
-use super::combine::superpose_one;
+use super::combine::{on_member, superpose_one};
 use super::extremes::{FLAT, Found, Stretch, extremes};
 use super::loading_by_span::choices;
 use super::roots::{shifted, sign_changes};
@@ -51,7 +51,8 @@ fn member(model: &Model, member: &Member, solution: &MemberSolution) -> Governin
         let mut wholly = Best::new();
         let mut by_span: Vec<Best> = member.spans.iter().map(|_| Best::new()).collect();
         for combination in combinations {
-            let choices = choices(model, &model.combinations[combination].factors);
+            let factors = on_member(model, member, &model.combinations[combination].factors);
+            let choices = choices(model, &factors);
             for variant in &choices.variants {
                 let acting: Vec<(CaseId, f64)> =
                     choices.fixed.iter().chain(variant).copied().collect();

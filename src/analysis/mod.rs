@@ -27,7 +27,7 @@ mod solve;
 mod span;
 mod sparse;
 
-pub use combine::{superpose, superpose_one};
+pub use combine::{on_member, superpose, superpose_one};
 pub use extremes::{Found, Stretch, extremes};
 pub use fields::{Fields, Polynomial, evaluate};
 pub use loading_by_span::{Choices, arrangements, choices};

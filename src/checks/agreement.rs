@@ -2,7 +2,7 @@
 
 use super::weigh::EQUAL;
 use super::{CheckResult, LineResult, Outcome, StepValue};
-use crate::analysis::{Extremes, Governing, Solution, evaluate, superpose_one};
+use crate::analysis::{Extremes, Governing, Solution, evaluate, on_member, superpose_one};
 use crate::calc::Value;
 use crate::diagnostic::Diagnostic;
 use crate::model::{
@@ -102,7 +102,10 @@ impl Results<'_> {
             Query::Effect { member, span, effect, of } => {
                 let value = match of {
                     Of::State(state, x, side) => {
-                        let factors = self.factors(*state);
+                        let mut factors = self.factors(*state);
+                        if matches!(state, State::Combination(_)) {
+                            factors = on_member(self.model, &self.model[*member], &factors);
+                        }
                         let segments = &self.solution.members[member.0].segments;
                         let segment = match side {
                             Side::Before => segments.iter().find(|segment| *x <= segment.to),

@@ -19,7 +19,7 @@ mod weigh;
 
 use rayon::prelude::*;
 
-use crate::analysis::{Governing, Solution};
+use crate::analysis::{Governing, Solution, on_member};
 use crate::calc::Value;
 use crate::diagnostic::Diagnostic;
 use crate::model::{CaseId, Model, Nature, On, Side};
@@ -222,7 +222,13 @@ impl<'t> Task<'t> {
                 let counts =
                     |case: CaseId| !content.variable_only || is_variable(model[case].nature);
                 let factors = combination.factors.iter().filter(|(case, _)| counts(*case));
-                (index, factors.copied().collect::<Vec<_>>())
+                let factors: Vec<(CaseId, f64)> = factors.copied().collect();
+                match on {
+                    On::Member { member, .. } => {
+                        (index, on_member(model, &model[member], &factors))
+                    }
+                    On::Node { .. } | On::Structure { .. } => (index, factors),
+                }
             })
             // A combination without a variable action has nothing to say about them.
             .filter(|(_, factors)| !factors.is_empty())

@@ -81,6 +81,8 @@ pub struct Member {
     pub held: Held,
     /// For buckling about y and z, m, where stated.
     pub buckling_length: [Option<f64>; 2],
+    /// Factor on imposed loads in the results and checks of this member alone, with its source.
+    pub imposed_reduction: Option<(f64, String)>,
     /// Carries axial force only.
     pub axial_only: Option<AxialOnly>,
     pub origin: Origin,

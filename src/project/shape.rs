@@ -15,9 +15,6 @@ use super::text::{Map, Text, place};
 use super::tree::{Kind, Node};
 use crate::diagnostic::Diagnostic;
 
-/// Keys that a later version reads, by the definition in which they stand.
-const NOT_YET: [(&str, &str); 1] = [("Member", "imposed_reduction")];
-
 /// Longest list of keys or words that a hint gives in full.
 const LISTED: usize = 16;
 
@@ -158,7 +155,7 @@ impl Walk<'_> {
                 Some(schema) => {
                     self.value(value, Spot { schema, what: &named, at: key.range() });
                 }
-                None => self.unknown_key(key, definition, what, spot.schema),
+                None => self.unknown_key(key, what, spot.schema),
             }
         }
         for key in spot.schema["required"].as_array().into_iter().flatten().map(plain) {
@@ -174,12 +171,7 @@ impl Walk<'_> {
         }
     }
 
-    fn unknown_key(&mut self, key: &Text, definition: &str, what: &str, schema: &Value) {
-        if NOT_YET.contains(&(definition, key.as_str())) {
-            let message = format!("`{key}` is not yet supported by this version");
-            self.found.push(self.error("not-yet", message, key.range()));
-            return;
-        }
+    fn unknown_key(&mut self, key: &Text, what: &str, schema: &Value) {
         let keys = || {
             schema["properties"]
                 .as_object()

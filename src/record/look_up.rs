@@ -47,14 +47,14 @@ impl Record {
             Side::Before => segments.iter().find(|segment| x <= segment.to),
             Side::After => segments.iter().rev().find(|segment| segment.from <= x),
         }?;
-        let polynomial = self.polynomial(segment, effect, &self.terms(state)?)?;
+        let polynomial = self.polynomial(segment, effect, &self.terms_on(member, state)?)?;
         Some(evaluate(&polynomial, x - segment.from))
     }
 
     /// An effect along a whole member in a state.
     #[must_use]
     pub fn along(&self, member: &str, effect: Effect, state: &str) -> Option<Vec<Piece>> {
-        let terms = self.terms(state)?;
+        let terms = self.terms_on(member, state)?;
         let segments = &self.results.members.get(member)?.segments;
         let piece = |segment: &SegmentRecord| {
             Some(Piece {
@@ -74,7 +74,7 @@ impl Record {
             .combinations
             .iter()
             .filter(|(_, combination)| combination.purpose == purpose.name())
-            .flat_map(|(_, combination)| self.acting(combination))
+            .flat_map(|(_, combination)| self.acting(member, combination))
             .collect();
         if states.is_empty() {
             return None;
@@ -166,6 +166,24 @@ impl Record {
         self.model.cases.keys().chain(self.combinations.keys())
     }
 
+    /// A state as factors on solved states, as it counts for one member.
+    fn terms_on<'r>(&'r self, member: &str, state: &'r str) -> Option<Vec<(&'r str, f64)>> {
+        let terms = self.terms(state)?;
+        if !self.combinations.contains_key(state) {
+            return Some(terms);
+        }
+        let reduced =
+            |(case, factor): (&'r str, f64)| (case, factor * self.reduction(member, case));
+        Some(terms.into_iter().map(reduced).collect())
+    }
+
+    /// The reduction of a case for one member, in combinations.
+    fn reduction(&self, member: &str, case: &str) -> f64 {
+        let imposed = self.model.cases.get(case).is_some_and(|case| case.nature == "imposed");
+        let member = self.member(member).and_then(|member| member.imposed_reduction.as_ref());
+        member.filter(|_| imposed).map_or(1.0, |(factor, _)| *factor)
+    }
+
     /// A state as factors on solved states.
     fn terms<'r>(&'r self, state: &'r str) -> Option<Vec<(&'r str, f64)>> {
         let is_part = |case: &CaseRecord| {
@@ -179,9 +197,10 @@ impl Record {
     }
 
     /// What a combination lets act, one entry for each simplified arrangement of loaded spans.
-    fn acting<'r>(&'r self, combination: &'r CombinationRecord) -> Vec<Acting<'r>> {
+    fn acting<'r>(&'r self, member: &str, combination: &'r CombinationRecord) -> Vec<Acting<'r>> {
         let mut out = vec![Acting { terms: Vec::new(), free: Vec::new() }];
         for (name, factor) in &combination.factors {
+            let factor = &(factor * self.reduction(member, name));
             let by_span = self.model.cases.get(name).and_then(|case| case.by_span.as_ref());
             match by_span {
                 None => out.iter_mut().for_each(|acting| acting.terms.push((name, *factor))),

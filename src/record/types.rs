@@ -201,6 +201,9 @@ pub struct MemberRecord {
     pub held: HeldRecord,
     /// About y and z.
     pub buckling_length: [Option<f64>; 2],
+    /// Factor on imposed loads in combinations, for this member alone, with its source.
+    #[serde(skip_serializing_if = "Option::is_none", default)]
+    pub imposed_reduction: Option<(f64, String)>,
     #[serde(skip_serializing_if = "Option::is_none", default)]
     pub axial_only: Option<AxialOnlyRecord>,
 }

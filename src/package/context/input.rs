@@ -231,6 +231,8 @@ struct MemberRow<'r> {
     z: String,
     spans: String,
     axial_only: bool,
+    /// Factor on imposed loads with its source.
+    reduction: Option<(String, &'r str)>,
 }
 
 #[derive(Serialize)]
@@ -339,6 +341,10 @@ fn row<'r>(name: &'r str, member: &'r MemberRecord) -> MemberRow<'r> {
         z: direction(member.axes[2]),
         spans: spans.join("; "),
         axial_only: member.axial_only.is_some(),
+        reduction: member
+            .imposed_reduction
+            .as_ref()
+            .map(|(factor, source)| (crate::quantity::print(*factor, 4), source.as_str())),
     }
 }
 

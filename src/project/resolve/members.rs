@@ -85,6 +85,19 @@ fn member(
             &along,
         ),
     };
+    let imposed_reduction = written.imposed_reduction.as_ref().and_then(|reduction| {
+        let factor = reader.positive(&reduction.factor, Kind::Number)?;
+        if factor > 1.0 {
+            let place = reduction.factor.place();
+            reader.error(
+                "reduction",
+                format!("`{}` is above 1: it reduces nothing", reduction.factor),
+                place,
+            );
+            return None;
+        }
+        Some((factor, reduction.source.to_string()))
+    });
     let lengths = written.buckling_length.as_ref();
     let mut buckling =
         |text: Option<&Text>| text.and_then(|text| reader.positive(text, Kind::Length));
@@ -117,6 +130,7 @@ fn member(
         spans_written: written.spans.is_some(),
         held,
         buckling_length,
+        imposed_reduction,
         axial_only,
         origin: name.place(),
     })

@@ -22,8 +22,8 @@ pub use actions::{
 };
 pub use checks::{Check, Condition, Members, Narrative, OpenPoint, Placed};
 pub use parts::{
-    BucklingLength, Held, HeldAlong, Hinge, Member, Section, Structure, Support, SupportMap, Taper,
-    Towards, Turned, TurnedAbout,
+    BucklingLength, Held, HeldAlong, Hinge, ImposedReduction, Member, Section, Structure, Support,
+    SupportMap, Taper, Towards, Turned, TurnedAbout,
 };
 
 use schemars::JsonSchema;

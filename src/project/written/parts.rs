@@ -117,6 +117,8 @@ pub struct Member {
     pub held: Option<Held>,
     /// Buckling lengths.
     pub buckling_length: Option<BucklingLength>,
+    /// Reduction of imposed loads in the results and checks of this member alone.
+    pub imposed_reduction: Option<ImposedReduction>,
 }
 
 /// Where local z points.
@@ -262,4 +264,14 @@ pub struct TurnedAbout {
     pub about: Word<Axis>,
     /// The angle.
     pub by: Text,
+}
+
+/// Reduction of imposed loads for area or number of storeys.
+#[derive(Clone, Debug, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct ImposedReduction {
+    /// Factor on imposed loads, above 0 and at most 1.
+    pub factor: Text,
+    /// Clause or calculation that it comes from.
+    pub source: Text,
 }

@@ -217,6 +217,7 @@ fn member(model: &Model, member: &Member) -> MemberRecord {
             .collect(),
         held: HeldRecord { top: edge(&member.held.top), bottom: edge(&member.held.bottom) },
         buckling_length: member.buckling_length,
+        imposed_reduction: member.imposed_reduction.clone(),
         axial_only: member
             .axial_only
             .map(|only| AxialOnlyRecord { compression_accepted: only.compression_accepted }),

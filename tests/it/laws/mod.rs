@@ -8,6 +8,7 @@ mod governing;
 mod module_order;
 mod quantities;
 mod record;
+mod reduction;
 mod sections;
 mod self_check;
 mod worst_place;

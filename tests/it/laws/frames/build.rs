@@ -199,6 +199,7 @@ impl Build {
             spans_written: false,
             held: Held::default(),
             buckling_length: [None, None],
+            imposed_reduction: None,
             axial_only: None,
             origin: origin(),
         });
