@@ -7,6 +7,7 @@ use rayon::prelude::*;
 use super::combine::{on_member, superpose_one};
 use super::extremes::{FLAT, Found, Stretch, extremes};
 use super::loading_by_span::choices;
+use super::progress;
 use super::roots::{shifted, sign_changes};
 use super::{
     Extreme, Extremes, Governing, GoverningMember, MemberSolution, Polynomial, Runner, Segment,
@@ -19,6 +20,7 @@ const SAME_PLACE: f64 = 1e-12;
 
 pub(super) fn govern(model: &Model, solution: &Solution) -> Governing {
     let members: Vec<usize> = (0..model.members.len()).collect();
+    progress::expect(members.len() * model.combinations.len());
     Governing {
         members: members
             .par_iter()
@@ -51,6 +53,7 @@ fn member(model: &Model, member: &Member, solution: &MemberSolution) -> Governin
         let mut wholly = Best::new();
         let mut by_span: Vec<Best> = member.spans.iter().map(|_| Best::new()).collect();
         for combination in combinations {
+            progress::done();
             let factors = on_member(model, member, &model.combinations[combination].factors);
             let choices = choices(model, &factors);
             for variant in &choices.variants {

@@ -19,6 +19,7 @@ mod loading_by_span;
 mod mechanism;
 mod member;
 mod parts;
+mod progress;
 mod roots;
 mod self_check;
 mod side;
@@ -31,6 +32,7 @@ pub use combine::{on_member, superpose, superpose_one};
 pub use extremes::{Found, Stretch, extremes};
 pub use fields::{Fields, Polynomial, evaluate};
 pub use loading_by_span::{Choices, arrangements, choices};
+pub use progress::progress;
 pub use roots::{derivative, sign_changes};
 pub use solution::{
     Arithmetic, Balance, Energy, Extreme, Extremes, Governing, GoverningMember, HandedForce,

@@ -8,6 +8,7 @@
 pub mod catalogue;
 mod issue;
 mod point;
+mod progress;
 mod render;
 mod schema;
 mod sheets;
@@ -124,8 +125,10 @@ impl Project {
             render::print(&[problem], &folder, None);
             Status::CouldNot
         })?;
-        let solved =
-            crate::solve(&sources).map_err(|problems| wrong(&problems, &folder, Some(&sources)))?;
+        let bar = progress::Bar::new();
+        let solved = crate::solve(&sources);
+        drop(bar);
+        let solved = solved.map_err(|problems| wrong(&problems, &folder, Some(&sources)))?;
         render::print(&solved.warnings, &folder, Some(&sources));
         Ok((sources, solved))
     }

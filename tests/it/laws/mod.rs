@@ -4,6 +4,7 @@ mod by_span;
 mod checks;
 mod formulas;
 mod frames;
+mod generated;
 mod governing;
 mod module_order;
 mod quantities;
