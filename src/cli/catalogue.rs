@@ -1,14 +1,14 @@
-//! `catalogue`: finds sections, materials and check sheets, prints their properties and source.
+//! `catalogue`: finds sections, materials, check sheets and combination rules, prints their properties and source.
 //!
 //! Returns what to print; a name that is not found is a problem of the command line.
 
 use clap::{Args, ValueEnum};
 use serde_json::{Map, Value, json};
 
-use super::sheets;
+use super::{rules, sheets};
 use crate::catalogue::{
-    self, CatalogueMaterial, CatalogueSection, Entry, Family, Sheet, families, find, material,
-    material_tables, section,
+    self, CatalogueMaterial, CatalogueSection, Entry, Family, Rule, RuleSet, Sheet, families, find,
+    material, material_tables, section,
 };
 use crate::diagnostic::Diagnostic;
 use crate::quantity::{Kind, Printer, System, Units, parse_as, parse_unit};
@@ -19,7 +19,7 @@ const SIGNIFICANT: usize = 4;
 /// Arguments of `catalogue`.
 #[derive(Args, Clone, Debug)]
 pub struct CatalogueArgs {
-    /// A name (`IPE 300`, `S275`, `bending stress`), a family (`IPE`), `checks` or words to find; none lists
+    /// A name (`IPE 300`, `S275`, `bending stress`), a family (`IPE`), `checks`, `rules` or words to find; none lists
     /// what there is
     pub words: Vec<String>,
     /// Units to print in
@@ -47,6 +47,7 @@ enum Found {
     Section(Box<CatalogueSection>),
     Material(Box<CatalogueMaterial>),
     Sheets(Vec<&'static Sheet>),
+    Rules(Vec<(&'static RuleSet, &'static Rule)>),
     Entries(Vec<Entry>),
 }
 
@@ -83,6 +84,10 @@ pub fn run(args: &CatalogueArgs) -> Result<String, Diagnostic> {
             [one] => sheets::in_full(one),
             several => columns(&sheets::rows(several)),
         },
+        Found::Rules(found) => match &found[..] {
+            [(set, rule)] => rules::in_full(set, rule),
+            several => columns(&rules::rows(several)),
+        },
         Found::Entries(entries) => entry_list(entries, &printer),
     })
 }
@@ -94,6 +99,12 @@ fn look_up(words: &[String], thickness: Option<f64>) -> Result<Found, Diagnostic
     let name = words.join(" ");
     if let Some(sheet) = sheets::sheet(&name) {
         return Ok(Found::Sheets(vec![sheet]));
+    }
+    if let Some(rule) = rules::rule(&name) {
+        return Ok(Found::Rules(vec![rule]));
+    }
+    if name.eq_ignore_ascii_case(rules::ALL) {
+        return Ok(Found::Rules(rules::all()));
     }
     if name.eq_ignore_ascii_case(sheets::ALL) {
         return Ok(Found::Sheets(catalogue::sheets().iter().collect()));
@@ -159,6 +170,7 @@ fn tables() -> String {
     text.push_str(&format!("\nMaterials\n{}", columns(&rows)));
     let all: Vec<&Sheet> = catalogue::sheets().iter().collect();
     text.push_str(&format!("\nCheck sheets\n{}", columns(&sheets::rows(&all))));
+    text.push_str(&format!("\nCombination rules\n{}", columns(&rules::rows(&rules::all()))));
     text
 }
 
@@ -309,6 +321,10 @@ fn as_json(found: &Found) -> Value {
                 "grades": grades,
             })).collect::<Vec<_>>(),
             "checks": catalogue::sheets().iter().map(sheets::as_json).collect::<Vec<_>>(),
+            "rules": rules::all().iter().map(|(set, rule)| rules::as_json(set, rule)).collect::<Vec<_>>(),
+        }),
+        Found::Rules(found) => json!({
+            "rules": found.iter().map(|(set, rule)| rules::as_json(set, rule)).collect::<Vec<_>>(),
         }),
         Found::Sheets(found) => json!({
             "checks": found.iter().map(|sheet| sheets::as_json(sheet)).collect::<Vec<_>>(),

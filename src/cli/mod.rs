@@ -10,6 +10,7 @@ mod issue;
 mod point;
 mod progress;
 mod render;
+mod rules;
 mod schema;
 mod sheets;
 mod shell;
@@ -69,7 +70,7 @@ enum Command {
     Issue(issue::Arguments),
     /// Try the sections of a family in place of one section, lightest first
     Try(trial::Arguments),
-    /// Find sections, materials and check sheets, print their properties and source
+    /// Find sections, materials, check sheets and combination rules, print their properties and source
     Catalogue(catalogue::CatalogueArgs),
     /// Print the JSON Schema of the project file, for editors
     Schema,

@@ -9,7 +9,8 @@ mod steps;
 
 use super::{
     AssumptionRecord, BasisRecord, CombinationRecord, DeferralRecord, FORMAT, Map, ProgramRecord,
-    ProjectRecord, Record, Registers, Results, RevisionRecord, StandardRecord, registers,
+    ProjectRecord, Record, Registers, Results, RevisionRecord, RuleUseRecord, StandardRecord,
+    registers,
 };
 use crate::analysis::{Governing, SelfCheck, Solution};
 use crate::checks::Checked;
@@ -36,6 +37,7 @@ pub(super) fn build(
         basis: basis(model),
         model: input::model(model, solution, governing, self_check),
         combinations: combinations(model),
+        rules: rules(model),
         results: Results {
             nodes: results::nodes(model, solution),
             members: results::members(model, solution, governing),
@@ -113,6 +115,27 @@ fn basis(model: &Model) -> BasisRecord {
             })
             .collect(),
     }
+}
+
+fn rules(model: &Model) -> Vec<RuleUseRecord> {
+    model
+        .rules
+        .iter()
+        .map(|rule| RuleUseRecord {
+            rule: rule.rule.clone(),
+            reference: rule.reference.clone(),
+            annex: rule.annex.clone(),
+            purpose: rule.purpose.name().to_owned(),
+            expansion: rule.expansion.clone(),
+            values: rule.values.clone(),
+            expressions: rule.expressions.clone(),
+            kept: rule.kept,
+            same: rule.same,
+            dominated: rule.dominated,
+            dropped: rule.dropped,
+            notes: rule.notes.clone(),
+        })
+        .collect()
 }
 
 fn combinations(model: &Model) -> Map<CombinationRecord> {

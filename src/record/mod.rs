@@ -10,12 +10,14 @@ mod checked;
 mod json;
 mod look_up;
 mod registers;
+mod rules;
 mod settle;
 mod types;
 
 pub use checked::*;
 pub use look_up::{Band, Piece};
 pub use registers::printed_utilisation;
+pub use rules::*;
 pub use settle::rounded;
 pub use types::*;
 

@@ -12,6 +12,7 @@ pub(super) fn registers(record: &Record) -> Registers {
     open_items.extend(outcomes(record));
     open_items.extend(assumptions(record));
     open_items.extend(narrative(record));
+    open_items.extend(uncombined(record));
     open_items.extend(uplift(record));
     open_items.extend(compression(record));
     open_items.extend(unchecked(record));
@@ -35,6 +36,23 @@ fn assumptions(record: &Record) -> impl Iterator<Item = OpenItem> {
     )
 }
 
+/// Load cases that no combination counts, and those without any load.
+fn uncombined(record: &Record) -> impl Iterator<Item = OpenItem> {
+    let cases = record.model.cases.iter();
+    let unused = cases.clone().filter(|(name, _)| {
+        !record.combinations.values().any(|combination| combination.factors.contains_key(*name))
+    });
+    let unused: Vec<&str> = unused.map(|(name, _)| name.as_str()).collect();
+    let empty = cases.filter(|(_, case)| case.loads.is_empty());
+    let empty: Vec<&str> = empty.map(|(name, _)| name.as_str()).collect();
+    let said = |names: Vec<&str>, what: &str| {
+        (!names.is_empty()).then(|| item("combinations", format!("{what}: {}", names.join(", "))))
+    };
+    said(unused, "Load cases in no combination")
+        .into_iter()
+        .chain(said(empty, "Load cases without a load"))
+}
+
 /// Supports that some combination lifts without `uplift: anchored`.
 fn uplift(record: &Record) -> Vec<OpenItem> {
     let printer = record.model.units.printer();
@@ -50,20 +68,30 @@ fn uplift(record: &Record) -> Vec<OpenItem> {
                 .map_or(0.0, |own| (0..3).map(|axis| support.axes[axis][2] * own[axis]).sum())
         };
         let scale = record.states().map(|state| up(state).abs()).fold(0.0, f64::max);
-        let least = record.combinations.iter().map(|(state, c)| (up(state), &c.number)).fold(
+        let combined = record.combinations.keys().map(|state| (up(state), state, &[][..]));
+        // Where spans may be loaded or not, the governing values know the adverse ones.
+        let upright = support.axes[2][2] >= 1.0;
+        let governing = record.results.reactions.values().filter(|_| upright).filter_map(|nodes| {
+            let least = &nodes.get(name)?.get("Z")?.min;
+            Some((least.value, &least.state, &least.loaded[..]))
+        });
+        let least = combined.chain(governing).fold(
             None,
-            |least: Option<(f64, &String)>, (value, number)| match least {
-                Some((so_far, _)) if so_far <= value => least,
-                _ => Some((value, number)),
+            |least: Option<(f64, &String, &[String])>, next| match least {
+                Some(so_far) if so_far.0 <= next.0 => least,
+                _ => Some(next),
             },
         );
-        if let Some((value, number)) = least
+        if let Some((value, state, loaded)) = least
             && value < -NOTHING * scale
         {
             let force = printer.with_unit(Kind::Force, -value);
             out.push(item(
                 "uplift",
-                format!("Support {name} must hold down {force} in {number} and is not said to be anchored"),
+                format!(
+                    "Support {name} must hold down {force} in {} and is not said to be anchored",
+                    record.in_short(state, loaded)
+                ),
             ));
         }
     }

@@ -3,7 +3,7 @@
 use indexmap::IndexMap;
 use serde::{Deserialize, Serialize};
 
-use super::{CheckRecord, NarrativeRecord, WorkingRecord};
+use super::{CheckRecord, NarrativeRecord, RelationsRecord, RuleUseRecord, WorkingRecord};
 use crate::analysis::{Arithmetic, Fields};
 use crate::model::{FORCES, Side};
 use crate::quantity::{Printer, Units};
@@ -26,6 +26,9 @@ pub struct Record {
     pub basis: BasisRecord,
     pub model: ModelRecord,
     pub combinations: Map<CombinationRecord>,
+    /// Rules that made combinations.
+    #[serde(default)]
+    pub rules: Vec<RuleUseRecord>,
     pub results: Results,
     /// By check and what it is made on, then the agreements of hand calculations.
     pub checks: Vec<CheckRecord>,
@@ -303,6 +306,11 @@ pub struct CaseRecord {
     pub duration: Option<String>,
     pub source: Option<String>,
     pub self_weight: bool,
+    #[serde(skip_serializing_if = "RelationsRecord::is_empty", default)]
+    pub relations: RelationsRecord,
+    /// ψ0, ψ1, ψ2 where the project states them.
+    #[serde(skip_serializing_if = "Option::is_none", default)]
+    pub psi: Option<[f64; 3]>,
     /// Of a case that acts by span.
     #[serde(skip_serializing_if = "Option::is_none", default)]
     pub by_span: Option<BySpanRecord>,

@@ -5,7 +5,7 @@ use serde::Serialize;
 use super::{FigureRef, Quantity};
 use crate::figures::Figure;
 use crate::quantity::{Kind, Printer};
-use crate::record::{LoadRecord, Record, TargetRecord};
+use crate::record::{CombinationRecord, LoadRecord, Record, RuleUseRecord, TargetRecord};
 
 /// Cases side by side in one block of the factors matrix.
 const COLUMNS: usize = 8;
@@ -284,10 +284,40 @@ pub(super) fn takedown(record: &Record) -> Vec<HandedRow<'_>> {
     out
 }
 
-/// The factors matrix.
+/// Combinations: the rules that made them, a list for each purpose, the factors matrix.
 #[derive(Serialize)]
 pub(super) struct Combinations<'r> {
+    rules: Vec<RuleRow<'r>>,
+    relations: Vec<String>,
+    purposes: Vec<PurposeView<'r>>,
+    /// Left out where there are more than [`MATRIX`] combinations: the lists say the same.
     blocks: Vec<Block<'r>>,
+    count: usize,
+}
+
+/// Most combinations of which a matrix is printed besides the lists.
+const MATRIX: usize = 60;
+
+/// A rule in use.
+#[derive(Serialize)]
+struct RuleRow<'r> {
+    rule: &'r str,
+    reference: &'r str,
+    annex: Option<&'r str>,
+    purpose: &'r str,
+    expansion: &'r str,
+    kept: usize,
+    same: usize,
+    dominated: String,
+    values: String,
+    expressions: &'r [String],
+    notes: Option<&'r str>,
+}
+
+/// The combinations of one purpose.
+#[derive(Serialize)]
+struct PurposeView<'r> {
+    purpose: &'r str,
     rows: Vec<CombinationRow<'r>>,
 }
 
@@ -308,7 +338,6 @@ struct FactorRow<'r> {
 #[derive(Serialize)]
 struct CombinationRow<'r> {
     number: &'r str,
-    purpose: &'r str,
     title: &'r str,
     expression: String,
     clause: Option<&'r str>,
@@ -318,50 +347,133 @@ struct CombinationRow<'r> {
 
 pub(super) fn combinations(record: &Record) -> Combinations<'_> {
     let cases: Vec<&str> = record.model.cases.keys().map(String::as_str).collect();
-    let significant = record.model.units.significant;
-    let factor = |value: f64| crate::quantity::print(value, significant);
+    let mut purposes: Vec<PurposeView<'_>> = Vec::new();
+    for combination in record.combinations.values() {
+        let row = combination_row(record, combination);
+        match purposes.iter_mut().find(|view| view.purpose == combination.purpose) {
+            Some(view) => view.rows.push(row),
+            None => purposes.push(PurposeView { purpose: &combination.purpose, rows: vec![row] }),
+        }
+    }
+    let matrix = record.combinations.len() <= MATRIX;
     Combinations {
+        rules: record.rules.iter().map(rule_row).collect(),
+        relations: relations(record),
+        purposes,
         blocks: cases
             .chunks(COLUMNS)
-            .map(|cases| Block {
-                cases: cases.to_vec(),
-                rows: record
-                    .combinations
-                    .values()
-                    .map(|combination| FactorRow {
-                        number: &combination.number,
-                        factors: cases
-                            .iter()
-                            .map(|case| {
-                                combination
-                                    .factors
-                                    .get(*case)
-                                    .map_or_else(String::new, |f| factor(*f))
-                            })
-                            .collect(),
-                    })
-                    .collect(),
-            })
+            .filter(|_| matrix)
+            .map(|cases| Block { cases: cases.to_vec(), rows: factor_rows(record, cases) })
             .collect(),
-        rows: record
-            .combinations
-            .values()
-            .map(|combination| {
-                let terms: Vec<String> = combination
-                    .factors
-                    .iter()
-                    .map(|(case, value)| format!("{} {case}", factor(*value)))
-                    .collect();
-                CombinationRow {
-                    number: &combination.number,
-                    purpose: &combination.purpose,
-                    title: &combination.title,
-                    expression: terms.join(" + "),
-                    clause: combination.clause.as_deref(),
-                    reason: combination.reason.as_deref(),
-                    duration: combination.duration.as_deref(),
-                }
-            })
-            .collect(),
+        count: record.combinations.len(),
     }
+}
+
+fn factor(record: &Record, value: f64) -> String {
+    crate::quantity::print(value, record.model.units.significant)
+}
+
+fn combination_row<'r>(
+    record: &'r Record,
+    combination: &'r CombinationRecord,
+) -> CombinationRow<'r> {
+    let mut expression = String::new();
+    for (case, value) in &combination.factors {
+        let sign = match (expression.is_empty(), *value < 0.0) {
+            (true, false) => "",
+            (true, true) => "\u{2212}",
+            (false, false) => " + ",
+            (false, true) => " \u{2212} ",
+        };
+        expression += &format!("{sign}{} {case}", factor(record, value.abs()));
+    }
+    CombinationRow {
+        number: &combination.number,
+        title: &combination.title,
+        expression,
+        clause: combination.clause.as_deref(),
+        reason: combination.reason.as_deref(),
+        duration: combination.duration.as_deref(),
+    }
+}
+
+fn factor_rows<'r>(record: &'r Record, cases: &[&'r str]) -> Vec<FactorRow<'r>> {
+    let of = |combination: &'r CombinationRecord| FactorRow {
+        number: &combination.number,
+        factors: cases
+            .iter()
+            .map(|case| {
+                combination.factors.get(*case).map_or_else(String::new, |f| factor(record, *f))
+            })
+            .collect(),
+    };
+    record.combinations.values().map(of).collect()
+}
+
+fn rule_row(rule: &RuleUseRecord) -> RuleRow<'_> {
+    let values: Vec<String> = rule
+        .values
+        .iter()
+        .map(|(name, value)| format!("{name} = {}", crate::quantity::print(*value, 6)))
+        .collect();
+    RuleRow {
+        rule: &rule.rule,
+        reference: &rule.reference,
+        annex: rule.annex.as_deref(),
+        purpose: &rule.purpose,
+        expansion: &rule.expansion,
+        kept: rule.kept,
+        same: rule.same,
+        dominated: match (rule.dominated, rule.dropped) {
+            (Some(count), true) => format!("{count}, left out"),
+            (Some(count), false) => format!("{count}, kept"),
+            (None, _) => "not counted".to_owned(),
+        },
+        values: values.join(", "),
+        expressions: &rule.expressions,
+        notes: rule.notes.as_deref(),
+    }
+}
+
+/// What is stated of how cases act together, in sentences.
+fn relations(record: &Record) -> Vec<String> {
+    let mut out = Vec::new();
+    let mut groups: Vec<(&str, Vec<&str>)> = Vec::new();
+    for (name, case) in &record.model.cases {
+        if let Some(group) = &case.relations.one_of {
+            match groups.iter_mut().find(|(own, _)| own == group) {
+                Some((_, cases)) => cases.push(name),
+                None => groups.push((group, vec![name])),
+            }
+        }
+    }
+    for (group, cases) in groups {
+        out.push(format!("At most one of {} acts at a time ({group}).", cases.join(", ")));
+    }
+    for (name, case) in &record.model.cases {
+        let relations = &case.relations;
+        if !relations.together_with.is_empty() {
+            out.push(format!("{name} acts only with {}.", relations.together_with.join(", ")));
+        }
+        if relations.reverses {
+            out.push(format!("{name} acts in both senses, one at a time."));
+        }
+        if let Some(group) = &relations.source_group {
+            out.push(format!("{name} is favourable or unfavourable with its source {group}."));
+        }
+        if let Some([a, b, c]) = case.psi {
+            out.push(format!("ψ of {name} as the project states: {a}, {b}, {c}."));
+        }
+        if let Some(by_span) = &case.by_span {
+            let how = match by_span.loading.as_str() {
+                "any" => {
+                    "every choice of loaded spans, the adverse one found for each effect and place"
+                }
+                "alternate" => "all, alternate or no spans loaded",
+                _ => "all, alternate, two adjacent or no spans loaded (EN 1992-1-1, 5.1.3)",
+            };
+            out.push(format!("{name} acts by span: {how}."));
+        }
+    }
+    out
 }

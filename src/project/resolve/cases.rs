@@ -5,7 +5,8 @@ use super::loads;
 use super::names::Names;
 use super::reader::Reader;
 use crate::model::{
-    CaseId, Direction, Load, LoadCase, LoadForm, LoadKind, MemberId, Model, Per, Relations, Written,
+    CaseId, Direction, Duration, Load, LoadCase, LoadForm, LoadKind, MemberId, Model, Nature, Per,
+    Relations, Written,
 };
 use crate::project::text::{Map, Text};
 use crate::project::written;
@@ -29,7 +30,12 @@ pub(super) fn cases(reader: &mut Reader, written: &Map<written::LoadCase>, model
                 source_group: words(case.source_group.as_ref()),
             },
             by_span: case.by_span.as_ref().map(|word| word.is),
-            duration: case.duration.as_ref().map(|word| word.is),
+            // What acts permanently does so for timber too, unless the project says otherwise.
+            duration: case
+                .duration
+                .as_ref()
+                .map(|word| word.is)
+                .or((case.nature.is == Nature::Permanent).then_some(Duration::Permanent)),
             source: words(case.source.as_ref()),
             self_weight: !weighted.is_empty(),
             loads: weighted.into_iter().map(|id| self_weight(model, id, name)).collect(),

@@ -37,7 +37,9 @@ pub(super) fn of_kind(model: &Model, kind: &str, case: CaseId) -> bool {
     use Nature as N;
     let nature = model[case].nature;
     match kind {
-        "permanent" => matches!(nature, N::Permanent | N::Earth | N::Settlement),
+        // The factor on settlement depends on the analysis (Table A1.2(B), NOTE 4): it is for the engineer to
+        // write, and a case in no combination is an open item.
+        "permanent" => matches!(nature, N::Permanent | N::Earth),
         "leading" | "accompanying" | "variable" => matches!(
             nature,
             N::Imposed
@@ -59,7 +61,7 @@ pub(super) fn of_kind(model: &Model, kind: &str, case: CaseId) -> bool {
         "W" => nature == N::Wind,
         "F" => nature == N::Fluid,
         "H" => nature == N::Earth,
-        "T" => matches!(nature, N::Thermal | N::Settlement),
+        "T" => nature == N::Thermal,
         "Ev" => nature == N::SeismicVertical,
         "Eh" => nature == N::SeismicHorizontal,
         _ => false,

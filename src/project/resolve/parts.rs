@@ -66,7 +66,7 @@ pub(super) fn parts(reader: &mut Reader, written: &Map<written::LoadCase>, model
                     Some((member, span)) => {
                         format!("{}/{}.{}", case.name, model[member].name, span + 1)
                     }
-                    None => format!("{}/rest", case.name),
+                    None => format!("{}/others", case.name),
                 };
                 let case = LoadCase {
                     name,

@@ -2,7 +2,7 @@
 
 use crate::analysis::{SelfCheck, Solution, arrangements};
 use crate::model::{CaseId, Load, LoadKind, Model, Per, SpanLoading, StructureId, Target};
-use crate::record::{BySpanRecord, CaseRecord, LoadRecord, Map, TargetRecord};
+use crate::record::{BySpanRecord, CaseRecord, LoadRecord, Map, RelationsRecord, TargetRecord};
 
 pub(super) fn cases(model: &Model, solution: &Solution, self_check: &SelfCheck) -> Map<CaseRecord> {
     model
@@ -18,6 +18,13 @@ pub(super) fn cases(model: &Model, solution: &Solution, self_check: &SelfCheck) 
                 duration: case.duration.map(|duration| duration.name().to_owned()),
                 source: case.source.clone(),
                 self_weight: case.self_weight,
+                relations: RelationsRecord {
+                    one_of: case.relations.one_of.clone(),
+                    together_with: names(model, &case.relations.together_with),
+                    reverses: case.relations.reverses,
+                    source_group: case.relations.source_group.clone(),
+                },
+                psi: case.psi,
                 by_span: case.by_span.map(|loading| by_span(model, id, loading)),
                 loads: case
                     .loads
@@ -39,21 +46,22 @@ pub(super) fn cases(model: &Model, solution: &Solution, self_check: &SelfCheck) 
         .collect()
 }
 
+fn names(model: &Model, cases: &[CaseId]) -> Vec<String> {
+    cases.iter().map(|case| model[*case].name.clone()).collect()
+}
+
 fn by_span(model: &Model, case: CaseId, loading: SpanLoading) -> BySpanRecord {
-    let names = |parts: &[CaseId]| -> Vec<String> {
-        parts.iter().map(|part| model[*part].name.clone()).collect()
-    };
     let parts: Vec<CaseId> = model.parts_of(case).collect();
     let sets = match loading {
         SpanLoading::Any => Vec::new(),
-        _ => arrangements(model, &parts, loading).iter().map(|set| names(set)).collect(),
+        _ => arrangements(model, &parts, loading).iter().map(|set| names(model, set)).collect(),
     };
     let loading = match loading {
         SpanLoading::Any => "any",
         SpanLoading::AlternateAndAdjacent => "alternate and adjacent",
         SpanLoading::Alternate => "alternate",
     };
-    BySpanRecord { loading: loading.to_owned(), parts: names(&parts), sets }
+    BySpanRecord { loading: loading.to_owned(), parts: names(model, &parts), sets }
 }
 
 fn load(model: &Model, solution: &Solution, case: CaseId, index: usize, load: &Load) -> LoadRecord {

@@ -22,7 +22,8 @@ fn help_lists_the_commands() {
       solve        Solve a project and print what governs; writes nothing
       issue        Write the calculation package into the project's `package` folder
       try          Try the sections of a family in place of one section, lightest first
-      catalogue    Find sections, materials and check sheets, print their properties and source
+      catalogue    Find sections, materials, check sheets and combination rules, print their properties
+                   and source
       schema       Print the JSON Schema of the project file, for editors
       completions  Print shell completions
       man          Print the manual page
@@ -152,13 +153,13 @@ fn help_of_catalogue() {
     assert_snapshot!(run(&["catalogue", "--help"]).shown(), @r"
     exit: 0
     --- stdout
-    Find sections, materials and check sheets, print their properties and source
+    Find sections, materials, check sheets and combination rules, print their properties and source
 
     Usage: spanfolio catalogue [OPTIONS] [WORDS]...
 
     Arguments:
-      [WORDS]...  A name (`IPE 300`, `S275`, `bending stress`), a family (`IPE`), `checks` or words to
-                  find; none lists what there is
+      [WORDS]...  A name (`IPE 300`, `S275`, `bending stress`), a family (`IPE`), `checks`, `rules` or
+                  words to find; none lists what there is
 
     Options:
           --jobs <N>            Threads to use at most; the result does not depend on it
