@@ -4,6 +4,7 @@ use super::anchor::{anchor, check_heading};
 use super::markdown;
 use crate::diagnostic::{Diagnostic, Place};
 use crate::files::Sources;
+use crate::project::narrative::Fences;
 use crate::record::{Record, by_id};
 
 /// What a link can lead to, besides headings by their own ids.
@@ -119,13 +120,10 @@ impl<'r> Targets<'r> {
 
 /// The lines of headings outside code, without their marks.
 fn headings(markdown: &str) -> impl Iterator<Item = &str> {
-    let mut fence = false;
+    let mut fences = Fences::default();
     markdown.lines().filter_map(move |line| {
-        if line.starts_with("```") || line.starts_with("~~~") {
-            fence = !fence;
-        }
         let rest = line.trim_start_matches('#');
-        (!fence && rest.len() < line.len()).then(|| rest.strip_prefix(' ')).flatten()
+        (!fences.holds(line) && rest.len() < line.len()).then(|| rest.strip_prefix(' ')).flatten()
     })
 }
 
@@ -137,22 +135,12 @@ fn plain(heading: &str) -> String {
 /// Every link to a thing, outside code.
 fn links(text: &str) -> Vec<Link<'_>> {
     let mut out = Vec::new();
-    let mut fence: Option<&str> = None;
+    let mut fences = Fences::default();
     let mut at = 0;
     for line in text.split_inclusive('\n') {
         let start = at;
         at += line.len();
-        let bare = line.trim_end();
-        let mark = bare.len() - bare.trim_start_matches('`').len();
-        if mark >= 3 {
-            match fence {
-                None => fence = Some(&bare[..mark]),
-                Some(open) if bare == open => fence = None,
-                Some(_) => {}
-            }
-            continue;
-        }
-        if fence.is_none() {
+        if !fences.holds(line.trim_end()) {
             in_line(line, start, &mut out);
         }
     }

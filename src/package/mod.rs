@@ -19,6 +19,7 @@ mod narrative;
 mod number;
 mod steps;
 mod templates;
+mod unclosed;
 
 use std::collections::BTreeMap;
 
@@ -108,6 +109,7 @@ fn chapters(
     let mut add = |out: &mut String, name: &str, template: &str, numbered: bool| {
         match renderer.render(template) {
             Ok(text) => {
+                problems.extend(unclosed::problem(&text, template, sources));
                 let chapter = numbering.chapter(&text, numbered);
                 if let Some(heading) = chapter.lines().find_map(|line| line.strip_prefix("# ")) {
                     targets.chapter(name, heading);

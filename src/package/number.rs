@@ -5,6 +5,8 @@
 
 use std::fmt::Write;
 
+use crate::project::narrative::Fences;
+
 /// Begins the caption of a figure or table.
 pub(super) const FIGURE: &str = "Figure ";
 pub(super) const TABLE: &str = "**Table ";
@@ -35,33 +37,19 @@ impl Numbering {
 
     fn lines(&mut self, markdown: &str, numbered: bool) -> String {
         let mut out = String::with_capacity(markdown.len() + 256);
-        let mut fence = "";
+        let mut fences = Fences::default();
         let mut blank = true;
         for line in markdown.trim().lines() {
             let line = line.trim_end();
-            if fence.is_empty() && line.starts_with("```") {
-                fence = &line[..line.len() - line.trim_start_matches('`').len()];
-            } else if !fence.is_empty() {
-                if line == fence {
-                    fence = "";
-                }
-            } else if line.is_empty() {
-                // Templates leave runs of empty lines where a loop or condition had nothing to say.
-                if blank {
-                    continue;
-                }
-                blank = true;
-                out.push('\n');
-                continue;
-            } else if let Some(changed) = self.line(line, numbered) {
-                out += &changed;
-                out.push('\n');
-                blank = false;
+            let code = fences.holds(line);
+            // Templates leave runs of empty lines where a loop or condition had nothing to say.
+            if !code && line.is_empty() && blank {
                 continue;
             }
-            out += line;
+            blank = !code && line.is_empty();
+            let changed = if code { None } else { self.line(line, numbered) };
+            out += changed.as_deref().unwrap_or(line);
             out.push('\n');
-            blank = false;
         }
         out.push('\n');
         out

@@ -72,9 +72,7 @@ pub fn cut(text: &str, first: usize) -> Cut {
                 }
                 open = Some((kind, fence, range));
             }
-            (Some((kind, opening, start)), Some(fence))
-                if fence.starts_with(opening) && bare[fence.len()..].trim().is_empty() =>
-            {
+            (Some((kind, opening, start)), Some(fence)) if closes(bare, fence, opening) => {
                 match kind {
                     Some(kind) => {
                         let body = (start.end + 1).min(range.start)..range.start;
@@ -97,9 +95,42 @@ pub fn cut(text: &str, first: usize) -> Cut {
     Cut { template, blocks }
 }
 
-/// Three or more backticks or tildes at the beginning of a line.
+/// Tells lines of code from text, line by line, as CommonMark has it.
+#[derive(Clone, Debug, Default)]
+pub struct Fences {
+    open: Option<String>,
+}
+
+impl Fences {
+    /// Whether the next line is code or a fence.
+    pub fn holds(&mut self, line: &str) -> bool {
+        let bare = line.trim_start_matches(' ');
+        let mark = fence(bare).filter(|_| line.len() - bare.len() < 4);
+        match (&self.open, mark) {
+            (None, None) => false,
+            (None, Some(mark)) => {
+                self.open = Some(mark.to_owned());
+                true
+            }
+            (Some(opening), Some(mark)) if closes(bare, mark, opening) => {
+                self.open = None;
+                true
+            }
+            (Some(_), _) => true,
+        }
+    }
+}
+
+/// The mark closes a fence: as long at least, and nothing behind it.
+fn closes(line: &str, mark: &str, opening: &str) -> bool {
+    mark.starts_with(opening) && line[mark.len()..].trim().is_empty()
+}
+
+/// Three or more backticks or tildes at the beginning of a line; backticks with another behind them are code
+/// within the line.
 fn fence(line: &str) -> Option<&str> {
     let mark = line.chars().next().filter(|c| matches!(c, '`' | '~'))?;
-    let length = line.len() - line.trim_start_matches(mark).len();
-    (length >= 3).then(|| &line[..length])
+    let rest = line.trim_start_matches(mark);
+    let length = line.len() - rest.len();
+    (length >= 3 && !(mark == '`' && rest.contains('`'))).then(|| &line[..length])
 }

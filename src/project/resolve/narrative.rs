@@ -6,7 +6,7 @@ use super::reader::Reader;
 use crate::diagnostic::{Diagnostic, Place};
 use crate::files::Sources;
 use crate::model::{Model, Narrative, NarrativeBlock};
-use crate::project::narrative::{Block, BlockKind, Cut, cut};
+use crate::project::narrative::{Block, BlockKind, Cut, Fences, cut};
 use crate::project::text::Words as _;
 use crate::project::written::{self, words::Chapter};
 use crate::project::{de, near, shape, tree};
@@ -97,17 +97,14 @@ fn heading(reader: &mut Reader, path: &str, text: &str) {
         reader.error("empty", format!("the narrative file `{path}` is empty"), place(0..0));
         return;
     }
-    let mut fence: Option<&str> = None;
+    let mut fences = Fences::default();
     let mut first = true;
     let mut at = 0;
     for line in text.split_inclusive('\n') {
         let range = at..at + line.trim_end().len();
         at += line.len();
         let bare = line.trim_end();
-        if let Some(mark) = bare.get(..3).filter(|mark| matches!(*mark, "```" | "~~~")) {
-            fence = if fence.is_some() { None } else { Some(mark) };
-        }
-        if fence.is_some() || bare.is_empty() {
+        if fences.holds(bare) || bare.is_empty() {
             continue;
         }
         let chapter = bare.starts_with("# ");

@@ -208,3 +208,27 @@ fn the_context_has_the_names_of_version_one() {
                  self_check, method_figure, sources] %}{% endfor %}# All there\n";
     assert!(issued(&with_template("summary.md", names)).is_ok());
 }
+
+fn with_narrative(text: &str) -> Sources {
+    let mut sources = sources(BEAM);
+    sources.files.insert("narrative/a.md".to_owned(), text.as_bytes().to_vec());
+    sources
+}
+
+/// An unclosed fence took the chapters behind it, the cautions with them, into a block of code.
+#[test]
+fn a_chapter_that_is_not_closed_is_an_error_at_its_place() {
+    for opening in ["```yaml", "~~~", "<!-- for later"] {
+        let problem = problem(&with_narrative(&format!("# Purpose\n\nText\n\n{opening}\nmore\n")));
+        let place = problem.place.expect("a place");
+        assert_eq!((problem.code, place.file.as_str()), ("unclosed-block", "narrative/a.md"));
+        assert_eq!(place.range, 17..17 + opening.len());
+    }
+}
+
+#[test]
+fn code_within_a_line_opens_no_block() {
+    let narrative = "# Purpose\n\n``` a ``` is code, [](#chapter:effects)\n\n## Scope\n";
+    let markdown = text(&issued(&with_narrative(narrative)).expect("a package"), "package.md");
+    assert!(markdown.contains("[chapter 7 Effects](#7-effects)\n\n## 2.1 Scope\n"), "{markdown}");
+}
