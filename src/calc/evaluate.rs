@@ -23,6 +23,29 @@ pub struct Evaluation {
     /// Which branch of each conditional and row of each `choose` was taken, in order of evaluation;
     /// those inside conditions, which are not shown with values, left out.
     pub taken: Vec<usize>,
+    /// Where the formula may jump or bend, in order of evaluation.
+    pub turns: Vec<Turn>,
+}
+
+/// What decides on which smooth branch a formula is.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Turn {
+    /// A comparison: whether it holds, and the left value less the right one, SI.
+    Compared { holds: bool, margin: f64 },
+    /// The result of `floor`, `ceil` or `sign`, or the row of a `choose`.
+    Step(f64),
+}
+
+impl Turn {
+    /// Both lie on the same branch.
+    #[must_use]
+    pub fn is_same(self, other: Self) -> bool {
+        match (self, other) {
+            (Self::Compared { holds, .. }, Self::Compared { holds: other, .. }) => holds == other,
+            (Self::Step(one), Self::Step(other)) => one.total_cmp(&other).is_eq(),
+            _ => false,
+        }
+    }
 }
 
 impl Value {
@@ -54,12 +77,12 @@ impl Formula {
     /// Dimensions that do not go together, a result that is not a finite number, a look-up outside its
     /// rows; at the place in the formula.
     pub fn evaluate(&self, readings: &[Value]) -> Result<Evaluation, CalcError> {
-        let mut run = Run { readings, taken: Vec::new() };
+        let mut run = Run { readings, taken: Vec::new(), turns: Vec::new() };
         let value = run.value(&self.root)?;
         if let Value::Number(quantity) = &value {
             self.printable(*quantity)?;
         }
-        Ok(Evaluation { value, taken: run.taken })
+        Ok(Evaluation { value, taken: run.taken, turns: run.turns })
     }
 
     /// The value where it must be a quantity.
@@ -67,9 +90,16 @@ impl Formula {
     /// # Errors
     /// As [`Formula::evaluate`], and where the result is a truth value or a word.
     pub fn quantity(&self, readings: &[Value]) -> Result<Quantity, CalcError> {
-        let quantity = Run { readings, taken: Vec::new() }.quantity(&self.root)?;
-        self.printable(quantity)?;
-        Ok(quantity)
+        quantity_of(&self.root, &self.evaluate(readings)?.value)
+    }
+
+    /// [`Formula::quantity`], with what decides on its branch.
+    ///
+    /// # Errors
+    /// As [`Formula::quantity`].
+    pub fn traced(&self, readings: &[Value]) -> Result<(Quantity, Vec<Turn>), CalcError> {
+        let evaluation = self.evaluate(readings)?;
+        Ok((quantity_of(&self.root, &evaluation.value)?, evaluation.turns))
     }
 
     /// The result can be printed in the unit stated for it.
@@ -84,18 +114,21 @@ impl Formula {
         }
     }
 
-    /// The value where it must be true or false.
+    /// The value where it must be true or false, with what decides on it.
     ///
     /// # Errors
     /// As [`Formula::evaluate`], and where the result is a quantity or a word.
-    pub fn truth(&self, readings: &[Value]) -> Result<bool, CalcError> {
-        Run { readings, taken: Vec::new() }.truth(&self.root)
+    pub fn truth(&self, readings: &[Value]) -> Result<(bool, Vec<Turn>), CalcError> {
+        let mut run = Run { readings, taken: Vec::new(), turns: Vec::new() };
+        let truth = run.truth(&self.root)?;
+        Ok((truth, run.turns))
     }
 }
 
 struct Run<'v> {
     readings: &'v [Value],
     taken: Vec<usize>,
+    turns: Vec<Turn>,
 }
 
 impl Run<'_> {
@@ -104,7 +137,10 @@ impl Run<'_> {
             ExprKind::Quantity { quantity, .. } => Value::Number(*quantity),
             ExprKind::Pi => Value::number(std::f64::consts::PI, Dimension::NONE),
             ExprKind::Word(word) => Value::word(word),
-            ExprKind::Read(index) => self.readings[*index].clone(),
+            ExprKind::Read(index) => match &self.readings[*index] {
+                Value::Number(quantity) => Value::Number(finite(expr, *quantity)?),
+                other => other.clone(),
+            },
             ExprKind::Negate(inner) => {
                 let inner = self.quantity(inner)?;
                 Value::Number(Quantity { value: -inner.value, ..inner })
@@ -193,16 +229,18 @@ impl Run<'_> {
             Binary::Power => power(expr, left, right, a, b).map(Value::Number),
             _ => {
                 let dimension = same(expr, binary.sign(), &[(left, a), (right, b)])?;
-                match binary {
-                    Binary::Add => number(a.value + b.value, dimension),
-                    Binary::Subtract => number(a.value - b.value, dimension),
-                    Binary::Less => Ok(Value::Truth(a.value < b.value)),
-                    Binary::LessOrEqual => Ok(Value::Truth(a.value <= b.value)),
-                    Binary::Greater => Ok(Value::Truth(a.value > b.value)),
-                    Binary::GreaterOrEqual => Ok(Value::Truth(a.value >= b.value)),
-                    Binary::Equal => Ok(Value::Truth(equal(a.value, b.value))),
-                    _ => Ok(Value::Truth(!equal(a.value, b.value))),
-                }
+                let holds = match binary {
+                    Binary::Add => return number(a.value + b.value, dimension),
+                    Binary::Subtract => return number(a.value - b.value, dimension),
+                    Binary::Less => a.value < b.value,
+                    Binary::LessOrEqual => a.value <= b.value,
+                    Binary::Greater => a.value > b.value,
+                    Binary::GreaterOrEqual => a.value >= b.value,
+                    Binary::Equal => equal(a.value, b.value),
+                    _ => !equal(a.value, b.value),
+                };
+                self.turns.push(Turn::Compared { holds, margin: a.value - b.value });
+                Ok(Value::Truth(holds))
             }
         }
     }
@@ -256,6 +294,9 @@ impl Run<'_> {
                 plain(of_number(function, x.value, first)?)
             }
         };
+        if matches!(function, Function::Sign | Function::Floor | Function::Ceil) {
+            self.turns.push(Turn::Step(result.value));
+        }
         finite(expr, result)
     }
 
@@ -309,6 +350,8 @@ impl Run<'_> {
             };
             if found {
                 self.taken.push(index);
+                #[expect(clippy::cast_precision_loss, reason = "few rows")]
+                self.turns.push(Turn::Step(index as f64));
                 return self.value(value);
             }
         }

@@ -18,7 +18,7 @@ mod token;
 mod typeset;
 mod unit;
 
-pub use evaluate::{Evaluation, Value};
+pub use evaluate::{Evaluation, Turn, Value};
 pub use expression::{Argument, Formula, Reading};
 pub use function::Function;
 pub use latex::latex;

@@ -1,7 +1,7 @@
 //! Runs the formulas of one check for the values of its readings.
 
 use super::{Entry, Evaluated, StepValue, Task};
-use crate::calc::{CalcError, Value};
+use crate::calc::{CalcError, Turn, Value};
 use crate::diagnostic::Diagnostic;
 use crate::model::{Check, Placed, Slot, Source};
 use crate::quantity::Quantity;
@@ -29,6 +29,8 @@ pub(super) struct Evaluator<'t> {
     pub(super) readings: Vec<Value>,
     steps: Vec<Option<Value>>,
     levels: Vec<Level>,
+    /// What decided, in the last run, on which branch the formulas that change along a member are.
+    pub(super) turns: Vec<Turn>,
 }
 
 impl<'t> Evaluator<'t> {
@@ -48,7 +50,14 @@ impl<'t> Evaluator<'t> {
             let level = level_of(&step.formula, &sources, &levels);
             levels.push(level);
         }
-        Self { check, sources, readings, steps: vec![None; check.steps.len()], levels }
+        Self {
+            check,
+            sources,
+            readings,
+            steps: vec![None; check.steps.len()],
+            levels,
+            turns: Vec::new(),
+        }
     }
 
     /// The utilisation can change along a member.
@@ -68,6 +77,7 @@ impl<'t> Evaluator<'t> {
                 *step = None;
             }
         }
+        self.turns.clear();
         // Conditions on what is read come first: they may keep a step from dividing by zero.
         for late in [false, true] {
             if late {
@@ -91,6 +101,11 @@ impl<'t> Evaluator<'t> {
             );
             return Err(Problem::whole(&self.check.demand, message));
         }
+        if !self.check.one_sided {
+            // A demand below zero counts like a condition that does not hold.
+            let (holds, margin) = (demand.value >= 0.0, demand.value);
+            self.turns.push(Turn::Compared { holds, margin });
+        }
         Ok(Said::Values { demand: demand.value, capacity: capacity.value })
     }
 
@@ -103,6 +118,9 @@ impl<'t> Evaluator<'t> {
                     .formula
                     .evaluate(&values)
                     .map_err(|error| Problem::at(formula, error))?;
+                if self.levels[index] == Level::Point {
+                    self.turns.extend(evaluation.turns);
+                }
                 self.steps[index] = Some(evaluation.value);
             }
         }
@@ -117,14 +135,18 @@ impl<'t> Evaluator<'t> {
         formula.slots.iter().map(value).collect()
     }
 
-    fn quantity(&self, formula: &Placed) -> Result<Quantity, Problem> {
-        let values = self.values(formula);
-        formula.formula.quantity(&values).map_err(|error| Problem::at(formula, error))
+    fn quantity(&mut self, formula: &Placed) -> Result<Quantity, Problem> {
+        let traced = formula.formula.traced(&self.values(formula));
+        let (quantity, turns) = traced.map_err(|error| Problem::at(formula, error))?;
+        self.turns.extend(turns);
+        Ok(quantity)
     }
 
-    fn truth(&self, formula: &Placed) -> Result<bool, Problem> {
-        let values = self.values(formula);
-        formula.formula.truth(&values).map_err(|error| Problem::at(formula, error))
+    fn truth(&mut self, formula: &Placed) -> Result<bool, Problem> {
+        let traced = formula.formula.truth(&self.values(formula));
+        let (truth, turns) = traced.map_err(|error| Problem::at(formula, error))?;
+        self.turns.extend(turns);
+        Ok(truth)
     }
 
     /// Every step kept, at the readings as they stand.
@@ -159,7 +181,9 @@ fn level_of(formula: &Placed, sources: &[&Source], steps: &[Level]) -> Level {
         Slot::Step(index) => steps[*index],
         Slot::Reading(index) => match sources[*index] {
             Source::Constant(_) => Level::Target,
-            Source::Effect(_) | Source::Position | Source::Span => Level::Point,
+            Source::Effect(_) | Source::Position | Source::Span | Source::Cantilever => {
+                Level::Point
+            }
             _ => Level::Combination,
         },
     };

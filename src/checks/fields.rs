@@ -20,8 +20,7 @@ pub(super) fn scales(model: &Model, solution: &Solution) -> Scales {
             let length = segment.to - segment.from;
             for fields in &segment.states {
                 for (scale, polynomial) in scales.iter_mut().zip(&fields.0) {
-                    let bound = polynomial.iter().rev().fold(0.0, |sum, c| sum * length + c.abs());
-                    *scale = scale.max(bound);
+                    *scale = scale.max(bound(polynomial, length));
                 }
             }
         }
@@ -36,6 +35,11 @@ pub(super) fn scales(model: &Model, solution: &Solution) -> Scales {
         }
     }
     Scales { effects, reactions }
+}
+
+/// What a polynomial does not exceed over a length.
+pub(super) fn bound(polynomial: &Polynomial, length: f64) -> f64 {
+    polynomial.iter().rev().fold(0.0, |sum, c| sum * length + c.abs())
 }
 
 /// A value without its round-off.

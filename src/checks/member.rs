@@ -2,17 +2,13 @@
 
 use super::evaluator::{Evaluator, Level, Problem};
 use super::fields::{Along, along};
-use super::search::{PARTS, REFINED, bounds, length, refined};
+use super::search::{PARTS, REFINED, SPLITS, Sample, bounds, dips, length, peaks, refined};
 use super::weigh::{Spot, Weighing, not_applicable};
 use super::{CheckResult, Task};
 use crate::calc::Value;
 use crate::diagnostic::Diagnostic;
-use crate::model::{CaseId, Effect, Member, MemberId, Side, Source};
+use crate::model::{CaseId, Effect, Member, MemberId, Side, Source, Span};
 use crate::quantity::Dimension;
-
-/// A bracket whose best sample, raised by this share of its spread, cannot beat the best so far is left
-/// unrefined: between eight samples a smooth curve rises by a sixtieth of its spread.
-const MARGIN: f64 = 0.25;
 
 pub(super) fn check(
     task: &Task<'_>,
@@ -70,6 +66,20 @@ struct Run<'t> {
     effects: Vec<Effect>,
 }
 
+/// The search in one entry.
+struct Look<'l> {
+    along: &'l Along,
+    entry: usize,
+    piece: usize,
+    /// To which places are refined, m.
+    width: f64,
+    fresh: Level,
+    /// The greatest utilisation so far.
+    best: f64,
+    weighing: &'l mut Weighing,
+    place: &'l mut Option<f64>,
+}
+
 impl Run<'_> {
     fn along(&self, factors: &[(CaseId, f64)]) -> Along {
         let task = self.task;
@@ -108,16 +118,24 @@ impl Run<'_> {
                 Source::Effect(effect) => number(*effect, along.value(piece, *effect, x)),
                 Source::Position => Value::number(x, Dimension::LENGTH),
                 Source::Span => {
-                    let of = &along.pieces[piece];
-                    let middle = 0.5 * (of.from + of.to);
-                    let span = self.member.span_at(middle).map(|span| self.member.spans[span]);
+                    let span = self.span(along, piece);
                     let length = span.map_or(self.member.length, |span| span.to - span.from);
                     Value::number(length, Dimension::LENGTH)
+                }
+                Source::Cantilever => {
+                    Value::Truth(self.span(along, piece).is_some_and(|span| span.is_cantilever()))
                 }
                 _ => continue,
             };
             self.evaluator.readings[index] = value;
         }
+    }
+
+    /// The span that holds a piece.
+    fn span(&self, along: &Along, piece: usize) -> Option<&Span> {
+        let of = &along.pieces[piece];
+        let span = self.member.span_at(0.5 * (of.from + of.to))?;
+        Some(&self.member.spans[span])
     }
 
     /// One entry; `place` is where it stands, for messages.
@@ -134,60 +152,111 @@ impl Run<'_> {
             weighing.take(entry, None, None, said);
             return Ok(());
         }
-        let mut fresh = Level::Combination;
         let width = REFINED * length(&along);
-        let mut best = f64::NEG_INFINITY;
-        let last = along.pieces.len().saturating_sub(1);
+        let mut look = Look {
+            along: &along,
+            entry,
+            piece: 0,
+            width,
+            fresh: Level::Combination,
+            best: f64::NEG_INFINITY,
+            weighing,
+            place,
+        };
         for piece in 0..along.pieces.len() {
-            let bounds = bounds(&along.pieces[piece]);
-            let (from, to) = (along.pieces[piece].from, along.pieces[piece].to);
-            for bracket in bounds.windows(2) {
-                let (low, high) = (bracket[0], bracket[1]);
-                let mut samples: Vec<(f64, f64)> = Vec::new();
-                for part in 0..=PARTS {
-                    let x = if part == PARTS {
-                        high
-                    } else {
-                        low + (high - low) * f64::from(part) / f64::from(PARTS)
-                    };
-                    *place = Some(x);
-                    self.set_point(&along, piece, x);
-                    let said = self.evaluator.run(fresh)?;
-                    fresh = Level::Point;
-                    let side = if x <= from && piece > 0 {
-                        Some(Side::After)
-                    } else if x >= to && piece < last {
-                        Some(Side::Before)
-                    } else {
-                        None
-                    };
-                    if let Some(value) = weighing.take(entry, Some(x), side, said) {
-                        samples.push((x, value));
-                    }
-                }
-                let top = samples.iter().map(|(_, value)| *value).fold(f64::NEG_INFINITY, f64::max);
-                let bottom = samples.iter().map(|(_, value)| *value).fold(f64::INFINITY, f64::min);
-                best = best.max(top);
-                if !top.is_finite() || top + MARGIN * (top - bottom) < best || top <= bottom {
-                    continue;
-                }
-                let Some(peak) = samples.iter().position(|(_, value)| *value >= top) else {
-                    continue;
-                };
-                let around = (
-                    samples[peak.saturating_sub(1)].0,
-                    samples[(peak + 1).min(samples.len() - 1)].0,
-                );
-                refined(around, width, |x| {
-                    *place = Some(x);
-                    self.set_point(&along, piece, x);
-                    let said = self.evaluator.run(Level::Point)?;
-                    let value = weighing.take(entry, Some(x), None, said);
-                    Ok(value.unwrap_or(f64::NEG_INFINITY))
-                })?;
+            look.piece = piece;
+            for bracket in bounds(&along.pieces[piece]).windows(2) {
+                self.bracket(&mut look, (bracket[0], bracket[1]), SPLITS)?;
             }
         }
         Ok(())
+    }
+
+    /// Looks for the worst place between two others. Where a condition or a formula turns to another branch on
+    /// the way, both sides are looked at by themselves, at most `splits` times over.
+    fn bracket(
+        &mut self,
+        look: &mut Look<'_>,
+        (low, high): (f64, f64),
+        splits: u32,
+    ) -> Result<(), Problem> {
+        let mut samples = Vec::with_capacity(PARTS as usize + 1);
+        for part in 0..=PARTS {
+            let x = if part == PARTS {
+                high
+            } else {
+                low + (high - low) * f64::from(part) / f64::from(PARTS)
+            };
+            samples.push(self.at(look, x)?);
+        }
+        if splits > 0
+            && let Some((before, after)) = self.turn(look, &samples)?
+        {
+            for (from, to) in [(low, before), (after, high)] {
+                if to - from > look.width {
+                    self.bracket(look, (from, to), splits - 1)?;
+                }
+            }
+            return Ok(());
+        }
+        for (from, to) in peaks(&samples, look.best) {
+            refined((from, to), look.width, |x| {
+                Ok(self.at(look, x)?.utilisation.unwrap_or(f64::NEG_INFINITY))
+            })?;
+        }
+        Ok(())
+    }
+
+    /// Places just before and behind the first turn to another branch.
+    fn turn(
+        &mut self,
+        look: &mut Look<'_>,
+        samples: &[Sample],
+    ) -> Result<Option<(f64, f64)>, Problem> {
+        let seen = samples.windows(2).find(|pair| !pair[0].is_like(&pair[1]));
+        if let Some([before, after]) = seen {
+            let (mut low, mut high) = (before.x, after.x);
+            while high - low > look.width {
+                let middle = 0.5 * (low + high);
+                let same = self.at(look, middle)?.is_like(before);
+                *(if same { &mut low } else { &mut high }) = middle;
+            }
+            return Ok(Some((low, high)));
+        }
+        // Turned and back again between two samples.
+        for (turn, sign, around) in dips(samples) {
+            let mut found = None;
+            refined(around, look.width, |x| {
+                let sample = self.at(look, x)?;
+                if !sample.is_like(&samples[0]) {
+                    found = Some(x);
+                }
+                Ok(sample.margin(turn).map_or(f64::INFINITY, |margin| -sign * margin))
+            })?;
+            if let Some(x) = found {
+                return Ok(Some((x, x)));
+            }
+        }
+        Ok(None)
+    }
+
+    /// Evaluates at one place.
+    fn at(&mut self, look: &mut Look<'_>, x: f64) -> Result<Sample, Problem> {
+        *look.place = Some(x);
+        self.set_point(look.along, look.piece, x);
+        let said = self.evaluator.run(look.fresh)?;
+        look.fresh = Level::Point;
+        let piece = &look.along.pieces[look.piece];
+        let side = if x <= piece.from && look.piece > 0 {
+            Some(Side::After)
+        } else if x >= piece.to && look.piece + 1 < look.along.pieces.len() {
+            Some(Side::Before)
+        } else {
+            None
+        };
+        let utilisation = look.weighing.take(look.entry, Some(x), side, said);
+        look.best = look.best.max(utilisation.unwrap_or(f64::NEG_INFINITY));
+        Ok(Sample { x, utilisation, turns: self.evaluator.turns.clone() })
     }
 
     fn in_full(&mut self, entry: usize, spot: Spot) -> Result<super::Evaluated, Problem> {

@@ -123,8 +123,10 @@ impl Outcome {
 
 /// How the greatest utilisation along a member is found, for the package.
 pub const METHOD: &str = "In every combination of its purpose a check is evaluated at both ends of every piece between nodes, load ends, \
-extremes and zeros of the effects that it reads, and at seven points between; around the greatest of these the place is refined \
-to a millionth of the member's length by golden section.";
+extremes and zeros of the effects that it reads, and at seven points between. \
+Where a formula or a condition turns to another branch on the way, that place is found by halving, and what lies before and behind it \
+is looked at in the same manner. \
+Around the greatest utilisations the place is refined to a millionth of the member's length by golden section.";
 
 /// Evaluates every check and working block.
 ///

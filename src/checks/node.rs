@@ -1,12 +1,12 @@
 //! Checks on nodes: reactions and displacements.
 
 use super::evaluator::{Evaluator, Level, Problem};
-use super::fields::settled;
+use super::fields::{bound, settled};
 use super::weigh::{Weighing, not_applicable};
-use super::{CheckResult, Task};
+use super::{CheckResult, Task, is_variable};
 use crate::calc::Value;
 use crate::diagnostic::Diagnostic;
-use crate::model::{CaseId, NodeId, Source};
+use crate::model::{CaseId, Duration, NodeId, On, Source};
 use crate::quantity::Dimension;
 
 pub(super) fn check(
@@ -75,14 +75,44 @@ pub(super) fn by_combination(
     })
 }
 
-/// Shortest duration of a combination's cases.
+/// Shortest duration among the cases that act on the target; what stays for good has the longest.
 pub(super) fn duration(task: &Task<'_>, entry: usize) -> Result<Value, Problem> {
-    let of = &task.model.combinations[task.entries[entry].combination];
-    of.duration.map(|duration| Value::word(duration.name())).ok_or_else(|| {
+    let of = |(case, _): &(CaseId, f64)| {
+        let case = &task.model[*case];
+        case.duration.or((!is_variable(case.nature)).then_some(Duration::Permanent))
+    };
+    let factors = &task.entries[entry].factors;
+    let acting = factors.iter().filter(|(case, _)| acts(task, *case)).filter_map(of).max();
+    let duration = acting.or_else(|| factors.iter().filter_map(of).max());
+    duration.map(|duration| Value::word(duration.name())).ok_or_else(|| {
         let check = &task.model.checks[task.check];
-        let message = format!("no load case of {} states its `duration`", of.number);
+        let combination = &task.model.combinations[task.entries[entry].combination];
+        let message = format!("no load case of {} states its `duration`", combination.number);
         Problem::whole(&check.demand, message)
     })
+}
+
+/// A case does something to the target.
+fn acts(task: &Task<'_>, case: CaseId) -> bool {
+    let solution = task.solution;
+    let moves = |node: &NodeId| {
+        let node = &solution.nodes[node.0];
+        let reaction =
+            node.reaction.get(case.0).is_some_and(|all| all.iter().any(|v| v.abs() > 0.0));
+        reaction || node.displacement[case.0].iter().any(|value| value.abs() > 0.0)
+    };
+    match task.model.checks[task.check].targets[task.target].on {
+        On::Member { member, .. } => {
+            let scales = &task.scales.effects[task.model[member].structure.0];
+            solution.members[member.0].segments.iter().any(|segment| {
+                let length = segment.to - segment.from;
+                let fields = segment.states[case.0].0.iter().zip(scales);
+                fields.into_iter().any(|(field, scale)| settled(bound(field, length), *scale) > 0.0)
+            })
+        }
+        On::Node { node, .. } => moves(&node),
+        On::Structure { structure, .. } => task.model[structure].nodes.iter().any(moves),
+    }
 }
 
 /// Reaction along the support's own axes, N and N m.

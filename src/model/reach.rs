@@ -30,6 +30,8 @@ pub enum Source {
     Position,
     /// Length of the span that holds the point.
     Span,
+    /// Whether that span has one free end.
+    Cantilever,
     /// Greatest and least of an effect along the target, in the same combination.
     Greatest(Effect),
     Least(Effect),
@@ -170,6 +172,16 @@ impl Model {
         }
     }
 
+    /// Whether a name is one of the target's own, which a step may then not have.
+    #[must_use]
+    pub fn has(&self, on: On, name: &str) -> bool {
+        match on {
+            On::Member { member, span } => self.of_member(&self[member], span, name).0.is_some(),
+            On::Node { node, relative_to } => self.of_node(node, relative_to, name).is_some(),
+            On::Structure { about, .. } => of_structure(about, name).is_some(),
+        }
+    }
+
     fn unknown(&self, on: On, name: &str, missing: Option<String>) -> Unbound {
         if let Some(message) = missing {
             return Unbound { message, hint: None, known: Vec::new() };
@@ -236,6 +248,7 @@ impl Model {
         let has = |what: &str| format!("section `{}` has no known {what}", section.name);
         let states = |what: &str| format!("member `{}` states no {what}", member.name);
         let bounds = self.ends(member, span);
+        let one_span = span.or((member.spans.len() == 1).then_some(0)).map(|k| member.spans[k]);
         let found = match name {
             "E" => constant(Kind::Modulus, material.e),
             "G" => constant(Kind::Modulus, material.g),
@@ -248,11 +261,8 @@ impl Model {
                 }
             }
             "length" => constant(Kind::Length, member.length),
-            "span" => match span.or((member.spans.len() == 1).then_some(0)) {
-                Some(span) => {
-                    let span = member.spans[span];
-                    constant(Kind::Length, span.to - span.from)
-                }
+            "span" => match one_span {
+                Some(span) => constant(Kind::Length, span.to - span.from),
                 None => of(Source::Span, Kind::Length),
             },
             "x" => of(Source::Position, Kind::Length),
@@ -276,7 +286,10 @@ impl Model {
             "start_hinged" | "end_hinged" => {
                 truth(is_hinged(member, if name == "start_hinged" { bounds.0 } else { bounds.1 }))
             }
-            "cantilever" => truth(self.is_free(member, bounds.0) != self.is_free(member, bounds.1)),
+            "cantilever" => match one_span {
+                Some(span) => truth(span.is_cantilever()),
+                None => Bound { source: Source::Cantilever, kind: None },
+            },
             "shape" => word(properties.form),
             "family" => word(&material.family),
             "service_class" => match &material.service_class {
@@ -547,9 +560,14 @@ impl Call<'_> {
                 self.wrong(format!("`{}` takes {plain} plain arguments", self.reading.name))
             );
         }
-        for key in self.arguments.iter().filter_map(|(key, _)| key.as_ref()) {
-            if !keys.contains(&key.as_str()) {
+        let given: Vec<&str> =
+            self.arguments.iter().filter_map(|(key, _)| key.as_deref()).collect();
+        for (index, key) in given.iter().enumerate() {
+            if !keys.contains(key) {
                 return Err(self.wrong(format!("`{}` has no argument `{key}`", self.reading.name)));
+            }
+            if given[..index].contains(key) {
+                return Err(self.wrong(format!("`{key}` is given twice")));
             }
         }
         Ok(())
@@ -603,10 +621,10 @@ impl Call<'_> {
     }
 
     /// `'max'` or `'min'` with a purpose, or one state.
-    fn which(&self, at: Option<(f64, Side)>) -> Result<Of, Unbound> {
+    fn which(&self, at: Option<(f64, Side)>, of_member: bool) -> Result<Of, Unbound> {
         if let Some(state) = self.state()? {
             let (x, side) = at.unwrap_or((0.0, Side::Before));
-            self.only(2, &["state", "at", "side", "span"])?;
+            self.only(2, if of_member { &["state", "at", "side", "span"] } else { &["state"] })?;
             return Ok(Of::State(state, x, side));
         }
         let which = self.text(2, "`max` or `min`, or a `state`")?;
@@ -618,7 +636,7 @@ impl Call<'_> {
                 })?,
             _ => return Err(self.wrong(format!("`{}` needs a `purpose`", self.reading.name))),
         };
-        self.only(3, &["purpose", "span"])?;
+        self.only(3, if of_member { &["purpose", "span"] } else { &["purpose"] })?;
         let combinations = &self.model.combinations;
         if !combinations.iter().any(|combination| combination.purpose == purpose) {
             let message = format!("the project has no combination of purpose `{}`", purpose.name());
@@ -640,7 +658,9 @@ impl Call<'_> {
         let spans = self.model[member].spans.len();
         let span = match self.keyed("span") {
             None => None,
-            Some(Argument::Quantity(Quantity { value, .. })) => {
+            Some(Argument::Quantity(Quantity { value, dimension }))
+                if *dimension == Dimension::NONE =>
+            {
                 let found = (0..spans).find(|span| {
                     #[expect(clippy::cast_precision_loss, reason = "few spans")]
                     let number = (*span + 1) as f64;
@@ -655,22 +675,30 @@ impl Call<'_> {
             Some(Argument::Quantity(Quantity { value, dimension }))
                 if *dimension == Dimension::LENGTH =>
             {
-                let from = span.map_or(0.0, |span| self.model[member].spans[span].from);
+                let (from, to) = self.model.ends(&self.model[member], span);
                 let x = from + value;
-                if !(0.0..=self.model[member].length).contains(&x) {
-                    return Err(self.wrong(format!("{x} m is not on the member")));
+                if !(from..=to).contains(&x) {
+                    let what = if span.is_some() { "span" } else { "member" };
+                    return Err(self.wrong(format!("{value} m is not on the {what}")));
                 }
                 let side = match self.keyed("side") {
+                    None => Side::Before,
+                    Some(Argument::Text(side) | Argument::Name(side)) if side == "before" => {
+                        Side::Before
+                    }
                     Some(Argument::Text(side) | Argument::Name(side)) if side == "after" => {
                         Side::After
                     }
-                    _ => Side::Before,
+                    Some(_) => {
+                        let message = "`side` is `before` or `after`".to_owned();
+                        return Err(self.wrong(message));
+                    }
                 };
                 Some((x, side))
             }
             Some(_) => return Err(self.wrong("`at` is a length".to_owned())),
         };
-        let of = self.which(at)?;
+        let of = self.which(at, true)?;
         if matches!(of, Of::State(..)) && at.is_none() {
             return Err(self.wrong("an effect in a state needs its place: `at=2.7 m`".to_owned()));
         }
@@ -684,7 +712,7 @@ impl Call<'_> {
             return Err(self.wrong(format!("node `{}` has no support", self.model[node].name)));
         }
         let component = self.component()?;
-        let of = self.which(None)?;
+        let of = self.which(None, false)?;
         let query = Query::Reaction { node, component, of };
         Ok(self::of(Source::Result(query), component_kind(component, true)))
     }
@@ -717,13 +745,22 @@ impl Model {
     /// What a check is made on, in words.
     #[must_use]
     pub fn on_name(&self, on: On) -> String {
+        let name = |node: NodeId| self[node].name.as_str();
         match on {
             On::Member { member, span: None } => format!("member {}", self[member].name),
             On::Member { member, span: Some(span) } => {
                 format!("member {}, span {}", self[member].name, span + 1)
             }
-            On::Node { node, .. } => format!("node {}", self[node].name),
-            On::Structure { structure, .. } => format!("structure {}", self[structure].name),
+            On::Node { node, relative_to: None } => format!("node {}", name(node)),
+            On::Node { node, relative_to: Some(other) } => {
+                format!("node {} against {}", name(node), name(other))
+            }
+            On::Structure { structure, about: None } => {
+                format!("structure {}", self[structure].name)
+            }
+            On::Structure { structure, about: Some(edge) } => {
+                format!("structure {} about {}", self[structure].name, name(edge))
+            }
         }
     }
 }

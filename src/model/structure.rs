@@ -130,6 +130,14 @@ pub struct Span {
     pub free: [bool; 2],
 }
 
+impl Span {
+    /// One end is free, the other is not.
+    #[must_use]
+    pub const fn is_cantilever(&self) -> bool {
+        self.free[0] != self.free[1]
+    }
+}
+
 /// Where the top (+z) and bottom (−z) edges are held against moving sideways.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub struct Held {

@@ -10,7 +10,7 @@ use crate::catalogue::{Sheet, SheetShows, SheetTarget};
 use crate::diagnostic::{Diagnostic, Place};
 use crate::model::{
     Assumption, Check, CheckTarget, Condition, DeflectionFrom, MemberId, Model, NodeId, On,
-    Purpose, Shows, StructureId,
+    Purpose, Shows, Span, StructureId,
 };
 use crate::project::text::{Located, Map, Text};
 use crate::project::written::{self, words::CheckPurpose};
@@ -218,6 +218,7 @@ fn inputs<'s>(
                 .at(place.clone())
                 .hint(format!("give it: `with: {{{name}: …}}`")),
             );
+            formulas.is_missing(name);
         }
     }
 }
@@ -441,6 +442,13 @@ fn of_nodes(reader: &mut Reader, written: &written::Check, model: &Model) -> Opt
     for name in names {
         let Some(id) = node(reader, model, name) else { continue };
         if let Some((other, text)) = relative_to
+            && other == id
+        {
+            let message = format!("`{name}` does not move relative to itself");
+            reader.error("unknown-node", message, text.place());
+            continue;
+        }
+        if let Some((other, text)) = relative_to
             && model[other].structure != model[id].structure
         {
             let message = format!("`{text}` is not of the structure of `{name}`");
@@ -473,6 +481,7 @@ fn bind(
     model: &Model,
 ) -> Vec<CheckTarget> {
     let mut reported: Vec<String> = Vec::new();
+    shadows(reader, formulas, on, whose, model);
     on.iter()
         .map(|on| {
             if let Some(reason) = sheet.and_then(|sheet| does_not_apply(sheet, *on, model)) {
@@ -499,6 +508,21 @@ fn bind(
             CheckTarget { on: *on, bound, deferred: None }
         })
         .collect()
+}
+
+/// A step of the name of something in reach would make formulas mean one before it and the other behind it.
+fn shadows(reader: &mut Reader, formulas: &Formulas, on: &[On], whose: &str, model: &Model) {
+    for step in &formulas.steps {
+        let name = &step.symbol;
+        let Some(on) = on.iter().find(|on| model.has(**on, name)) else { continue };
+        let message =
+            format!("{whose}the step `{name}` has the name of a value of {}", model.on_name(*on));
+        reader.problem(
+            Diagnostic::error("duplicate-name", message)
+                .at(step.formula.place.clone())
+                .hint("give the step another name".to_owned()),
+        );
+    }
 }
 
 /// The input whose default reads this name can be given instead.
@@ -559,8 +583,8 @@ fn deflection(
             let On::Member { member, span } = target else { continue };
             let spans = &model[*member].spans;
             let fits = match span {
-                Some(span) => spans[*span].free[0] != spans[*span].free[1],
-                None => spans.iter().all(|span| span.free[0] != span.free[1]),
+                Some(span) => spans[*span].is_cantilever(),
+                None => spans.iter().all(Span::is_cantilever),
             };
             if !fits {
                 let name = &model[*member].name;

@@ -48,6 +48,11 @@ impl Formulas {
         self.broken.iter().any(|broken| broken == name)
     }
 
+    /// A step that should be there and is not, which is reported.
+    pub(super) fn is_missing(&mut self, name: &str) {
+        self.broken.push(name.to_owned());
+    }
+
     /// Adds a step whose name later formulas read.
     pub(super) fn step(
         &mut self,

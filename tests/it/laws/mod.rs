@@ -1,6 +1,7 @@
 //! See the files beside this one.
 
 mod by_span;
+mod check_places;
 mod checks;
 mod formulas;
 mod frames;
