@@ -25,6 +25,8 @@ pub struct CatalogueMaterial {
     /// By symbol (`f_y`, `f_m_k`, …), with what they are; for the thickness stated in the source.
     pub strengths: IndexMap<String, (f64, Kind)>,
     pub source: String,
+    /// Greatest thickness at which the strengths hold, m; `None` where they do not depend on it.
+    pub up_to: Option<f64>,
 }
 
 /// m; where no thickness is stated, strengths are those for this one.
@@ -158,6 +160,7 @@ fn read(table: &Table, row: &Row<'_>, thickness: Option<f64>) -> Option<Catalogu
     }
     let asked = thickness.unwrap_or(USUAL_THICKNESS);
     let mut range = None;
+    let mut up_to = None;
     for (symbol, values) in &limits {
         // Round-off of a thickness converted from inches must not push it over a limit.
         let fits = values.iter().find(|(limit, _)| asked <= limit * (1.0 + 1e-9));
@@ -168,6 +171,9 @@ fn read(table: &Table, row: &Row<'_>, thickness: Option<f64>) -> Option<Catalogu
             (None, Some(_)) => return None,
         };
         range.get_or_insert(*limit);
+        // Beyond the table its least value stands in.
+        let last = values.iter().map(|(limit, _)| *limit).fold(0.0, f64::max);
+        up_to.get_or_insert(if fits.is_some() { *limit } else { last });
         strengths.get_mut(symbol)?.0 = *value;
     }
     let mut source = table.note("source").to_owned();
@@ -192,5 +198,6 @@ fn read(table: &Table, row: &Row<'_>, thickness: Option<f64>) -> Option<Catalogu
         expansion: row.number("expansion")?,
         strengths,
         source,
+        up_to,
     })
 }

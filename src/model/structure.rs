@@ -183,6 +183,8 @@ pub struct Material {
     pub expansion: f64,
     /// Strengths and the like by symbol (`f_y`, `f_u`, `f_m_k`, …), SI, with what they are.
     pub strengths: IndexMap<String, (f64, Kind)>,
+    /// Greatest thickness at which the strengths hold, m; `None` where they do not depend on it.
+    pub up_to: Option<f64>,
     pub service_class: Option<String>,
     pub source: String,
     pub origin: Origin,

@@ -62,6 +62,7 @@ fn from_catalogue(
             density: found.density,
             expansion: found.expansion,
             strengths: found.strengths,
+            up_to: found.up_to,
             service_class: words(written.get("service_class")),
             source: words(written.get("source")).unwrap_or(found.source),
             origin: name.place(),
@@ -117,6 +118,7 @@ fn in_full(reader: &mut Reader, name: &Text, written: &written::Material) -> Opt
         density: density?,
         expansion: expansion?,
         strengths,
+        up_to: None,
         service_class: words(written.get("service_class")),
         source: words(written.get("source"))
             .unwrap_or_else(|| "given in the project file".to_owned()),
@@ -134,6 +136,7 @@ fn unknown(name: &Text) -> Material {
         density: 0.0,
         expansion: 0.0,
         strengths: IndexMap::new(),
+        up_to: None,
         service_class: None,
         source: String::new(),
         origin: name.place(),

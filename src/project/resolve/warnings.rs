@@ -1,4 +1,4 @@
-//! What is odd but not wrong: things that nothing uses.
+//! What is odd but not wrong: things that nothing uses, strengths of thinner parts.
 
 use std::collections::BTreeSet;
 
@@ -29,6 +29,7 @@ pub(super) fn warnings(model: &Model, marks: &BTreeSet<String>) -> Vec<Diagnosti
             unused("unused-material", "material", &material.name, &material.origin);
         }
     }
+    too_thick(model, &mut out);
     for (index, case) in model.cases.iter().enumerate() {
         if case.loads.is_empty() {
             out.push(
@@ -52,4 +53,32 @@ pub(super) fn warnings(model: &Model, marks: &BTreeSet<String>) -> Vec<Diagnosti
     }
     out.sort_by_key(|problem| problem.place.as_ref().map(|place| place.range.start));
     out
+}
+
+/// Sections with parts beyond the thickness at which their material has its strengths.
+fn too_thick(model: &Model, out: &mut Vec<Diagnostic>) {
+    let mut seen = BTreeSet::new();
+    for member in &model.members {
+        let (section, material) = (&model[member.section], &model[member.material]);
+        let (Some(part), Some(limit)) = (section.properties.thickest(), material.up_to) else {
+            continue;
+        };
+        if part > limit * (1.0 + 1e-9) && seen.insert((member.section.0, member.material.0)) {
+            let mm = |metres: f64| crate::quantity::print(1e3 * metres, 4);
+            out.push(
+                Diagnostic::warning(
+                    "thickness",
+                    format!(
+                        "section `{}` is {} mm thick, and material `{}` has its strengths up to {} mm",
+                        section.name,
+                        mm(part),
+                        material.name,
+                        mm(limit)
+                    ),
+                )
+                .at(section.origin.clone())
+                .hint(format!("state it: `thickness: {} mm` at the material", mm(part))),
+            );
+        }
+    }
 }

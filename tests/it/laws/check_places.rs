@@ -150,3 +150,21 @@ fn arguments_that_say_nothing_are_refused() {
         assert_eq!(problems[0].message, message);
     }
 }
+
+/// The strengths of a grade without `thickness` are those up to 40 mm.
+#[test]
+fn a_flange_thicker_than_the_strengths_allow_is_a_warning() {
+    let of = |material: &str| {
+        let yaml = project(&own("members: [B1], demand: abs(M_y), capacity: 900 kN m"))
+            .replace("grade: S275", material)
+            .replace(
+                "catalogue: IPE 300",
+                "shape: I, depth: 500 mm, width: 300 mm, web: 20 mm, flange: 45 mm",
+            );
+        let warnings = spanfolio::solve(&sources(&yaml)).expect("a record").warnings;
+        warnings.into_iter().map(|warning| warning.message).collect::<Vec<_>>()
+    };
+    let said = "section `beam` is 45 mm thick, and material `steel` has its strengths up to 40 mm";
+    assert_eq!(of("grade: S275"), [said]);
+    assert!(of("grade: S275, thickness: 45 mm").is_empty());
+}

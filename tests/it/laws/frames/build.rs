@@ -112,6 +112,7 @@ impl Build {
             density: 7850.0,
             expansion: ALPHA,
             strengths: Default::default(),
+            up_to: None,
             service_class: None,
             source: String::new(),
             origin: origin(),
