@@ -49,7 +49,7 @@ pub enum Status {
     long_about = "Turns one YAML project file into a calculation package for beams and frames that a checker can review.\n\n\
                   A package supports and does not replace the judgement of a licensed engineer; local codes and national annexes govern.",
     after_help = "Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); \
-                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred`.",
+                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred` (`solve`), or no section satisfies (`try`).",
     propagate_version = true
 )]
 pub struct Arguments {

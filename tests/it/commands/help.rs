@@ -41,7 +41,7 @@ fn help_lists_the_commands() {
 
     Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); 2
     the command line or the project is wrong; 3 a check is not satisfied, or deferred without being
-    named in `basis.deferred`.
+    named in `basis.deferred` (`solve`), or no section satisfies (`try`).
     ");
 }
 
