@@ -260,6 +260,10 @@ impl Model {
                     None => return (None, Some(has(name))),
                 }
             }
+            "A_el_z" => match properties.elastic_shear_area() {
+                Some(area) => constant(Kind::Area, area),
+                None => return (None, Some(has(name))),
+            },
             "length" => constant(Kind::Length, member.length),
             "span" => match one_span {
                 Some(span) => constant(Kind::Length, span.to - span.from),
@@ -390,7 +394,8 @@ impl Model {
 }
 
 /// Names of a member besides its effects, section properties and strengths.
-const MEMBER_NAMES: [&str; 22] = [
+const MEMBER_NAMES: [&str; 23] = [
+    "A_el_z",
     "E",
     "G",
     "density",

@@ -17,6 +17,7 @@ mod integral;
 mod open;
 mod polygon;
 mod shape;
+mod shear;
 mod torsion;
 
 pub use open::european_i_torsion;
@@ -176,6 +177,19 @@ impl Properties {
     #[must_use]
     pub fn depth(&self) -> Option<f64> {
         Some(self.z_top? + self.z_bottom?)
+    }
+
+    /// Thickest part, which decides on strengths that depend on it, m; `None` where dimensions are not known.
+    #[must_use]
+    pub fn thickest(&self) -> Option<f64> {
+        let parts: &[&str] = match self.form {
+            // A bar is as thick as it is slender.
+            "rectangle" => return Some(self.depth()?.min(self.width()?)),
+            "circle" => return self.depth(),
+            _ => &["t", "t_f", "t_f_top", "t_f_bottom", "t_w"],
+        };
+        let known = parts.iter().filter_map(|part| self.dimensions.get(*part).copied());
+        known.reduce(f64::max)
     }
 
     /// Overall width along y, m.

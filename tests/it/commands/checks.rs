@@ -105,7 +105,7 @@ fn the_chapter_of_checks_shows_formula_values_and_result() {
 
     Worst on member B1 at x = 3 m, in C1 (store).
 
-    Stress that may be reached:
+    Stress that may be reached; f_y where the partial factor is 1:
 
     $$
     f_{\mathrm{allow}} = f_{y} = 275\,\mathrm{MPa}

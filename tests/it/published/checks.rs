@@ -196,7 +196,7 @@ fn combined_stress() {
     let sigma: f64 = 1.35 * 300e3 / 64e-4 + 1.5 * 20e3 * 3.6 / 400e-6;
     let tau = 1.5 * 20e3 / 20e-4;
     by_hand(
-        "{id: c, sheet: combined stress, members: [P1], purpose: strength}",
+        "{id: c, sheet: combined stress, members: [P1], purpose: strength, with: {A_shear: A_vz}}",
         (sigma * sigma + 3.0 * tau * tau).sqrt() / 250e6,
     );
 }

@@ -8,4 +8,5 @@ mod compare;
 mod families;
 mod sections;
 mod shapes;
+mod shear;
 mod translate;
