@@ -9,12 +9,12 @@ use super::sheets::{Sheets, Used};
 use crate::catalogue::{Sheet, SheetShows, SheetTarget};
 use crate::diagnostic::{Diagnostic, Place};
 use crate::model::{
-    Assumption, Check, CheckTarget, Condition, DeflectionFrom, MemberId, Model, NodeId, On,
+    Assumption, Check, CheckTarget, Condition, DeflectionFrom, MemberId, Model, NodeId, On, Placed,
     Purpose, Shows, Span, StructureId,
 };
 use crate::project::text::{Located, Map, Text};
 use crate::project::written::{self, words::CheckPurpose};
-use crate::quantity::Kind;
+use crate::quantity::{Kind, System, Units};
 
 /// Groups of members by name.
 pub(super) type Groups = Vec<(String, Vec<MemberId>)>;
@@ -114,8 +114,16 @@ fn check(
             formulas.placed(reader, &source, true)
         }
     };
-    let demand = formula(reader, &mut formulas, "demand");
-    let capacity = formula(reader, &mut formulas, "capacity");
+    let mut demand = formula(reader, &mut formulas, "demand");
+    let mut capacity = formula(reader, &mut formulas, "capacity");
+    if let Some((used, ..)) = sheet.as_ref().filter(|(used, ..)| used.is_of_catalogue()) {
+        let steps = formulas.steps.iter_mut();
+        let steps = steps.filter(|step| used.sheet.steps.contains_key(step.symbol.as_str()));
+        let formulas = steps.map(|step| &mut step.formula);
+        for placed in formulas.chain(&mut demand).chain(&mut capacity) {
+            in_units_of_project(placed, &model.units);
+        }
+    }
     let validity = validity(reader, written, sheet.as_ref(), &mut formulas);
     let limit = match &written.limit {
         Some(text) => reader.positive(text, Kind::Number)?,
@@ -158,6 +166,19 @@ fn check(
         cautions: plain.map(|sheet| sheet.cautions.clone()).unwrap_or_default(),
         origin: written.place(),
     })
+}
+
+/// A unit in a sheet of the catalogue stands for what usually has it; the project says in which unit that
+/// prints.
+fn in_units_of_project(placed: &mut Placed, units: &Units) {
+    let Some(stated) = &placed.formula.unit else { return };
+    let usual = Units::new(System::Si);
+    let kind = usual.iter().find(|(_, unit)| unit.label == stated.label).map(|(kind, _)| kind);
+    match kind {
+        Some(kind) => placed.formula.unit = Some(units.get(kind).clone()),
+        None if units.system == System::Us => placed.formula.unit = None,
+        None => {}
+    }
 }
 
 /// A formula of the project file.
@@ -512,14 +533,14 @@ fn bind(
 
 /// A step of the name of something in reach would make formulas mean one before it and the other behind it.
 fn shadows(reader: &mut Reader, formulas: &Formulas, on: &[On], whose: &str, model: &Model) {
-    for step in &formulas.steps {
+    for (step, place) in formulas.steps.iter().zip(&formulas.named_at) {
         let name = &step.symbol;
         let Some(on) = on.iter().find(|on| model.has(**on, name)) else { continue };
         let message =
             format!("{whose}the step `{name}` has the name of a value of {}", model.on_name(*on));
         reader.problem(
             Diagnostic::error("duplicate-name", message)
-                .at(step.formula.place.clone())
+                .at(place.clone())
                 .hint("give the step another name".to_owned()),
         );
     }

@@ -38,6 +38,8 @@ pub(super) struct Formulas {
     /// Every reading, each once, with the formula in which it stands first.
     pub(super) readings: Vec<(crate::calc::Reading, Place)>,
     pub(super) steps: Vec<Step>,
+    /// Where each step is named.
+    pub(super) named_at: Vec<Place>,
     /// Names of steps that were wrong and are reported: what reads them stays silent.
     broken: Vec<String>,
 }
@@ -78,6 +80,7 @@ impl Formulas {
         }
         match self.placed(reader, source, true) {
             Some(formula) => {
+                self.named_at.push(place);
                 self.steps.push(Step { symbol: name.to_owned(), formula, meaning, clause });
             }
             None => self.broken.push(name.to_owned()),

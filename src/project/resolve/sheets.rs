@@ -95,6 +95,11 @@ impl Sheets<'_> {
 }
 
 impl<'s> Used<'s> {
+    /// It comes with the program, and so knows nothing of the project's units.
+    pub(super) const fn is_of_catalogue(&self) -> bool {
+        self.own.is_none()
+    }
+
     /// A formula of the sheet; one of the catalogue is placed where the project names the sheet.
     pub(super) fn formula(
         &self,

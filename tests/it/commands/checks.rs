@@ -120,7 +120,7 @@ fn the_chapter_of_checks_shows_formula_values_and_result() {
     Bending about the minor axis:
 
     $$
-    \sigma_{z} = \begin{cases}0\,\mathrm{MPa} & M_{z} = 0 \\ \frac{\left\lvert M_{z}\right\rvert }{W_{\mathrm{el},z}} & \text{otherwise}\end{cases} = 0\,\mathrm{MPa}
+    \sigma_{z} = \frac{\left\lvert M_{z}\right\rvert }{W_{\mathrm{el},z}} = \frac{\left\lvert 0\,\mathrm{kN\,m}\right\rvert }{47.27\,\mathrm{cm^{3}}} = 0\,\mathrm{MPa}
     $$
 
     Both at the same corner:

@@ -2,7 +2,7 @@
 //! the cases that a load duration counts.
 
 use spanfolio::diagnostic::Diagnostic;
-use spanfolio::record::CheckRecord;
+use spanfolio::record::{CheckRecord, StepValueRecord};
 
 use crate::support::{solved, sources};
 
@@ -167,4 +167,21 @@ fn a_flange_thicker_than_the_strengths_allow_is_a_warning() {
     let said = "section `beam` is 45 mm thick, and material `steel` has its strengths up to 40 mm";
     assert_eq!(of("grade: S275"), [said]);
     assert!(of("grade: S275, thickness: 45 mm").is_empty());
+}
+
+/// Megapascals stood beside kips per square inch.
+#[test]
+fn a_sheet_of_the_catalogue_prints_in_the_units_of_the_project() {
+    let check = "{id: c, sheet: combined stress, members: [B1], purpose: strength}";
+    let units = |system: &str| {
+        let yaml =
+            project(check).replace("shear_deformation", &format!("{system}shear_deformation"));
+        let check = solved(&yaml).checks.swap_remove(0);
+        match check.demand.expect("a demand").value {
+            StepValueRecord::Number(_, unit) => unit,
+            other => panic!("{other:?}"),
+        }
+    };
+    assert_eq!(units(""), "MPa");
+    assert_eq!(units("units: {system: US}\n"), "ksi");
 }
