@@ -2,12 +2,12 @@
 
 use super::weigh::EQUAL;
 use super::{CheckResult, LineResult, Outcome, StepValue};
-use crate::analysis::{Extremes, Governing, Solution, evaluate, on_member, superpose_one};
+use crate::analysis::{Extremes, Governing, Segment, Solution, evaluate, on_member, superpose_one};
 use crate::calc::Value;
 use crate::diagnostic::Diagnostic;
 use crate::model::{
-    Agreement, Bound, CaseId, EFFECTS, Model, Of, Placed, Purpose, Query, Side, Slot, Source,
-    State, WorkingLine,
+    Agreement, Bound, CaseId, EFFECTS, Effect, MemberId, Model, NodeId, Of, Placed, Purpose, Query,
+    Side, Slot, Source, State, WorkingLine,
 };
 
 pub(super) fn workings(
@@ -98,77 +98,72 @@ impl Results<'_> {
         };
         let missing =
             || Diagnostic::error("formula", "there is no such result").at(formula.place.clone());
-        let (value, kind) = match query {
+        let value = match query {
             Query::Effect { member, span, effect, of } => {
-                let value = match of {
-                    Of::State(state, x, side) => {
-                        let mut factors = self.factors(*state);
-                        if matches!(state, State::Combination(_)) {
-                            factors = on_member(self.model, &self.model[*member], &factors);
-                        }
-                        let segments = &self.solution.members[member.0].segments;
-                        let segment = match side {
-                            Side::Before => segments.iter().find(|segment| *x <= segment.to),
-                            Side::After => segments.iter().rev().find(|segment| segment.from <= *x),
-                        }
-                        .ok_or_else(missing)?;
-                        let terms = factors.iter().map(|(case, factor)| {
-                            (*factor, &segment.states[case.0].0[effect.index()])
-                        });
-                        evaluate(&superpose_one(terms), x - segment.from)
-                    }
-                    Of::Greatest(purpose) | Of::Least(purpose) => {
-                        let of_member = &self.governing.members[member.0];
-                        let extremes = match span {
-                            Some(span) => &of_member.spans[*span],
-                            None => &of_member.whole,
-                        };
-                        let all = by_purpose(extremes, *purpose).ok_or_else(missing)?;
-                        which(&all[effect.index()], of)
-                    }
-                };
-                (value, effect.kind())
+                self.effect(*member, *span, *effect, of).ok_or_else(missing)?
             }
             Query::Reaction { node, component, of } => {
-                let value = match of {
-                    Of::State(state, ..) => {
-                        let solved = &self.solution.nodes[node.0].reaction;
-                        let factors = self.factors(*state);
-                        factors
-                            .iter()
-                            .map(|(case, factor)| factor * solved[case.0][*component])
-                            .sum()
-                    }
-                    Of::Greatest(purpose) | Of::Least(purpose) => {
-                        let found =
-                            self.governing.reactions.iter().find(|(of_purpose, of_node, _)| {
-                                of_purpose == purpose && of_node == node
-                            });
-                        which(&found.ok_or_else(missing)?.2[*component], of)
-                    }
-                };
-                let kind = if *component < 3 {
-                    crate::quantity::Kind::Force
-                } else {
-                    crate::quantity::Kind::Moment
-                };
-                (value, kind)
+                self.reaction(*node, *component, of).ok_or_else(missing)?
             }
             Query::Displacement { node, component, state } => {
                 let solved = &self.solution.nodes[node.0].displacement;
                 let factors = self.factors(*state);
-                let value =
-                    factors.iter().map(|(case, factor)| factor * solved[case.0][*component]).sum();
-                let kind = if *component < 3 {
-                    crate::quantity::Kind::Deflection
-                } else {
-                    crate::quantity::Kind::Rotation
-                };
-                (value, kind)
+                factors.iter().map(|(case, factor)| factor * solved[case.0][*component]).sum()
             }
-            Query::Check(id) => (self.utilisation(id, formula)?, crate::quantity::Kind::Number),
+            Query::Check(id) => self.utilisation(id, formula)?,
         };
-        Ok(Value::number(value, kind.dimension()))
+        Ok(Value::number(value, query.kind().dimension()))
+    }
+
+    fn effect(&self, id: MemberId, span: Option<usize>, effect: Effect, of: &Of) -> Option<f64> {
+        let member = &self.model[id];
+        match of {
+            Of::State(state, x, side) => {
+                let mut factors = self.factors(*state);
+                if matches!(state, State::Combination(_)) {
+                    factors = on_member(self.model, member, &factors);
+                }
+                // At an end of a named span, the value on its side of the support is meant.
+                let inside = |segment: &&Segment| {
+                    let middle = 0.5 * (segment.from + segment.to);
+                    span.is_none_or(|span| {
+                        member.spans[span].from < middle && middle < member.spans[span].to
+                    })
+                };
+                let mut segments = self.solution.members[id.0].segments.iter().filter(inside);
+                let segment = match side {
+                    Side::Before => segments.find(|segment| *x <= segment.to),
+                    Side::After => segments.rfind(|segment| segment.from <= *x),
+                }?;
+                let terms = factors
+                    .iter()
+                    .map(|(case, factor)| (*factor, &segment.states[case.0].0[effect.index()]));
+                Some(evaluate(&superpose_one(terms), x - segment.from))
+            }
+            Of::Greatest(purpose) | Of::Least(purpose) => {
+                let of_member = &self.governing.members[id.0];
+                let extremes = match span {
+                    Some(span) => &of_member.spans[span],
+                    None => &of_member.whole,
+                };
+                Some(which(&by_purpose(extremes, *purpose)?[effect.index()], of))
+            }
+        }
+    }
+
+    fn reaction(&self, node: NodeId, component: usize, of: &Of) -> Option<f64> {
+        match of {
+            Of::State(state, ..) => {
+                let solved = &self.solution.nodes[node.0].reaction;
+                let factors = self.factors(*state);
+                Some(factors.iter().map(|(case, factor)| factor * solved[case.0][component]).sum())
+            }
+            Of::Greatest(purpose) | Of::Least(purpose) => {
+                let mut all = self.governing.reactions.iter();
+                let found = all.find(|(of, at, _)| of == purpose && *at == node)?;
+                Some(which(&found.2[component], of))
+            }
+        }
     }
 
     fn factors(&self, state: State) -> Vec<(CaseId, f64)> {

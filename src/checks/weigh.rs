@@ -93,15 +93,7 @@ impl Weighing {
     ) -> Result<CheckResult, Diagnostic> {
         self.begin();
         let check = &task.model.checks[task.check];
-        let deferred = |reason: String| CheckResult {
-            check: task.check,
-            target: task.target,
-            outcome: Outcome::Deferred,
-            reason: Some(reason),
-            governing: None,
-            next: Vec::new(),
-            further: 0,
-        };
+        let deferred = |reason: String| deferred(task, reason);
         if task.entries.is_empty() {
             let what = if check.variable_only { " with a variable action" } else { "" };
             return Ok(deferred(format!(
@@ -171,7 +163,11 @@ impl Weighing {
 /// The outcome of a check that does not apply to its target.
 pub(super) fn not_applicable(task: &Task<'_>) -> Option<CheckResult> {
     let reason = task.model.checks[task.check].targets[task.target].deferred.clone()?;
-    Some(CheckResult {
+    Some(deferred(task, reason))
+}
+
+fn deferred(task: &Task<'_>, reason: String) -> CheckResult {
+    CheckResult {
         check: task.check,
         target: task.target,
         outcome: Outcome::Deferred,
@@ -179,5 +175,5 @@ pub(super) fn not_applicable(task: &Task<'_>) -> Option<CheckResult> {
         governing: None,
         next: Vec::new(),
         further: 0,
-    })
+    }
 }

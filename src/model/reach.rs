@@ -81,6 +81,19 @@ pub enum Query {
     Check(String),
 }
 
+impl Query {
+    /// What the value is.
+    #[must_use]
+    pub fn kind(&self) -> Kind {
+        match self {
+            Self::Effect { effect, .. } => effect.kind(),
+            Self::Reaction { component, .. } => component_kind(*component, true),
+            Self::Displacement { component, .. } => component_kind(*component, false),
+            Self::Check(_) => Kind::Number,
+        }
+    }
+}
+
 /// Which value of many.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Of {
@@ -119,6 +132,11 @@ fn truth(value: bool) -> Bound {
 
 fn of(source: Source, kind: Kind) -> Bound {
     Bound { source, kind: Some(kind) }
+}
+
+fn asked(query: Query) -> Bound {
+    let kind = query.kind();
+    of(Source::Result(query), kind)
 }
 
 fn component_kind(component: usize, force: bool) -> Kind {
@@ -378,10 +396,7 @@ impl Model {
                 let id = call.text(0, "the id of a check")?;
                 call.only(1, &[])?;
                 if checks.contains(&id) {
-                    return Ok(Bound {
-                        source: Source::Result(Query::Check(id)),
-                        kind: Some(Kind::Number),
-                    });
+                    return Ok(asked(Query::Check(id)));
                 }
                 Err(no("check", &id, checks.iter().cloned()))
             }
@@ -708,7 +723,7 @@ impl Call<'_> {
             return Err(self.wrong("an effect in a state needs its place: `at=2.7 m`".to_owned()));
         }
         let query = Query::Effect { member, span, effect, of };
-        Ok(self::of(Source::Result(query), effect.kind()))
+        Ok(asked(query))
     }
 
     fn reaction(&self) -> Result<Bound, Unbound> {
@@ -719,7 +734,7 @@ impl Call<'_> {
         let component = self.component()?;
         let of = self.which(None, false)?;
         let query = Query::Reaction { node, component, of };
-        Ok(self::of(Source::Result(query), component_kind(component, true)))
+        Ok(asked(query))
     }
 
     fn displacement(&self) -> Result<Bound, Unbound> {
@@ -729,7 +744,7 @@ impl Call<'_> {
         let state = self.state()?;
         let state = state.ok_or_else(|| self.wrong("`displacement` needs a `state`".to_owned()))?;
         let query = Query::Displacement { node, component, state };
-        Ok(of(Source::Result(query), component_kind(component, false)))
+        Ok(asked(query))
     }
 
     /// A property of a member by the name that checks have for it.

@@ -2,7 +2,8 @@
 
 use super::{CheckRecord, NarrativeBlockRecord, OpenItem, Record, Registers};
 use crate::model::Effect;
-use crate::quantity::Kind;
+use crate::quantity::{Kind, print};
+use crate::record::by_id;
 
 /// A force below this share of the structure's largest is round-off, not uplift or compression.
 const NOTHING: f64 = 1e-9;
@@ -10,6 +11,7 @@ const NOTHING: f64 = 1e-9;
 pub(super) fn registers(record: &Record) -> Registers {
     let mut open_items = Vec::new();
     open_items.extend(outcomes(record));
+    open_items.extend(lenient(record));
     open_items.extend(assumptions(record));
     open_items.extend(narrative(record));
     open_items.extend(uncombined(record));
@@ -172,6 +174,16 @@ fn outcomes(record: &Record) -> Vec<OpenItem> {
         .filter(|check| check.outcome == "deferred" && !record.is_covered(check))
         .map(|check| item("deferred", format!("Deferred: {}", what(check))));
     failing.chain(deferred).collect()
+}
+
+/// Checks that accept a utilisation above 1, each once.
+fn lenient(record: &Record) -> impl Iterator<Item = OpenItem> {
+    by_id(&record.checks).into_iter().filter_map(|(id, all)| {
+        let limit = all.first()?.limit;
+        (limit > 1.0).then(|| {
+            item("limit", format!("The check {id} accepts utilisations up to {}", print(limit, 6)))
+        })
+    })
 }
 
 /// What the narrative says is open.

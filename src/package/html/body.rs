@@ -155,8 +155,8 @@ impl<'d> Body<'d> {
             }
             Tag::CodeBlock(kind) => {
                 self.in_code = true;
-                let is_file =
-                    matches!(&kind, CodeBlockKind::Fenced(language) if &**language == "yaml");
+                let is_file = matches!(&kind, CodeBlockKind::Fenced(language)
+                    if matches!(&**language, "yaml" | "markdown"));
                 self.html += if is_file { "<pre class=\"file\"><code>" } else { "<pre><code>" };
             }
             Tag::List(None) => self.html += "<ul>\n",
@@ -251,7 +251,8 @@ impl<'d> Body<'d> {
             self.html += &self.mathematics.convert(latex, MathDisplay::Inline);
         } else {
             let formula = self.mathematics.convert(latex, MathDisplay::Block);
-            self.block(&format!("<div class=\"display\">{formula}</div>\n"));
+            let class = if is_wide(latex) { "display wide" } else { "display" };
+            self.block(&format!("<div class=\"{class}\">{formula}</div>\n"));
         }
     }
 
@@ -348,6 +349,23 @@ impl<'d> Body<'d> {
             "<figure{named}>\n{svg}\n<figcaption>{description}</figcaption>\n</figure>\n"
         ));
     }
+}
+
+/// Signs in a line of mathematics that fit on a sheet in the usual size; stacked ones count twice.
+const SIGNS: usize = 130;
+
+/// Some line of a formula is wider than a sheet.
+fn is_wide(latex: &str) -> bool {
+    let signs = |line: &str| {
+        let mut command = false;
+        let counts = |c: char| {
+            let was = command;
+            command = c == '\\' || was && c.is_alphabetic();
+            !command && !matches!(c, '{' | '}' | '^' | '_' | '&' | ' ' | '\n')
+        };
+        line.chars().map(counts).filter(|counts| *counts).count()
+    };
+    latex.split("\\\\").any(|line| signs(line) > SIGNS)
 }
 
 /// What holds text in a line and no block.

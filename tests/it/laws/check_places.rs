@@ -185,3 +185,33 @@ fn a_sheet_of_the_catalogue_prints_in_the_units_of_the_project() {
     assert_eq!(units(""), "MPa");
     assert_eq!(units("units: {system: US}\n"), "ksi");
 }
+
+/// At B the shear jumps from 30 − 64 = −34 kN to 16 kN: the first place of the second span lies behind it.
+#[test]
+fn the_ends_of_a_named_span_lie_on_its_side_of_the_support() {
+    let yaml = project(&own("members: [B1], demand: abs(M_y), capacity: 900 kN m"));
+    let mut sources = sources(&yaml);
+    let of = |at: &str| format!("effect('B1', 'V_z', at={at}, state='Q')");
+    let text = format!(
+        "# By hand\n\n```working\nagree before: -34 kN with {} within 0.1 %\nagree behind: 16 kN with {} within 0.1 %\n```\n",
+        of("8 m, span=1"),
+        of("0 m, span=2")
+    );
+    sources.files.insert("narrative/a.md".to_owned(), text.into_bytes());
+    let record = spanfolio::solve(&sources).expect("a record").record;
+    let agreements = record.checks.iter().filter(|check| check.kind == "agreement");
+    assert!(agreements.clone().all(|check| check.outcome == "satisfied"));
+    assert_eq!(agreements.count(), 2);
+}
+
+#[test]
+fn a_limit_above_one_stands_among_the_open_items() {
+    let of = |limit: &str| {
+        let check =
+            own(&format!("members: [B1], demand: abs(M_y), capacity: 50 kN m, limit: {limit}"));
+        let items = solved(&project(&check)).registers.open_items;
+        items.into_iter().find(|item| item.kind == "limit").map(|item| item.text)
+    };
+    assert_eq!(of("1.2").as_deref(), Some("The check c accepts utilisations up to 1.2."));
+    assert_eq!(of("0.9"), None);
+}
