@@ -194,8 +194,7 @@ impl Reader<'_> {
             return Ok(Read::Terms(vec![vec![Term { choices: vec![one], kind: token }]]));
         }
         Err(ExpressionError(format!(
-            "`{token}` is neither a value of the rule nor a kind of action ({})",
-            KINDS.join(", ")
+            "`{token}` is neither a value of the rule nor a kind of action"
         )))
     }
 

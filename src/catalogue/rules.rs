@@ -21,6 +21,14 @@ pub struct RuleSet {
     pub rules: Vec<Rule>,
 }
 
+impl RuleSet {
+    /// Code, edition and clause of one of its rules in one line.
+    #[must_use]
+    pub fn reference(&self, rule: &Rule) -> String {
+        format!("{} ({}), {}", self.code, self.edition, rule.clause)
+    }
+}
+
 /// One rule.
 #[derive(Clone, Debug, PartialEq, Deserialize)]
 #[serde(deny_unknown_fields)]
@@ -57,9 +65,10 @@ pub struct RuleRow {
     pub needs: Vec<String>,
 }
 
-const TEXTS: [&str; 2] = [
+const TEXTS: [&str; 3] = [
     include_str!("../../catalogue/combinations/en-1990.yaml"),
-    include_str!("../../catalogue/combinations/asce-7.yaml"),
+    include_str!("../../catalogue/combinations/asce-7-22.yaml"),
+    include_str!("../../catalogue/combinations/asce-7-16.yaml"),
 ];
 
 static SETS: LazyLock<Vec<RuleSet>> = LazyLock::new(|| {

@@ -127,8 +127,10 @@ fn look_up(words: &[String], thickness: Option<f64>) -> Result<Found, Diagnostic
     };
     let entries = find(words);
     let sheets = sheets::matching(words);
+    let rules = rules::matching(words);
     match &entries[..] {
         [] if !sheets.is_empty() => Ok(Found::Sheets(sheets)),
+        [] if !rules.is_empty() => Ok(Found::Rules(rules)),
         [] => {
             let nearest: Vec<String> = no_section
                 .nearest

@@ -17,6 +17,15 @@ pub(super) fn all() -> Vec<(&'static RuleSet, &'static Rule)> {
     rule_sets().iter().flat_map(|set| set.rules.iter().map(move |rule| (set, rule))).collect()
 }
 
+/// Rules whose id, title or code hold all the words.
+pub(super) fn matching(words: &[String]) -> Vec<(&'static RuleSet, &'static Rule)> {
+    let holds = |(set, rule): &(&'static RuleSet, &'static Rule)| {
+        let about = format!("{} {} {}", rule.id, rule.title, set.code).to_lowercase();
+        words.iter().all(|word| about.contains(&word.to_lowercase()))
+    };
+    all().into_iter().filter(holds).collect()
+}
+
 /// Id, purpose, usual expansion, clause.
 pub(super) fn rows(of: &[(&RuleSet, &Rule)]) -> Vec<Vec<String>> {
     of.iter()
@@ -32,7 +41,7 @@ pub(super) fn in_full(set: &RuleSet, rule: &Rule) -> String {
         let values: Vec<String> = values.iter().map(|(name, v)| format!("{name} = {v}")).collect();
         values.join(", ")
     };
-    let mut out = format!("{}\n{}:{}, {}\n", rule.id, set.code, set.edition, rule.clause);
+    let mut out = format!("{}\n{}\n", rule.id, set.reference(rule));
     out += &format!(
         "\nPurpose {}; expansion {} unless stated\n\nRows\n",
         rule.purpose, rule.expansion

@@ -1,6 +1,6 @@
 //! Combinations of load cases.
 
-use super::{CaseId, Duration, Origin};
+use super::{CaseId, Duration, Model, Origin};
 
 /// What a combination is for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -107,4 +107,56 @@ pub struct RuleUse {
     /// The dominated ones were left out.
     pub dropped: bool,
     pub notes: Option<String>,
+    /// ψ0, ψ1, ψ2 of each variable action as used, with where they come from; empty where the rule has none.
+    pub psi: Vec<(CaseId, [f64; 3], String)>,
+}
+
+impl Model {
+    /// Combinations that a text can mean: by name, by title, or by content (`1.35 G + 1.5 S`). Of those
+    /// with the same factors only the first, as their results are the same.
+    #[must_use]
+    pub fn combinations_meant(&self, text: &str) -> Vec<usize> {
+        let all = self.combinations.iter().enumerate();
+        if let Some((index, _)) = all.clone().find(|(_, combination)| combination.name == text) {
+            return vec![index];
+        }
+        let mut found: Vec<usize> = Vec::new();
+        let content = self.content(text);
+        for (index, combination) in all {
+            let meant = combination.title == text
+                || content.as_ref().is_some_and(|factors| alike(factors, &combination.factors));
+            let again =
+                |other: &usize| alike(&self.combinations[*other].factors, &combination.factors);
+            if meant && !found.iter().any(again) {
+                found.push(index);
+            }
+        }
+        found
+    }
+
+    /// `1.35 G + 1.5 S - W` as factors, in the order of the cases; `None` where it is something else.
+    fn content(&self, text: &str) -> Option<Vec<(CaseId, f64)>> {
+        let case = |name: &str| self.cases.iter().position(|case| case.name == name).map(CaseId);
+        let text = text.replace('\u{2212}', "-").replace(" - ", " + -");
+        let term = |term: &str| {
+            let (sign, term) = match term.trim().strip_prefix('-') {
+                Some(rest) => (-1.0, rest.trim()),
+                None => (1.0, term.trim()),
+            };
+            if let Some(case) = case(term) {
+                return Some((case, sign));
+            }
+            let (factor, name) = term.split_once(' ')?;
+            Some((case(name.trim())?, sign * factor.parse::<f64>().ok()?))
+        };
+        let mut factors: Vec<(CaseId, f64)> = text.split(" + ").map(term).collect::<Option<_>>()?;
+        factors.sort_by_key(|(case, _)| *case);
+        Some(factors)
+    }
+}
+
+/// The same factors on the same cases.
+#[must_use]
+pub fn alike(a: &[(CaseId, f64)], b: &[(CaseId, f64)]) -> bool {
+    a.len() == b.len() && a.iter().zip(b).all(|(a, b)| a.0 == b.0 && (a.1 - b.1).abs() <= 1e-9)
 }

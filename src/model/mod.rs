@@ -23,7 +23,7 @@ pub use check::{
     Agreement, Check, CheckTarget, Condition, DeflectionFrom, On, Placed, Shows, Slot, Step,
     Working, WorkingLine, located,
 };
-pub use combination::{Combination, Purpose, RuleUse};
+pub use combination::{Combination, Purpose, RuleUse, alike};
 pub use effect::{EFFECTS, Effect, FORCES, STORED, Side};
 pub use reach::{Bound, Of, Query, Source, State, Unbound};
 pub use settings::{

@@ -536,6 +536,9 @@ fn no(what: &str, name: &str, known: impl Iterator<Item = String>) -> Unbound {
     Unbound { message: format!("no {what} named `{name}`"), hint: None, known: known.collect() }
 }
 
+/// Most combinations that a hint lists.
+const OFFERED: usize = 12;
+
 /// A call for a result.
 struct Call<'m> {
     model: &'m Model,
@@ -629,14 +632,31 @@ impl Call<'_> {
             return Ok(Some(State::Case(CaseId(case))));
         }
         let combinations = &self.model.combinations;
-        let found = combinations
-            .iter()
-            .position(|combination| combination.name == *name || combination.title == *name);
-        let known = self.model.cases.iter().map(|case| case.name.clone());
-        let titles = combinations.iter().map(|combination| combination.title.clone());
-        match found {
-            Some(index) => Ok(Some(State::Combination(index))),
-            None => Err(no("load case or combination", name, known.chain(titles))),
+        match self.model.combinations_meant(name)[..] {
+            [one] => Ok(Some(State::Combination(one))),
+            [] => {
+                let known = self.model.cases.iter().map(|case| case.name.clone());
+                let titles = combinations.iter().map(|combination| combination.title.clone());
+                Err(no("load case or combination", name, known.chain(titles)))
+            }
+            ref several => Err(self.ambiguous(name, several)),
+        }
+    }
+
+    /// Several combinations of one title: each can be named by its content.
+    fn ambiguous(&self, name: &str, several: &[usize]) -> Unbound {
+        let content = |index: &usize| {
+            let name = &self.model.combinations[*index].name;
+            format!("`{}`", name.rsplit_once(" | ").map_or(name.as_str(), |(_, content)| content))
+        };
+        let mut contents: Vec<String> = several.iter().take(OFFERED).map(content).collect();
+        if several.len() > OFFERED {
+            contents.push("…".to_owned());
+        }
+        Unbound {
+            message: format!("{} combinations are titled `{name}`", several.len()),
+            hint: Some(format!("name one by its content: {}", contents.join(", "))),
+            known: Vec::new(),
         }
     }
 

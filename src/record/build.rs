@@ -9,8 +9,8 @@ mod steps;
 
 use super::{
     AssumptionRecord, BasisRecord, CombinationRecord, DeferralRecord, FORMAT, Map, ProgramRecord,
-    ProjectRecord, Record, Registers, Results, RevisionRecord, RuleUseRecord, StandardRecord,
-    registers,
+    ProjectRecord, PsiRecord, Record, Registers, Results, RevisionRecord, RuleUseRecord,
+    StandardRecord, registers,
 };
 use crate::analysis::{Governing, SelfCheck, Solution};
 use crate::checks::Checked;
@@ -134,6 +134,15 @@ fn rules(model: &Model) -> Vec<RuleUseRecord> {
             dominated: rule.dominated,
             dropped: rule.dropped,
             notes: rule.notes.clone(),
+            psi: rule
+                .psi
+                .iter()
+                .map(|(case, psi, origin)| PsiRecord {
+                    case: model[*case].name.clone(),
+                    psi: *psi,
+                    origin: origin.clone(),
+                })
+                .collect(),
         })
         .collect()
 }

@@ -24,6 +24,19 @@ pub struct RuleUseRecord {
     /// The dominated ones were left out.
     pub dropped: bool,
     pub notes: Option<String>,
+    /// Of each variable action; empty where the expressions name no ψ.
+    #[serde(skip_serializing_if = "Vec::is_empty", default)]
+    pub psi: Vec<PsiRecord>,
+}
+
+/// ψ factors of a case as a rule uses them.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+pub struct PsiRecord {
+    pub case: String,
+    /// ψ0, ψ1, ψ2.
+    pub psi: [f64; 3],
+    /// Where they come from, e.g. `category E`.
+    pub origin: String,
 }
 
 /// How a case acts with others; only what is stated.

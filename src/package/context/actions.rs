@@ -288,12 +288,18 @@ pub(super) fn takedown(record: &Record) -> Vec<HandedRow<'_>> {
 #[derive(Serialize)]
 pub(super) struct Combinations<'r> {
     rules: Vec<RuleRow<'r>>,
+    psi: Vec<PsiRow<'r>>,
     relations: Vec<String>,
+    /// Cases in no combination, cases without a load: the open items about them.
+    unused: Vec<&'r str>,
     purposes: Vec<PurposeView<'r>>,
     /// Left out where there are more than [`MATRIX`] combinations: the lists say the same.
     blocks: Vec<Block<'r>>,
     count: usize,
 }
+
+/// Significant digits of a factor.
+const FACTOR_DIGITS: usize = 6;
 
 /// Most combinations of which a matrix is printed besides the lists.
 const MATRIX: usize = 60;
@@ -312,6 +318,14 @@ struct RuleRow<'r> {
     values: String,
     expressions: &'r [String],
     notes: Option<&'r str>,
+}
+
+/// ψ factors of a case.
+#[derive(Serialize, PartialEq)]
+struct PsiRow<'r> {
+    case: &'r str,
+    psi: [String; 3],
+    origin: String,
 }
 
 /// The combinations of one purpose.
@@ -349,7 +363,7 @@ pub(super) fn combinations(record: &Record) -> Combinations<'_> {
     let cases: Vec<&str> = record.model.cases.keys().map(String::as_str).collect();
     let mut purposes: Vec<PurposeView<'_>> = Vec::new();
     for combination in record.combinations.values() {
-        let row = combination_row(record, combination);
+        let row = combination_row(combination);
         match purposes.iter_mut().find(|view| view.purpose == combination.purpose) {
             Some(view) => view.rows.push(row),
             None => purposes.push(PurposeView { purpose: &combination.purpose, rows: vec![row] }),
@@ -358,7 +372,15 @@ pub(super) fn combinations(record: &Record) -> Combinations<'_> {
     let matrix = record.combinations.len() <= MATRIX;
     Combinations {
         rules: record.rules.iter().map(rule_row).collect(),
+        psi: psi(record),
         relations: relations(record),
+        unused: record
+            .registers
+            .open_items
+            .iter()
+            .filter(|item| item.kind == "combinations")
+            .map(|item| item.text.as_str())
+            .collect(),
         purposes,
         blocks: cases
             .chunks(COLUMNS)
@@ -369,14 +391,12 @@ pub(super) fn combinations(record: &Record) -> Combinations<'_> {
     }
 }
 
-fn factor(record: &Record, value: f64) -> String {
-    crate::quantity::print(value, record.model.units.significant)
+/// Factors are exact (1.35 × 0.925 = 1.24875): a reader multiplies by them.
+fn factor(value: f64) -> String {
+    crate::quantity::print(value, FACTOR_DIGITS)
 }
 
-fn combination_row<'r>(
-    record: &'r Record,
-    combination: &'r CombinationRecord,
-) -> CombinationRow<'r> {
+fn combination_row(combination: &CombinationRecord) -> CombinationRow<'_> {
     let mut expression = String::new();
     for (case, value) in &combination.factors {
         let sign = match (expression.is_empty(), *value < 0.0) {
@@ -385,7 +405,7 @@ fn combination_row<'r>(
             (false, false) => " + ",
             (false, true) => " \u{2212} ",
         };
-        expression += &format!("{sign}{} {case}", factor(record, value.abs()));
+        expression += &format!("{sign}{} {case}", factor(value.abs()));
     }
     CombinationRow {
         number: &combination.number,
@@ -402,20 +422,15 @@ fn factor_rows<'r>(record: &'r Record, cases: &[&'r str]) -> Vec<FactorRow<'r>> 
         number: &combination.number,
         factors: cases
             .iter()
-            .map(|case| {
-                combination.factors.get(*case).map_or_else(String::new, |f| factor(record, *f))
-            })
+            .map(|case| combination.factors.get(*case).map_or_else(String::new, |f| factor(*f)))
             .collect(),
     };
     record.combinations.values().map(of).collect()
 }
 
 fn rule_row(rule: &RuleUseRecord) -> RuleRow<'_> {
-    let values: Vec<String> = rule
-        .values
-        .iter()
-        .map(|(name, value)| format!("{name} = {}", crate::quantity::print(*value, 6)))
-        .collect();
+    let values: Vec<String> =
+        rule.values.iter().map(|(name, value)| format!("{name} = {}", factor(*value))).collect();
     RuleRow {
         rule: &rule.rule,
         reference: &rule.reference,
@@ -433,6 +448,28 @@ fn rule_row(rule: &RuleUseRecord) -> RuleRow<'_> {
         expressions: &rule.expressions,
         notes: rule.notes.as_deref(),
     }
+}
+
+/// The ψ factors of all rules; what two rules take alike stands once.
+fn psi(record: &Record) -> Vec<PsiRow<'_>> {
+    let mut out: Vec<PsiRow<'_>> = Vec::new();
+    for rule in &record.rules {
+        let annex = rule.annex.as_deref().unwrap_or("recommended");
+        for used in &rule.psi {
+            let row = PsiRow {
+                case: &used.case,
+                psi: used.psi.map(factor),
+                origin: match used.origin.as_str() {
+                    origin if origin.starts_with("stated") => origin.to_owned(),
+                    origin => format!("{origin} ({annex} values)"),
+                },
+            };
+            if !out.contains(&row) {
+                out.push(row);
+            }
+        }
+    }
+    out
 }
 
 /// What is stated of how cases act together, in sentences.
@@ -460,9 +497,6 @@ fn relations(record: &Record) -> Vec<String> {
         }
         if let Some(group) = &relations.source_group {
             out.push(format!("{name} is favourable or unfavourable with its source {group}."));
-        }
-        if let Some([a, b, c]) = case.psi {
-            out.push(format!("ψ of {name} as the project states: {a}, {b}, {c}."));
         }
         if let Some(by_span) = &case.by_span {
             let how = match by_span.loading.as_str() {

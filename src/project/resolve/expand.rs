@@ -127,6 +127,7 @@ pub(super) fn rows(
             } else {
                 vec![None]
             };
+            let about = senses(model, &fixed, &acting, &varying);
             for leading in leaders {
                 let mut factors: Vec<(CaseId, f64)> = Vec::new();
                 for action in fixed.iter().chain(&acting) {
@@ -158,7 +159,8 @@ pub(super) fn rows(
                     all.retain(|(_, factor)| factor.abs() > 0.0);
                     all.sort_by_key(|(case, _)| *case);
                     let lead = leading.map(|case| format!("{} leads", model[case].name));
-                    let parts: Vec<String> = lead.into_iter().chain(reasons).collect();
+                    let parts: Vec<String> =
+                        lead.into_iter().chain(reasons).chain(about.clone()).collect();
                     out.push(Row { factors: all, leading, reason: parts.join(", ") });
                     if out.len() > MOST {
                         return Err(TooMany);
@@ -170,15 +172,38 @@ pub(super) fn rows(
     Ok(out)
 }
 
+/// Which actions act in the opposite sense, and which are left out though they could act.
+fn senses(model: &Model, fixed: &[Action], acting: &[Action], varying: &[Action]) -> Vec<String> {
+    let name = |action: &Action| model[action.case].name.clone();
+    let reversed = fixed.iter().chain(acting).filter(|action| action.sign < 0.0);
+    let mut out: Vec<String> = reversed.map(|a| format!("{} reversed", name(a))).collect();
+    let excluded = |action: &Action| {
+        let group = &model[action.case].relations.one_of;
+        acting.iter().any(|other| {
+            other.case == action.case
+                || group.is_some() && *group == model[other.case].relations.one_of
+        })
+    };
+    let left: Vec<String> =
+        varying.iter().filter(|a| a.sign > 0.0 && !excluded(a)).map(name).collect();
+    match left.len() {
+        0 => {}
+        1..=3 => out.push(format!("without {}", left.join(", "))),
+        more => out.push(format!("without {more} that could act")),
+    }
+    out
+}
+
 /// Sets of actions that can act together; all, or those to which nothing can be added.
 fn sets(model: &Model, actions: &[Action], every: bool) -> Vec<Vec<Action>> {
-    let mut compatible: Vec<u32> = Vec::new();
-    for set in 0..1_u32 << actions.len() {
-        if fits(model, actions, set) {
-            compatible.push(set);
-        }
-    }
-    let enlarged = |set: &u32| compatible.iter().any(|other| other != set && other & set == *set);
+    let compatible: Vec<u32> =
+        (0..1_u32 << actions.len()).filter(|set| fits(model, actions, *set)).collect();
+    // One more action usually does; those that act only together come by twos and threes.
+    let enlarged = |set: &u32| {
+        let mut bits = (0..actions.len()).map(|index| set | 1 << index).filter(|more| more != set);
+        bits.any(|more| compatible.binary_search(&more).is_ok())
+            || compatible.iter().any(|other| other != set && other & set == *set)
+    };
     let mut chosen: Vec<u32> =
         compatible.iter().filter(|set| every || !enlarged(set)).copied().collect();
     // Fuller sets first: the complete combination leads the list.

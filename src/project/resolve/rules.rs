@@ -7,7 +7,7 @@ use super::expand::{self, Row, TooMany, dominated, of_kind};
 use super::reader::Reader;
 use crate::catalogue::{self, KINDS, RuleRow, branches};
 use crate::diagnostic::Diagnostic;
-use crate::model::{CaseId, Combination, Model, Nature, Purpose, RuleUse};
+use crate::model::{CaseId, Combination, Model, Nature, Purpose, RuleUse, alike};
 use crate::project::text::Located;
 use crate::project::text::Words as _;
 use crate::project::written::{
@@ -83,7 +83,7 @@ fn used(reader: &mut Reader, written: &Located<written::Rule>) -> Option<Used> {
     Some(Used {
         id: rule.id.clone(),
         title: rule.title.clone(),
-        reference: format!("{}:{}, {}", set.code, set.edition, rule.clause),
+        reference: set.reference(rule),
         clause: format!("{}, {}", set.code, rule.clause),
         purpose: purpose.or_else(|| Purpose::from_name(&rule.purpose))?,
         expansion: expansion.or_else(|| expansion_of(&rule.expansion))?,
@@ -182,7 +182,7 @@ fn make(reader: &mut Reader, written: &Located<written::Rule>, used: Used, model
         matches!(kind, "leading" | "accompanying" | "variable")
             || (0..model.cases.len()).any(|case| of_kind(model, kind, CaseId(case)))
     };
-    let psi = |case: CaseId| psi(model, used.psi, case);
+    let psi = |case: CaseId| psi(model, used.psi, case).0;
     let mut made: Vec<(String, Row)> = Vec::new();
     for (index, row) in used.rows.iter().enumerate() {
         if !row.needs.is_empty() && !row.needs.iter().any(|kind| exists(kind)) {
@@ -206,11 +206,11 @@ fn make(reader: &mut Reader, written: &Located<written::Rule>, used: Used, model
         };
         for branch in branches {
             match expand::rows(model, &branch, every, &psi) {
-                Ok(rows) => {
+                Ok(rows) if made.len() + rows.len() <= expand::MOST => {
                     let id = row.id.clone().unwrap_or_default();
                     made.extend(rows.into_iter().map(|row| (id.clone(), row)));
                 }
-                Err(TooMany) => {
+                Ok(_) | Err(TooMany) => {
                     reader.problem(
                         Diagnostic::error("too-many", format!("`{}` makes too many combinations", used.id))
                             .at(place())
@@ -275,6 +275,7 @@ fn file(
         dominated: count,
         dropped: drops,
         notes: used.notes.clone(),
+        psi: factors_of(model, used),
     });
     for (id, row) in kept {
         let title =
@@ -321,37 +322,56 @@ const fn expansion_name(expansion: Expansion) -> &'static str {
     }
 }
 
-fn alike(a: &[(CaseId, f64)], b: &[(CaseId, f64)]) -> bool {
-    a.len() == b.len() && a.iter().zip(b).all(|(a, b)| a.0 == b.0 && (a.1 - b.1).abs() <= 1e-9)
+/// The ψ factors that a rule takes, by variable action; none where its expressions name none.
+fn factors_of(model: &Model, used: &Used) -> Vec<(CaseId, [f64; 3], String)> {
+    if !used.rows.iter().any(|row| row.expression.contains("psi")) {
+        return Vec::new();
+    }
+    (0..model.cases.len())
+        .map(CaseId)
+        .filter(|case| of_kind(model, "variable", *case))
+        .map(|case| {
+            let (factors, origin) = psi(model, used.psi, case);
+            (case, factors, origin)
+        })
+        .collect()
 }
 
-/// ψ0, ψ1, ψ2 of a case: as stated, of its category, of its nature; where the category is not stated, the
-/// largest of the nature.
-fn psi(model: &Model, table: Option<&IndexMap<String, [f64; 3]>>, case: CaseId) -> [f64; 3] {
+/// ψ0, ψ1, ψ2 of a case, and where they come from: as stated, of its category, of its nature; where the
+/// category is not stated, the largest of the nature; 1 where the nature has none.
+fn psi(
+    model: &Model,
+    table: Option<&IndexMap<String, [f64; 3]>>,
+    case: CaseId,
+) -> ([f64; 3], String) {
     let case = &model[case];
     if let Some(psi) = case.psi {
-        return psi;
+        return (psi, "stated by the project".to_owned());
     }
-    let whole = [1.0; 3];
-    let Some(table) = table else { return whole };
+    let whole = || ([1.0; 3], format!("none given for {}: taken as 1", case.nature.name()));
+    let Some(table) = table else { return whole() };
     let category = case.category.as_deref().unwrap_or_default();
-    let exact = |name: &str| table.get(name).copied();
-    let largest = |names: &dyn Fn(&str) -> bool| -> [f64; 3] {
+    let exact = |name: &str| table.get(name).map(|psi| (*psi, name.to_owned()));
+    let category_of =
+        |letter: &str| exact(letter).map(|(psi, letter)| (psi, format!("category {letter}")));
+    let largest = |names: &dyn Fn(&str) -> bool| {
         let found = table.iter().filter(|(name, _)| names(name)).map(|(_, psi)| *psi);
-        found.reduce(|a, b| [0, 1, 2].map(|k: usize| a[k].max(b[k]))).unwrap_or(whole)
+        let most = found.reduce(|a, b| [0, 1, 2].map(|k: usize| a[k].max(b[k])));
+        let said = format!("category not in the table: largest of {}", case.nature.name());
+        most.map_or_else(whole, |psi| (psi, said))
     };
     match case.nature {
         Nature::Imposed => {
             let letter = category.get(..1).unwrap_or_default();
-            exact(letter).unwrap_or_else(|| largest(&|name| name.len() == 1 && name != "H"))
+            category_of(letter).unwrap_or_else(|| largest(&|name| name.len() == 1 && name != "H"))
         }
-        Nature::RoofLive => exact("H").unwrap_or(whole),
+        Nature::RoofLive => category_of("H").unwrap_or_else(whole),
         Nature::Snow => {
             let of_category = exact(&format!("snow {category}"));
             of_category.unwrap_or_else(|| largest(&|name| name.starts_with("snow")))
         }
-        Nature::Wind => exact("wind").unwrap_or(whole),
-        Nature::Thermal => exact("thermal").unwrap_or(whole),
-        _ => whole,
+        Nature::Wind => exact("wind").unwrap_or_else(whole),
+        Nature::Thermal => exact("thermal").unwrap_or_else(whole),
+        _ => whole(),
     }
 }

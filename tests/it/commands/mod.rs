@@ -6,6 +6,7 @@ mod files;
 mod help;
 mod issue;
 mod project;
+mod rules;
 mod solve;
 mod start;
 mod trial;
