@@ -8,6 +8,7 @@
 //! - Never reads files, never computes an effect.
 
 mod action;
+mod call;
 mod check;
 mod combination;
 mod effect;
