@@ -4,12 +4,13 @@ use minijinja::value::{Kwargs, Serde};
 use minijinja::{Environment, Error, ErrorKind, Value};
 use serde::Serialize;
 
-use super::context::{Quantity, component_kind};
+use super::context::Quantity;
 use super::markdown;
 use crate::model::Effect;
 use crate::quantity::Kind;
 use crate::record::{
-    ExtremesRecord, Map, Record, StepValueRecord, WorkingLineRecord, by_id, printed_utilisation,
+    ExtremesRecord, Map, Record, StepValueRecord, WorkingLineRecord, by_id, component_kind,
+    printed_utilisation,
 };
 
 /// A value with the unit in which it prints.

@@ -13,6 +13,7 @@ mod registers;
 mod rules;
 mod settle;
 mod types;
+mod words;
 
 pub use checked::*;
 pub use look_up::{Band, Piece};
@@ -20,6 +21,7 @@ pub use registers::printed_utilisation;
 pub use rules::*;
 pub use settle::rounded;
 pub use types::*;
+pub use words::{LoadWords, component_kind, components, property_kind, release_kind};
 
 use crate::analysis::{Governing, SelfCheck, Solution};
 use crate::checks::Checked;

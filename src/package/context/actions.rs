@@ -4,12 +4,11 @@ use serde::Serialize;
 
 use super::{FigureRef, Quantity};
 use crate::figures::Figure;
-use crate::quantity::{Kind, Printer};
-use crate::record::{CombinationRecord, LoadRecord, Record, RuleUseRecord, TargetRecord};
+use crate::quantity::Kind;
+use crate::record::{CombinationRecord, LoadWords, Record, RuleUseRecord, components};
 
 /// Cases side by side in one block of the factors matrix.
 const COLUMNS: usize = 8;
-const AXES: [&str; 3] = ["X", "Y", "Z"];
 
 #[derive(Serialize)]
 pub(super) struct BuildUpTable<'r> {
@@ -62,9 +61,8 @@ pub(super) struct CaseView<'r> {
 #[derive(Serialize)]
 struct LoadRow<'r> {
     on: &'r str,
-    what: String,
-    place: String,
-    direction: String,
+    #[serde(flatten)]
+    words: LoadWords,
     source: Option<&'r str>,
 }
 
@@ -88,7 +86,15 @@ pub(super) fn cases<'r>(record: &'r Record, drawings: &'r [Figure]) -> Vec<CaseV
             category: case.category.as_deref(),
             duration: case.duration.as_deref(),
             source: case.source.as_deref(),
-            loads: case.loads.iter().map(|load| row(load, &printer)).collect(),
+            loads: case
+                .loads
+                .iter()
+                .map(|load| LoadRow {
+                    on: load.on(),
+                    words: load.words(&printer),
+                    source: load.source.as_deref(),
+                })
+                .collect(),
             resultants: case
                 .resultant
                 .iter()
@@ -106,132 +112,6 @@ pub(super) fn cases<'r>(record: &'r Record, drawings: &'r [Figure]) -> Vec<CaseV
                 .collect(),
         })
         .collect()
-}
-
-fn row<'r>(load: &'r LoadRecord, printer: &Printer) -> LoadRow<'r> {
-    let (TargetRecord::Member(on) | TargetRecord::Node(on)) = &load.target;
-    let directed = !matches!(
-        load.form.as_str(),
-        "force" | "displaced" | "warming" | "lack_of_fit" | "reaction_of" | "point_moment"
-    );
-    LoadRow {
-        on,
-        what: what(load, printer),
-        place: place(load, printer),
-        direction: match (directed, load.per.as_str()) {
-            (false, _) => String::new(),
-            (true, "projected") => format!("{}, per projected length", load.direction),
-            (true, _) => load.direction.clone(),
-        },
-        source: load.source.as_deref(),
-    }
-}
-
-fn what(load: &LoadRecord, printer: &Printer) -> String {
-    let first = load.values.first().copied().unwrap_or_default();
-    let last = load.values.last().copied().unwrap_or_default();
-    let line = |value: f64| printer.with_unit(Kind::LineLoad, value);
-    let over_width = || {
-        let width = load.width.unwrap_or_default();
-        format!(
-            "{} × {} = {}",
-            printer.with_unit(Kind::AreaLoad, first),
-            printer.with_unit(Kind::Length, width),
-            line(first * width)
-        )
-    };
-    match load.form.as_str() {
-        "self_weight" => format!("self-weight {}", line(first)),
-        "uniform" => line(first),
-        "varying" => format!("{} to {}", line(first), line(last)),
-        "area" => over_width(),
-        "build_up" => {
-            format!("build-up {}: {}", load.build_up.as_deref().unwrap_or_default(), over_width())
-        }
-        "point" => printer.with_unit(Kind::Force, first),
-        "point_moment" => {
-            format!(
-                "moment {} about {}",
-                printer.with_unit(Kind::Moment, first),
-                axis(&load.direction)
-            )
-        }
-        "force" => joined(&[
-            components("force", load.start, Kind::Force, printer),
-            components("moment", load.moment, Kind::Moment, printer),
-        ]),
-        "reaction_of" => {
-            let given = joined(&[
-                components("force", load.start, Kind::Force, printer),
-                components("moment", load.moment, Kind::Moment, printer),
-            ]);
-            let node = load.reaction_of.as_deref().unwrap_or_default();
-            let given = if given.is_empty() { "nothing in this case".to_owned() } else { given };
-            format!("reaction of {node} handed on: {given}")
-        }
-        "displaced" => {
-            let part = |from: usize, kind: Kind, word: &str| {
-                let values =
-                    std::array::from_fn(|k| load.values.get(from + k).copied().unwrap_or_default());
-                components(word, values, kind, printer)
-            };
-            joined(&[
-                part(0, Kind::Deflection, "ground moved"),
-                part(3, Kind::Rotation, "ground turned"),
-            ])
-        }
-        "warming" if (first - last).abs() > 0.0 => format!(
-            "warming: top {}, bottom {}",
-            printer.with_unit(Kind::Temperature, first),
-            printer.with_unit(Kind::Temperature, last)
-        ),
-        "warming" => format!("warming {}", printer.with_unit(Kind::Temperature, first)),
-        _ => format!("made too long by {}", printer.with_unit(Kind::Deflection, first)),
-    }
-}
-
-fn axis(direction: &str) -> &str {
-    match direction {
-        "up" | "down" => "Z",
-        other => other.trim_start_matches('+'),
-    }
-}
-
-fn joined(parts: &[String]) -> String {
-    let there: Vec<&str> =
-        parts.iter().map(String::as_str).filter(|part| !part.is_empty()).collect();
-    there.join("; ")
-}
-
-/// `force X 3 kN, Z −1 kN`; nothing where all are zero.
-fn components(word: &str, values: [f64; 3], kind: Kind, printer: &Printer) -> String {
-    let parts: Vec<String> = AXES
-        .iter()
-        .zip(values)
-        .filter(|(_, value)| value.abs() > 0.0)
-        .map(|(axis, value)| format!("{axis} {}", printer.with_unit(kind, value)))
-        .collect();
-    if parts.is_empty() { String::new() } else { format!("{word} {}", parts.join(", ")) }
-}
-
-fn place(load: &LoadRecord, printer: &Printer) -> String {
-    let length = |x: f64| printer.number(Kind::Length, x);
-    let unit = &printer.units.get(Kind::Length).label;
-    match (load.from, load.to, load.at.as_slice()) {
-        (Some(from), Some(to), _) => format!("{} to {} {unit}", length(from), length(to)),
-        (_, _, [at]) => format!("at {} {unit}", length(*at)),
-        (_, _, [first, .., last]) => {
-            let every = load.every.map(|every| format!("every {} {unit}, ", length(every)));
-            format!(
-                "{}{} places from {} to {} {unit}",
-                every.unwrap_or_default(),
-                load.at.len(),
-                length(*first),
-                length(*last)
-            )
-        }
-        _ => String::new(),
-    }
 }
 
 /// One reaction handed on.
@@ -260,7 +140,7 @@ pub(super) fn takedown(record: &Record) -> Vec<HandedRow<'_>> {
                     .iter()
                     .find(|(_, structure)| structure.nodes.contains_key(node))
                     .map_or("", |(name, _)| name.as_str());
-                let (TargetRecord::Member(to) | TargetRecord::Node(to)) = &load.target;
+                let to = load.on();
                 let places = load.at.len().max(1);
                 #[expect(clippy::cast_precision_loss, reason = "at most ten thousand places")]
                 let total = load.start.map(|force| force * places as f64);

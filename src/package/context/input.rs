@@ -5,9 +5,7 @@ use serde::Serialize;
 use super::{FigureRef, Quantity};
 use crate::figures::Figure;
 use crate::quantity::{Kind, Printer, System};
-use crate::record::{
-    FreedomRecord, FreedomWord, MemberRecord, Record, StructureRecord, SupportRecord,
-};
+use crate::record::{MemberRecord, Record, StructureRecord, property_kind, release_kind};
 
 #[derive(Serialize)]
 pub(super) struct Settings<'r> {
@@ -170,18 +168,6 @@ pub(super) fn sections(record: &Record) -> Vec<SectionRow<'_>> {
         .collect()
 }
 
-/// What a section property is, by its symbol.
-fn property_kind(symbol: &str) -> Kind {
-    match symbol {
-        "A" | "A_sy" | "A_sz" | "A_vy" | "A_vz" => Kind::Area,
-        "I_w" => Kind::Warping,
-        "alpha" => Kind::Angle,
-        _ if symbol.starts_with("I_") => Kind::SecondMoment,
-        _ if symbol.starts_with("W_") => Kind::SectionModulus,
-        _ => Kind::SectionLength,
-    }
-}
-
 fn members(record: &Record) -> impl Iterator<Item = (&str, &MemberRecord)> {
     record.model.structures.values().flat_map(|structure| {
         structure.members.iter().map(|(name, member)| (name.as_str(), member))
@@ -303,25 +289,12 @@ fn supports<'r>(structure: &'r StructureRecord, printer: &Printer) -> Vec<Suppor
             Some(SupportRow {
                 node: name,
                 kind: &support.kind,
-                freedoms: std::array::from_fn(|k| freedom(support, k, printer)),
+                freedoms: support.words(printer),
                 turned: support.turned.as_deref(),
                 uplift: if support.uplift_anchored { "anchored" } else { "" },
             })
         })
         .collect()
-}
-
-fn freedom(support: &SupportRecord, k: usize, printer: &Printer) -> String {
-    let kind = if k < 3 { Kind::Spring } else { Kind::RotationSpring };
-    words(&support.freedoms[k], kind, printer)
-}
-
-fn words(freedom: &FreedomRecord, kind: Kind, printer: &Printer) -> String {
-    match freedom {
-        FreedomRecord::Word(FreedomWord::Free) => "free".to_owned(),
-        FreedomRecord::Word(FreedomWord::Fixed) => "fixed".to_owned(),
-        FreedomRecord::Spring(stiffness) => printer.with_unit(kind, *stiffness),
-    }
 }
 
 fn row<'r>(name: &'r str, member: &'r MemberRecord) -> MemberRow<'r> {
@@ -367,9 +340,7 @@ fn hinges<'r>(structure: &'r StructureRecord, printer: &Printer) -> Vec<HingeRow
                 .releases
                 .iter()
                 .map(|(force, freedom)| {
-                    let turning = matches!(force.as_str(), "T" | "M_y" | "M_z");
-                    let kind = if turning { Kind::RotationSpring } else { Kind::Spring };
-                    format!("{force} {}", words(freedom, kind, printer))
+                    format!("{force} {}", freedom.words(release_kind(force), printer))
                 })
                 .collect();
             out.push(HingeRow {

@@ -32,7 +32,6 @@ use crate::quantity::Kind;
 use crate::record::{BasisRecord, ProgramRecord, ProjectRecord, Record, Registers, RevisionRecord};
 
 pub(super) use checks::rank;
-pub(super) use results::component_kind;
 
 /// A value with the name of its kind, printed only by the filters.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize)]

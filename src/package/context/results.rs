@@ -6,14 +6,9 @@ use super::{FigureRef, Quantity};
 use crate::figures::Figure;
 use crate::model::{EFFECTS, Effect, FORCES};
 use crate::quantity::Kind;
-use crate::record::{ExtremeRecord, ExtremesRecord, Map, Record};
+use crate::record::{ExtremeRecord, ExtremesRecord, Map, Record, component_kind};
 
 const COMPONENTS: [&str; 6] = ["X", "Y", "Z", "RX", "RY", "RZ"];
-
-/// What a component of a reaction is.
-pub(in crate::package) fn component_kind(component: &str) -> Kind {
-    if component.starts_with('R') { Kind::Moment } else { Kind::Force }
-}
 
 #[derive(Serialize)]
 pub(super) struct MemberView<'r> {
