@@ -11,6 +11,7 @@ pub mod calc;
 pub mod catalogue;
 pub mod checks;
 pub mod cli;
+pub mod compare;
 pub mod diagnostic;
 pub mod figures;
 pub mod files;

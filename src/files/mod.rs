@@ -15,7 +15,7 @@ use std::collections::BTreeMap;
 use std::io;
 
 pub use edit::edit;
-pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, folder, read};
+pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, committed_record, folder, read, record};
 pub use write::{CONTENTS, PACKAGE, create, heal, write};
 
 use sha2::{Digest, Sha256};

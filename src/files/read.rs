@@ -174,3 +174,29 @@ fn not_text(path: &Path, error: &std::string::FromUtf8Error) -> Diagnostic {
     let place = format!("`{}` is not UTF-8 at line {line}, column {column}", path.display());
     Diagnostic::error("not-text", place).hint("save the file as UTF-8 text".to_owned())
 }
+
+/// Bytes in a record.
+const LARGEST_RECORD: u64 = 256 << 20;
+
+/// Reads a record file.
+///
+/// # Errors
+/// When it cannot be read, is too large or is not text.
+pub fn record(path: &Path) -> Result<String, Diagnostic> {
+    let mut bytes = Vec::new();
+    File::open(path)
+        .and_then(|file| file.take(LARGEST_RECORD + 1).read_to_end(&mut bytes))
+        .map_err(|error| unreadable(path, &reason(&error)))?;
+    if bytes.len() as u64 > LARGEST_RECORD {
+        let message = format!("`{}` is larger than {} MiB", path.display(), LARGEST_RECORD >> 20);
+        return Err(Diagnostic::error("too-large", message));
+    }
+    String::from_utf8(bytes).map_err(|error| not_text(path, &error))
+}
+
+/// The record of the package that a project folder holds, if there is one.
+#[must_use]
+pub fn committed_record(folder: &Path) -> Option<Vec<u8>> {
+    let path = folder.join(super::PACKAGE).join("record.json");
+    record(&path).ok().map(String::into_bytes)
+}

@@ -9,6 +9,7 @@ mod de;
 mod edit;
 mod forms;
 pub mod keys;
+mod lines;
 pub mod narrative;
 mod near;
 mod resolve;
@@ -19,6 +20,7 @@ mod tree;
 pub mod written;
 
 pub use edit::{Edit, section, section_edit, with_section};
+pub use lines::Lines;
 
 use crate::diagnostic::Diagnostic;
 use crate::files::Sources;

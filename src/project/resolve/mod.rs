@@ -32,6 +32,7 @@ mod workings;
 
 use self::names::Names;
 use self::reader::Reader;
+pub(super) use self::structures::ONLY;
 use super::text::FILE;
 use super::written;
 use crate::diagnostic::{Diagnostic, Severity};

@@ -9,7 +9,7 @@ use crate::project::written;
 use crate::quantity::Kind;
 
 /// Name of the structure of a project that writes it at the top level.
-const ONLY: &str = "main";
+pub(in crate::project) const ONLY: &str = "main";
 
 /// One structure's blocks, wherever they stand in the file.
 pub(super) struct Blocks<'w> {

@@ -2,7 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-const ORDER: [&str; 15] = [
+const ORDER: [&str; 16] = [
     "quantity",
     "diagnostic",
     "files",
@@ -15,6 +15,7 @@ const ORDER: [&str; 15] = [
     "checks",
     "trial",
     "record",
+    "compare",
     "figures",
     "package",
     "cli",
