@@ -155,7 +155,8 @@ fn material(name: &str, of: &MaterialRecord, printer: &Printer) -> Item {
         .number("density", Kind::MassDensity, of.density)
         .number("expansion", Kind::Expansion, of.expansion);
     for (symbol, (value, kind)) in &of.strengths {
-        facts = facts.number(symbol, Kind::from_name(kind).unwrap_or(Kind::Number), *value);
+        let print_as = Kind::from_name(kind).unwrap_or(Kind::Number);
+        facts = facts.words(symbol, printer.with_unit(print_as, *value), (value, kind));
     }
     facts
         .maybe("service class", of.service_class.as_ref())
@@ -303,6 +304,7 @@ fn load(case: &str, of: &LoadRecord, printer: &Printer) -> Option<Item> {
     let acting = (!handed).then_some((&of.values, of.start, of.end, of.moment));
     let facts = Facts::new(printer)
         .words("load", what, (&of.form, &of.reaction_of, &of.build_up, of.width, acting))
+        .text("structure", &of.structure)
         .words("place", words.place, (of.from, of.to, &of.at, of.every, of.span))
         .words("direction", words.direction, (&of.direction, &of.per))
         .maybe("source", of.source.as_ref());

@@ -1,11 +1,15 @@
 //! Governing values of members and reactions.
 
+use std::collections::BTreeSet;
+
 use super::facts::content_name;
 use super::thresholds::Apart;
 use super::{Count, End, Thresholds, ValueChange, What};
 use crate::model::Effect;
 use crate::quantity::Kind;
-use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberResult, Record, component_kind};
+use crate::record::{
+    CombinationRecord, ExtremeRecord, ExtremesRecord, Map, MemberResult, Record, component_kind,
+};
 
 /// Purpose → effect → extremes.
 type Governing = Map<Map<ExtremesRecord>>;
@@ -21,7 +25,39 @@ struct Place<'r> {
 struct Sides<'r> {
     old: &'r Record,
     new: &'r Record,
+    /// What the combinations of each contain.
+    contents: [BTreeSet<String>; 2],
     thresholds: &'r Thresholds,
+}
+
+impl<'r> Sides<'r> {
+    fn new(old: &'r Record, new: &'r Record, thresholds: &'r Thresholds) -> Self {
+        let contents =
+            [old, new].map(|record| record.combinations.values().map(content_name).collect());
+        Self { old, new, contents, thresholds }
+    }
+
+    /// Another combination governs. One whose factors changed, so that neither side has the other's, is
+    /// the same as long as rule or title, leading action and cases are.
+    fn is_other(&self, old: &ExtremeRecord, new: &ExtremeRecord) -> bool {
+        let (Some(a), Some(b)) =
+            (self.old.combinations.get(&old.state), self.new.combinations.get(&new.state))
+        else {
+            return true;
+        };
+        if old.loaded != new.loaded {
+            return true;
+        }
+        let (before, after) = (content_name(a), content_name(b));
+        let [olds, news] = &self.contents;
+        let replaced = !news.contains(&before) && !olds.contains(&after);
+        let row = |of: &CombinationRecord| {
+            let cases: Vec<(String, bool)> =
+                of.factors.iter().map(|(case, factor)| (case.clone(), *factor < 0.0)).collect();
+            (of.rule.clone().unwrap_or_else(|| of.title.clone()), of.leading.clone(), cases)
+        };
+        before != after && !(replaced && row(a) == row(b))
+    }
 }
 
 /// Of every member, or of each span where a member has several: its extremes are among theirs.
@@ -31,7 +67,7 @@ pub(super) fn members(
     thresholds: &Thresholds,
     count: &mut Count,
 ) -> Vec<ValueChange> {
-    let sides = Sides { old, new, thresholds };
+    let sides = Sides::new(old, new, thresholds);
     let none = Governing::new();
     let mut out = Vec::new();
     for name in both(&old.results.members, &new.results.members) {
@@ -74,7 +110,7 @@ pub(super) fn reactions(
     thresholds: &Thresholds,
     count: &mut Count,
 ) -> Vec<ValueChange> {
-    let sides = Sides { old, new, thresholds };
+    let sides = Sides::new(old, new, thresholds);
     let (before, after) = (by_node(old), by_node(new));
     let none = Governing::new();
     let mut out = Vec::new();
@@ -172,12 +208,6 @@ impl Sides<'_> {
             state: record.combinations.get(&extreme.state).map(content_name).unwrap_or_default(),
             number: record.in_short(&extreme.state, &extreme.loaded),
         };
-        let old_end = old.map(|extreme| end(self.old, extreme));
-        let new_end = new.map(|extreme| end(self.new, extreme));
-        let governs = |end: &Option<End>, extreme: Option<&ExtremeRecord>| {
-            let loaded = extreme.map(|extreme| extreme.loaded.clone());
-            (end.as_ref().map(|end| end.state.clone()), loaded)
-        };
         let relative = match (old, new) {
             (Some(old), Some(new)) if old.value.abs() > 0.0 && old.value * new.value >= 0.0 => {
                 Some(new.value.abs() / old.value.abs() - 1.0)
@@ -198,10 +228,10 @@ impl Sides<'_> {
             kind: kind.name(),
             what,
             relative,
-            other_combination: both && governs(&old_end, old) != governs(&new_end, new),
+            other_combination: old.zip(new).is_some_and(|(old, new)| self.is_other(old, new)),
             moved: both && moved,
-            old: old_end,
-            new: new_end,
+            old: old.map(|extreme| end(self.old, extreme)),
+            new: new.map(|extreme| end(self.new, extreme)),
         })
     }
 }

@@ -3,6 +3,7 @@
 mod by_span;
 mod check_places;
 mod checks;
+mod compare;
 mod formulas;
 mod frames;
 mod generated;
