@@ -189,7 +189,14 @@ fn located(pair: Pair<'_>, old: &Input<'_>, new: &Input<'_>, renamed: &[Renamed]
     let kind = after.or(before).map_or(ItemKind::Project, |item| item.kind);
     let name = after.or(before).map(|item| item.name.clone()).unwrap_or_default();
     let line = |side: &Input<'_>, one: Option<Numbered<'_>>, name: &str| {
-        let line = side.lines.as_ref()?.get(kind.word(), name, one?.number)?;
+        let one = one?;
+        // The file knows a written combination by its title only.
+        let title = one.item.facts.iter().find(|fact| fact.label == "title");
+        let (name, number) = match (kind, title) {
+            (ItemKind::Combination, Some(title)) => (title.text.as_str(), 0),
+            _ => (name, one.number),
+        };
+        let line = side.lines.as_ref()?.get(kind.word(), name, number)?;
         Some(LineOf { file: crate::project::text::FILE.to_owned(), line })
     };
     let old_name = before.map(|item| original(kind, &item.name, renamed)).unwrap_or_default();

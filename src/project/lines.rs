@@ -115,6 +115,9 @@ impl Lines {
         for rule in &project.combinations.rules {
             self.add("rule", rule.rule.as_str(), rule.rule.range());
         }
+        for written in &project.combinations.written {
+            self.add("combination", written.title.as_str(), written.title.range());
+        }
     }
 }
 
