@@ -1,14 +1,14 @@
 //! What a comparison found, as values.
 
-use serde::Serialize;
+use serde::{Deserialize, Deserializer, Serialize, de};
 
-use super::{ItemKind, Side, Thresholds};
+use super::{FORMAT, ItemKind, Side, Thresholds};
 use crate::model::Purpose;
 use crate::quantity::Kind;
 use crate::record::OnRecord;
 
 /// What differs between two revisions. All values SI.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct Changes {
     pub format: u32,
     pub old: SideRecord,
@@ -49,10 +49,38 @@ impl Changes {
     pub fn is_worse(&self) -> bool {
         self.checks.iter().any(|change| change.worse)
     }
+
+    /// The comparison as JSON.
+    ///
+    /// # Panics
+    /// Never: a comparison holds nothing that JSON cannot.
+    #[must_use]
+    pub fn to_json(&self) -> String {
+        let mut out =
+            serde_json::to_string_pretty(self).expect("names are text and numbers are finite");
+        out.push('\n');
+        out
+    }
+
+    /// Reads a comparison.
+    ///
+    /// # Errors
+    /// When the text is not a comparison, or its format is newer than this program.
+    pub fn from_json(text: &str) -> Result<Self, String> {
+        let changes: Self =
+            serde_json::from_str(text).map_err(|error| format!("not a comparison: {error}"))?;
+        if changes.format > FORMAT {
+            return Err(format!(
+                "the comparison has format {}, this program reads {FORMAT}: use a newer version",
+                changes.format
+            ));
+        }
+        Ok(changes)
+    }
 }
 
 /// One side by what it is.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct SideRecord {
     pub label: String,
     pub title: String,
@@ -81,7 +109,7 @@ impl SideRecord {
 }
 
 /// Something that has another name and is otherwise recognised.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Renamed {
     pub kind: ItemKind,
     pub old: String,
@@ -91,7 +119,7 @@ pub struct Renamed {
 }
 
 /// What happened to a thing.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize)]
 #[serde(rename_all = "lowercase")]
 pub enum What {
     New,
@@ -100,7 +128,7 @@ pub enum What {
 }
 
 /// A change of something in the project file.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct ItemChange {
     pub kind: ItemKind,
     /// Its name on the new side; on the old one where it vanished.
@@ -113,14 +141,14 @@ pub struct ItemChange {
 }
 
 /// A line of a file, counted from 1.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct LineOf {
     pub file: String,
     pub line: usize,
 }
 
 /// One fact of a thing, in words; empty where it is not stated.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct FactChange {
     pub fact: String,
     pub old: String,
@@ -128,7 +156,7 @@ pub struct FactChange {
 }
 
 /// A text file of the project: narrative, template, style, check sheet.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct TextChange {
     pub file: String,
     pub what: What,
@@ -140,7 +168,7 @@ pub struct TextChange {
 }
 
 /// A check, or an agreement of a hand calculation, that came out otherwise.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct CheckChange {
     pub id: String,
     pub kind: String,
@@ -158,7 +186,7 @@ pub struct CheckChange {
 }
 
 /// One side of a check.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct OutcomeEnd {
     pub outcome: String,
     /// Deferred, with a deferral of the project that names it.
@@ -172,21 +200,26 @@ pub struct OutcomeEnd {
     pub x: Option<f64>,
 }
 
+/// One of the words that the program knows.
+type Known = &'static str;
+
 /// A governing value that changed.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct ValueChange {
     /// Member or node.
     pub on: String,
     /// Counted from 1, of a member with several spans.
-    #[serde(skip_serializing_if = "Option::is_none")]
+    #[serde(skip_serializing_if = "Option::is_none", default)]
     pub span: Option<usize>,
     pub purpose: String,
     /// Effect of a member or component of a reaction.
     pub effect: String,
     /// `max` or `min`.
-    pub which: &'static str,
+    #[serde(deserialize_with = "which")]
+    pub which: Known,
     /// Name of the kind of quantity.
-    pub kind: &'static str,
+    #[serde(deserialize_with = "kind")]
+    pub kind: Known,
     pub what: What,
     pub old: Option<End>,
     pub new: Option<End>,
@@ -213,8 +246,22 @@ impl ValueChange {
     }
 }
 
+fn which<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Known, D::Error> {
+    match String::deserialize(deserializer)?.as_str() {
+        "max" => Ok("max"),
+        "min" => Ok("min"),
+        other => Err(de::Error::custom(format!("`{other}` is neither `max` nor `min`"))),
+    }
+}
+
+fn kind<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Known, D::Error> {
+    let name = String::deserialize(deserializer)?;
+    let kind = Kind::from_name(&name);
+    kind.map(Kind::name).ok_or_else(|| de::Error::custom(format!("no kind named `{name}`")))
+}
+
 /// One side of a governing value.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct End {
     pub value: f64,
     pub x: Option<f64>,
@@ -225,7 +272,7 @@ pub struct End {
 }
 
 /// How many things of a sort there are on both sides together.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize)]
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Count {
     pub same: usize,
     /// Changed by less than the thresholds; not listed.
@@ -243,7 +290,7 @@ impl Count {
 }
 
 /// Counts by sort.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize)]
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Counts {
     pub items: Count,
     pub texts: Count,

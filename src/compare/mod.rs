@@ -19,6 +19,7 @@ mod texts;
 mod thresholds;
 mod translate;
 mod values;
+mod verdict;
 
 pub use changes::{
     Changes, CheckChange, Count, Counts, End, FactChange, ItemChange, LineOf, OutcomeEnd, Renamed,

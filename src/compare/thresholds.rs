@@ -1,12 +1,12 @@
 //! What is too small to be listed.
 
-use serde::Serialize;
+use serde::{Deserialize, Serialize};
 
 use crate::quantity::{Kind, Printer};
 use crate::record::Map;
 
 /// A change is listed when it passes the relative and the absolute threshold of its quantity.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct Thresholds {
     /// Share of the larger of both values.
     pub relative: f64,
