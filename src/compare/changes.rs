@@ -44,6 +44,17 @@ impl Changes {
                 .all(|count| count.listed == 0 && count.below == 0)
     }
 
+    /// Something differs, and all of it by less than the thresholds.
+    #[must_use]
+    pub fn is_below(&self) -> bool {
+        let counts = &self.counts;
+        let listed = [counts.items, counts.texts, counts.checks, counts.values, counts.reactions]
+            .iter()
+            .any(|count| count.listed > 0);
+        let named = [self.renamed.len(), self.opened.len(), self.closed.len()];
+        !self.is_empty() && !listed && named == [0; 3]
+    }
+
     /// The outcome of some check is worse than it was, or a new check is not satisfied.
     #[must_use]
     pub fn is_worse(&self) -> bool {

@@ -173,10 +173,18 @@ fn section(name: &str, of: &SectionRecord, printer: &Printer) -> Item {
         facts = facts.number(symbol, property_kind(symbol), *value);
     }
     facts
-        .words("outline", format!("{} loops", of.outline.len()), &of.outline)
+        .words("outline", outline(of), &of.outline)
         .text("methods", &of.methods.join("; "))
         .text("source", &of.source)
         .item(ItemKind::Section, name)
+}
+
+/// The outline by the number of its points.
+fn outline(of: &SectionRecord) -> String {
+    match of.outline.iter().map(Vec::len).sum::<usize>() {
+        0 => String::new(),
+        points => format!("{points} points"),
+    }
 }
 
 fn structure(name: &str, of: &StructureRecord, printer: &Printer) -> Vec<Item> {

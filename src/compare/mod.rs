@@ -15,6 +15,7 @@ mod facts;
 mod input;
 mod items;
 mod rename;
+mod report;
 mod texts;
 mod thresholds;
 mod translate;
@@ -27,6 +28,7 @@ pub use changes::{
 };
 pub use committed::differs;
 pub use items::ItemKind;
+pub use report::{CheckRow, CountRow, ItemRow, RenamedRow, Report, TextRow, ValueRow};
 pub use thresholds::Thresholds;
 
 use crate::files::Sources;

@@ -2,7 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::quantity::{Kind, Printer};
+use crate::quantity::{Dimension, Kind, Printer, Quantity};
 use crate::record::Map;
 
 /// A change is listed when it passes the relative and the absolute threshold of its quantity.
@@ -70,6 +70,32 @@ impl Thresholds {
         } else {
             Apart::Listed
         }
+    }
+
+    /// Puts a quantity in place of the absolute threshold of its kind: a force, a moment, a length, an
+    /// angle, or a plain number for utilisations.
+    ///
+    /// # Errors
+    /// When it is of none of these, or below zero.
+    pub fn set(&mut self, quantity: &Quantity) -> Result<(), String> {
+        if quantity.value < 0.0 {
+            return Err("a threshold is not below zero".to_owned());
+        }
+        if quantity.dimension == Dimension::NONE {
+            self.utilisation = quantity.value;
+            return Ok(());
+        }
+        let kinds = [Kind::Force, Kind::Moment, Kind::Deflection, Kind::Rotation];
+        let Some(kind) = kinds.into_iter().find(|kind| kind.dimension() == quantity.dimension)
+        else {
+            return Err(format!(
+                "there is no threshold for {}: give a force, a moment, a length, an angle or a plain \
+                 number (utilisation)",
+                quantity.dimension.name_with_article()
+            ));
+        };
+        self.absolute.insert(kind.name().to_owned(), quantity.value);
+        Ok(())
     }
 
     /// The thresholds in words, in the units of a printer.

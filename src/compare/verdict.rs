@@ -14,6 +14,9 @@ impl Changes {
                 + counts.checks.all();
             return format!("no change: all {all} things compared are the same");
         }
+        if self.is_below() {
+            return "no change that passes the thresholds".to_owned();
+        }
         let mut outcomes = self.outcomes();
         if outcomes.is_empty() && counts.checks.all() > 0 {
             outcomes.push("no outcome of a check changed".to_owned());

@@ -39,30 +39,37 @@ pub(super) struct Drawing<'a> {
 
 /// Draws a member's effects; `None` where all are zero or nothing is known.
 pub(super) fn figure(sheet: &Sheet<'_>, name: &str, purpose: Purpose) -> Option<Figure> {
-    let record = sheet.record;
-    let member = sheet.structure.members.get(name)?;
-    let result = record.results.members.get(name)?;
-    let whole = result.governing.get(purpose.name())?;
-    let spans = result.spans.iter().filter_map(|span| span.governing.get(purpose.name()));
-    let combinations = record
-        .combinations
-        .iter()
-        .filter(|(_, combination)| combination.purpose == purpose.name())
-        .map(|(name, combination)| (name.as_str(), combination.number.as_str()))
-        .collect();
-    let drawing = Drawing {
-        sheet,
-        name,
-        member,
-        purpose,
-        combinations,
-        governing: std::iter::once(whole).chain(spans).collect(),
-    };
+    let drawing = Drawing::new(sheet, name, purpose)?;
     let effects = drawing.effects();
     if effects.is_empty() {
         return None;
     }
     Some(drawing.draw(&effects))
+}
+
+impl<'a> Drawing<'a> {
+    /// `None` where nothing is known of the member under the purpose.
+    pub(super) fn new(sheet: &'a Sheet<'a>, name: &'a str, purpose: Purpose) -> Option<Self> {
+        let record = sheet.record;
+        let member = sheet.structure.members.get(name)?;
+        let result = record.results.members.get(name)?;
+        let whole = result.governing.get(purpose.name())?;
+        let spans = result.spans.iter().filter_map(|span| span.governing.get(purpose.name()));
+        let combinations = record
+            .combinations
+            .iter()
+            .filter(|(_, combination)| combination.purpose == purpose.name())
+            .map(|(name, combination)| (name.as_str(), combination.number.as_str()))
+            .collect();
+        Some(Self {
+            sheet,
+            name,
+            member,
+            purpose,
+            combinations,
+            governing: std::iter::once(whole).chain(spans).collect(),
+        })
+    }
 }
 
 impl Drawing<'_> {

@@ -7,6 +7,7 @@
 //! - Equal records give equal bytes.
 
 mod canvas;
+mod comparison;
 mod curve;
 mod frame;
 mod imposed;
@@ -29,6 +30,7 @@ use crate::model::Purpose;
 use crate::record::Record;
 use sheet::Sheet;
 
+pub use comparison::comparison;
 pub use method::method;
 
 /// A drawing with its place in the package.

@@ -5,9 +5,10 @@
 //!   mark.
 //! - Nothing outside the project's own folder is read: no `..`, no absolute path, no link out.
 //! - Writing is all or nothing: beside the old package, then exchanged by two renames; a changed project
-//!   file likewise by one.
+//!   file or a report likewise by one.
 
 mod edit;
+mod put;
 mod read;
 mod write;
 
@@ -15,6 +16,7 @@ use std::collections::BTreeMap;
 use std::io;
 
 pub use edit::edit;
+pub use put::put;
 pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, committed_record, folder, read, record};
 pub use write::{CONTENTS, PACKAGE, create, heal, write};
 

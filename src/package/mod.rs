@@ -9,6 +9,7 @@
 
 mod anchor;
 mod cautions;
+mod comparison;
 mod context;
 mod html;
 mod links;
@@ -22,6 +23,8 @@ mod templates;
 mod unclosed;
 
 use std::collections::BTreeMap;
+
+pub use comparison::{comparison_markdown, comparison_page};
 
 use crate::diagnostic::{Diagnostic, Place};
 use crate::figures::{Figure, figures, method};

@@ -10,11 +10,15 @@ use std::sync::Arc;
 
 use minijinja::syntax::SyntaxConfig;
 use minijinja::value::{Kwargs, Serde, ValueKind};
-use minijinja::{AutoEscape, Environment, Error, ErrorKind, State, UndefinedBehavior, Value};
+use minijinja::{
+    AutoEscape, Environment, Error, ErrorKind, State, UndefinedBehavior, Value, context,
+};
 
-use super::context::Context;
+use super::context::{Context, FigureRef};
 use super::{look_up, markdown, narrative};
+use crate::compare::Report;
 use crate::diagnostic::{Diagnostic, Place};
+use crate::figures::Figure;
 use crate::files::Sources;
 use crate::quantity::{Dimension, Kind, Printer, Unit, parse_unit};
 use crate::record::Record;
@@ -30,7 +34,7 @@ macro_rules! built_in {
 }
 
 /// Templates that come with the program.
-const BUILT_IN: [(&str, &str); 14] = built_in![
+const BUILT_IN: [(&str, &str); 15] = built_in![
     "cover.md",
     "summary.md",
     "basis.md",
@@ -44,8 +48,46 @@ const BUILT_IN: [(&str, &str); 14] = built_in![
     "block.md",
     "self-check.md",
     "deferred.md",
+    "changes.md",
     "appendix.md",
 ];
+const CHANGES: &str = "changes.md";
+
+/// A template that comes with the program.
+fn built_in(name: &str) -> Option<String> {
+    BUILT_IN.iter().find(|(own, _)| *own == name).map(|(_, text)| (*text).to_owned())
+}
+
+/// An environment in which text is escaped and whose cost is bounded; it has no template yet.
+fn bounded<'e>() -> Environment<'e> {
+    let mut environment = Environment::new();
+    environment.set_undefined_behavior(UndefinedBehavior::Strict);
+    environment.set_fuel(Some(FUEL));
+    environment.set_recursion_limit(RECURSION);
+    environment.set_debug(true);
+    let syntax = SyntaxConfig::builder().trim_blocks(true).lstrip_blocks(true).build();
+    environment.set_syntax(syntax.expect("only white space differs from the usual syntax"));
+    environment.set_auto_escape_callback(|_| AutoEscape::Custom("markdown".into()));
+    environment.set_formatter(format);
+    environment
+}
+
+/// Renders the built-in text of a comparison on its own, apart from any package.
+pub(super) fn comparison(
+    report: &Report,
+    drawings: &[Figure],
+    printer: &Printer,
+) -> Result<String, Diagnostic> {
+    let mut environment = bounded();
+    environment.set_loader(|name| Ok(built_in(name)));
+    add_printing(&mut environment, printer.clone());
+    let figures: Vec<FigureRef<'_>> = drawings.iter().map(FigureRef::from).collect();
+    let context = context! { changes => Value::from(Serde(report)), changes_figures => Value::from(Serde(&figures)) };
+    environment
+        .get_template(CHANGES)
+        .and_then(|template| template.render(context))
+        .map_err(|error| Diagnostic::error("template", format!("template `{CHANGES}`: {error}")))
+}
 
 /// Renders chapters from one context.
 pub(super) struct Renderer<'r> {
@@ -67,15 +109,7 @@ impl<'r> Renderer<'r> {
                 Some((name.to_owned(), sources.text(path)?.to_owned()))
             })
             .collect();
-        let mut environment = Environment::new();
-        environment.set_undefined_behavior(UndefinedBehavior::Strict);
-        environment.set_fuel(Some(FUEL));
-        environment.set_recursion_limit(RECURSION);
-        environment.set_debug(true);
-        let syntax = SyntaxConfig::builder().trim_blocks(true).lstrip_blocks(true).build();
-        environment.set_syntax(syntax.expect("only white space differs from the usual syntax"));
-        environment.set_auto_escape_callback(|_| AutoEscape::Custom("markdown".into()));
-        environment.set_formatter(format);
+        let mut environment = bounded();
         let mut templates = own.clone();
         let (files, blocks) = narrative::templates(record, sources);
         let read = |(path, template): &(String, String)| {
@@ -84,10 +118,8 @@ impl<'r> Renderer<'r> {
         };
         let narrative = files.iter().map(read).collect();
         templates.extend(files);
-        environment.set_loader(move |name| {
-            let built_in = || BUILT_IN.iter().find(|(own, _)| *own == name).map(|(_, text)| *text);
-            Ok(templates.get(name).map(String::as_str).or_else(built_in).map(str::to_owned))
-        });
+        environment
+            .set_loader(move |name| Ok(templates.get(name).cloned().or_else(|| built_in(name))));
         add_printing(&mut environment, record.model.units.printer());
         look_up::add(&mut environment, record, &context.figure_captions());
         let blocks: Vec<Value> = blocks.iter().map(|block| Value::from(Serde(block))).collect();

@@ -3,12 +3,15 @@
 //! Here stands the frame of the page: head, contents, what is at the edge of every printed sheet.
 
 mod body;
+mod comparison;
 mod ids;
 mod notes;
 mod symbols;
 mod table;
 
 use std::fmt::Write;
+
+pub(super) use comparison::comparison;
 
 use crate::figures::Figure;
 use crate::record::Record;
@@ -21,16 +24,8 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (Str
     let project = &record.project;
     let mark = project.revisions.last().map_or("", |revision| revision.mark.as_str());
     let title = format!("{} – {}", project.number, project.title);
-    let mut out = String::with_capacity(body.html.len() + STYLE.len() + 4096);
-    let _ = write!(
-        out,
-        "<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n\
-         <meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; style-src 'unsafe-inline'; img-src data:\">\n\
-         <meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n\
-         <title>{}</title>\n<style>\n{STYLE}\n{}</style>\n</head>\n<body>\n",
-        escaped(&title),
-        sheet(record, mark),
-    );
+    let mut out = opening(&title, &sheet(record, mark));
+    out.reserve(body.html.len());
     let _ = writeln!(
         out,
         "<header class=\"head\"><span>{}</span> <span>{}</span> <span>Revision {}</span></header>",
@@ -53,6 +48,17 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (Str
     out += rest;
     out += "</main>\n</body>\n</html>\n";
     (out, body.missing())
+}
+
+/// The page up to its body: nothing is loaded from elsewhere, no script runs.
+fn opening(title: &str, sheet: &str) -> String {
+    format!(
+        "<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n\
+         <meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; style-src 'unsafe-inline'; img-src data:\">\n\
+         <meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n\
+         <title>{}</title>\n<style>\n{STYLE}\n{sheet}</style>\n</head>\n<body>\n",
+        escaped(title),
+    )
 }
 
 /// Sheet size and what stands at the edge of every printed sheet.

@@ -1,0 +1,26 @@
+//! The page of a comparison, which stands apart from any package.
+
+use super::{STYLE, body, escaped, opening};
+use crate::figures::Figure;
+use crate::record::Record;
+
+/// The whole page; `record` is the new side.
+pub(in crate::package) fn comparison(
+    record: &Record,
+    markdown: &str,
+    drawings: &[Figure],
+) -> String {
+    let body = body::Body::new(markdown, drawings);
+    let project = &record.project;
+    let title = format!("{} – {}: changes", project.number, project.title);
+    let mut out = opening(&title, &format!("@page {{ size: {}; }}\n", record.model.package.paper));
+    out.reserve(body.html.len() + STYLE.len());
+    out += &format!(
+        "<header class=\"head\"><span>{}</span> <span>{}</span></header>\n<main>\n",
+        escaped(&project.number),
+        escaped(&project.title),
+    );
+    out += &body.html;
+    out += "</main>\n</body>\n</html>\n";
+    out
+}
