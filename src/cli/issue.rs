@@ -20,7 +20,7 @@ pub(super) fn run(arguments: &Arguments) -> Status {
         anstream::eprintln!("the self-check is out of tolerance; nothing was written");
         return Status::CouldNot;
     }
-    let package = match package(&solved.record, &sources) {
+    let package = match package(&solved.record, &sources, None) {
         Ok(package) => package,
         Err(problems) => return wrong(&problems, &folder, Some(&sources)),
     };

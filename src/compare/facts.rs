@@ -316,8 +316,13 @@ fn load(case: &str, of: &LoadRecord, printer: &Printer) -> Option<Item> {
         .words("place", words.place, (of.from, of.to, &of.at, of.every, of.span))
         .words("direction", words.direction, (&of.direction, &of.per))
         .maybe("source", of.source.as_ref());
-    let form = of.form.replace('_', " ");
-    Some(facts.item(ItemKind::Load, &format!("{case} on {}, {form}", of.on())))
+    Some(facts.item(ItemKind::Load, &load_name(case, of)))
+}
+
+/// What a load is known by; several of one form on one target share it.
+#[must_use]
+pub fn load_name(case: &str, of: &LoadRecord) -> String {
+    format!("{case} on {}, {}", of.on(), of.form.replace('_', " "))
 }
 
 fn rule(of: &RuleUseRecord, printer: &Printer) -> Item {
@@ -361,7 +366,8 @@ fn combination(of: &CombinationRecord, printer: &Printer) -> Item {
 }
 
 /// What a combination is known by: purpose, rule or title, factors.
-pub(super) fn content_name(of: &CombinationRecord) -> String {
+#[must_use]
+pub fn content_name(of: &CombinationRecord) -> String {
     format!("{} {} | {}", of.purpose, of.rule.as_ref().unwrap_or(&of.title), content(of))
 }
 

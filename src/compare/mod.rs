@@ -14,6 +14,7 @@ mod committed;
 mod facts;
 mod input;
 mod items;
+mod marks;
 mod rename;
 mod report;
 mod texts;
@@ -27,7 +28,9 @@ pub use changes::{
     SideRecord, TextChange, ValueChange, What,
 };
 pub use committed::differs;
+pub use facts::{content_name, load_name};
 pub use items::ItemKind;
+pub use marks::Marks;
 pub use report::{CheckRow, CountRow, ItemRow, RenamedRow, Report, TextRow, ValueRow};
 pub use thresholds::Thresholds;
 

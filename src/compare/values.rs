@@ -91,6 +91,29 @@ pub(super) fn members(
     out
 }
 
+/// Of members with several spans, each as a whole; the counts are those of [`members`].
+pub(super) fn wholes(old: &Record, new: &Record, thresholds: &Thresholds) -> Vec<ValueChange> {
+    let sides = Sides::new(old, new, thresholds);
+    let none = Governing::new();
+    let mut out = Vec::new();
+    for (name, after) in &new.results.members {
+        let before = old.results.members.get(name);
+        if after.spans.len() > 1 || before.is_some_and(|before| before.spans.len() > 1) {
+            let length = new.member(name).map_or(0.0, |member| member.length);
+            let place = Place { on: name, span: None, length };
+            let before = before.map_or(&none, |before| &before.governing);
+            out.extend(sides.compare(
+                &place,
+                before,
+                &after.governing,
+                &mut Count::default(),
+                kind,
+            ));
+        }
+    }
+    out
+}
+
 fn kind(effect: &str) -> Kind {
     Effect::from_name(effect).map_or(Kind::Number, Effect::kind)
 }

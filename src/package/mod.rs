@@ -7,6 +7,7 @@
 //! - The notice of responsibility and the cautions are added after rendering: no template turns them off.
 //! - The page loads nothing from elsewhere and runs no script; its content security policy says so.
 
+mod against;
 mod anchor;
 mod cautions;
 mod comparison;
@@ -24,10 +25,12 @@ mod unclosed;
 
 use std::collections::BTreeMap;
 
+pub use against::Against;
 pub use comparison::{comparison_markdown, comparison_page};
 
+use crate::compare::{Changes, Marks};
 use crate::diagnostic::{Diagnostic, Place};
-use crate::figures::{Figure, figures, method};
+use crate::figures::{self, Figure, figures, method};
 use crate::files::Sources;
 use crate::record::Record;
 
@@ -47,17 +50,44 @@ const CHAPTERS: [(&str, bool); 10] = [
     ("self-check.md", true),
     ("deferred.md", true),
 ];
+/// What changed, in a package that is held against an earlier revision.
+const CHANGES: &str = "changes.md";
+/// Stands before the mark of the revision in rows that changed.
+const MARK: char = '▲';
 /// The last chapter stands apart: nothing is added behind it.
 const APPENDIX: &str = "appendix.md";
 
-/// Builds the package: package.md, figures/*.svg, package.html, record.json.
+/// A comparison with its drawings.
+struct Comparison {
+    changes: Changes,
+    marks: Marks,
+    figures: Vec<Figure>,
+}
+
+impl Comparison {
+    fn new(against: &Against, record: &Record, sources: &Sources) -> Self {
+        let changes = against.changes(record, sources);
+        let marks = Marks::new(against.record(), record, &changes);
+        let figures = figures::comparison(against.record(), record, &changes);
+        Self { changes, marks, figures }
+    }
+}
+
+/// Builds the package: package.md, figures/*.svg, package.html, record.json; held against an earlier
+/// revision, also marks on changed rows, a chapter of changes, and that revision's files in `against/`.
 ///
 /// # Errors
 /// Template errors with file and line.
-pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagnostic>> {
+pub fn package(
+    record: &Record,
+    sources: &Sources,
+    against: Option<&Against>,
+) -> Result<Package, Vec<Diagnostic>> {
+    let comparison = against.map(|against| Comparison::new(against, record, sources));
     let mut drawings = vec![method()];
     drawings.extend(figures(record));
-    let markdown = chapters(record, sources, &drawings)?;
+    drawings.extend(comparison.iter().flat_map(|comparison| comparison.figures.clone()));
+    let markdown = chapters(record, sources, &drawings, comparison.as_ref())?;
     let (page, missing) = html::page(record, &markdown, &drawings);
     if !missing.is_empty() {
         let problem = |id: &String| {
@@ -69,7 +99,7 @@ pub fn package(record: &Record, sources: &Sources) -> Result<Package, Vec<Diagno
         };
         return Err(missing.iter().map(problem).collect());
     }
-    let mut package = Package::new();
+    let mut package = against.map(Against::files).unwrap_or_default();
     package.insert("package.md".to_owned(), markdown.into_bytes());
     package.insert("package.html".to_owned(), page.into_bytes());
     package.insert("record.json".to_owned(), record.to_json().into_bytes());
@@ -94,9 +124,11 @@ fn chapters(
     record: &Record,
     sources: &Sources,
     drawings: &[Figure],
+    comparison: Option<&Comparison>,
 ) -> Result<String, Vec<Diagnostic>> {
-    let context = context::context(record, sources, drawings);
-    let renderer = templates::Renderer::new(record, sources, &context);
+    let context = context::context(record, sources, drawings, comparison);
+    let marks = comparison.map(|comparison| comparison.marks.clone());
+    let renderer = templates::Renderer::new(record, sources, &context, marks);
     let ids = drawings.iter().map(|figure| figure.id.as_str());
     let mut targets = links::Targets::new(record, ids);
     let names: Vec<&str> = CHAPTERS
@@ -133,6 +165,9 @@ fn chapters(
         for narrative in record.narrative.iter().filter(|narrative| narrative.after == name) {
             add(&mut out, &narrative.file, &narrative.file, true);
         }
+    }
+    if comparison.is_some() {
+        add(&mut out, "changes", CHANGES, true);
     }
     add(&mut out, "appendix", APPENDIX, true);
     if problems.is_empty() { Ok(targets.resolved(&out)) } else { Err(problems) }

@@ -9,14 +9,14 @@ use std::ops::Range;
 use std::sync::Arc;
 
 use minijinja::syntax::SyntaxConfig;
-use minijinja::value::{Kwargs, Serde, ValueKind};
+use minijinja::value::{Kwargs, Rest, Serde, ValueKind};
 use minijinja::{
     AutoEscape, Environment, Error, ErrorKind, State, UndefinedBehavior, Value, context,
 };
 
 use super::context::{Context, FigureRef};
-use super::{look_up, markdown, narrative};
-use crate::compare::Report;
+use super::{MARK, look_up, markdown, narrative};
+use crate::compare::{Marks, Report};
 use crate::diagnostic::{Diagnostic, Place};
 use crate::figures::Figure;
 use crate::files::Sources;
@@ -100,7 +100,13 @@ pub(super) struct Renderer<'r> {
 }
 
 impl<'r> Renderer<'r> {
-    pub(super) fn new(record: &Record, sources: &Sources, context: &Context<'_>) -> Self {
+    /// `marks` says which rows changed since the revision that the package is held against.
+    pub(super) fn new(
+        record: &Record,
+        sources: &Sources,
+        context: &Context<'_>,
+        marks: Option<Marks>,
+    ) -> Self {
         let own: BTreeMap<String, String> = sources
             .files
             .keys()
@@ -122,6 +128,7 @@ impl<'r> Renderer<'r> {
             .set_loader(move |name| Ok(templates.get(name).cloned().or_else(|| built_in(name))));
         add_printing(&mut environment, record.model.units.printer());
         look_up::add(&mut environment, record, &context.figure_captions());
+        add_marks(&mut environment, record, marks);
         let blocks: Vec<Value> = blocks.iter().map(|block| Value::from(Serde(block))).collect();
         environment.add_function("block", move |state: &State<'_, '_>, number: usize| {
             let block = blocks.get(number).ok_or_else(|| no_block(number))?;
@@ -210,6 +217,18 @@ fn format(
         }
         _ => write!(out, "{value}").map_err(Error::from),
     }
+}
+
+/// `changed('section', name)`: the mark of the present revision where that changed, else nothing.
+fn add_marks(environment: &mut Environment<'_>, record: &Record, marks: Option<Marks>) {
+    let revision = record.project.revisions.last().map_or("", |revision| &revision.mark);
+    let mark = format!("{MARK}{}\u{a0}", markdown::escaped(revision));
+    environment.add_function("changed", move |words: Rest<Value>| {
+        let key: Vec<String> = words.iter().map(Value::to_string).collect();
+        let text =
+            if marks.as_ref().is_some_and(|marks| marks.has(&key)) { mark.as_str() } else { "" };
+        Value::from_safe_string(text.to_owned())
+    });
 }
 
 fn add_printing(environment: &mut Environment<'_>, printer: Printer) {

@@ -3,6 +3,7 @@
 use serde::Serialize;
 
 use super::{FigureRef, Quantity};
+use crate::compare::{content_name, load_name};
 use crate::figures::Figure;
 use crate::quantity::Kind;
 use crate::record::{CombinationRecord, LoadWords, Record, RuleUseRecord, components};
@@ -60,6 +61,8 @@ pub(super) struct CaseView<'r> {
 /// A load in words.
 #[derive(Serialize)]
 struct LoadRow<'r> {
+    /// What a comparison knows it by.
+    name: String,
     on: &'r str,
     #[serde(flatten)]
     words: LoadWords,
@@ -90,6 +93,7 @@ pub(super) fn cases<'r>(record: &'r Record, drawings: &'r [Figure]) -> Vec<CaseV
                 .loads
                 .iter()
                 .map(|load| LoadRow {
+                    name: load_name(name, load),
                     on: load.on(),
                     words: load.words(&printer),
                     source: load.source.as_deref(),
@@ -232,6 +236,8 @@ struct FactorRow<'r> {
 #[derive(Serialize)]
 struct CombinationRow<'r> {
     number: &'r str,
+    /// What a comparison knows it by.
+    content: String,
     title: &'r str,
     expression: String,
     clause: Option<&'r str>,
@@ -289,6 +295,7 @@ fn combination_row(combination: &CombinationRecord) -> CombinationRow<'_> {
     }
     CombinationRow {
         number: &combination.number,
+        content: content_name(combination),
         title: &combination.title,
         expression,
         clause: combination.clause.as_deref(),

@@ -15,6 +15,7 @@
 //! | `checks`, `checks_method` | checks by id: the worst place in full, all others in a line each |
 //! | `checks_summary`, `checks_deferred`, `cautions` | the worst check of each member; what is deferred; cautions of sheets |
 //! | `figures`, `method_figure` | every drawing with its caption |
+//! | `changes`, `changes_figures` | what changed since an earlier revision, where the package is held against one |
 //! | `registers`, `self_check`, `sources` | open items, checks of the run, the project file as read |
 //!
 //! Every number is a [`Quantity`]; templates print it with the filters `quantity` and `number`.
@@ -26,6 +27,8 @@ mod results;
 
 use serde::Serialize;
 
+use super::Comparison;
+use crate::compare::Report;
 use crate::figures::Figure;
 use crate::files::Sources;
 use crate::quantity::Kind;
@@ -72,6 +75,8 @@ pub(super) struct Context<'r> {
     checks_summary: Vec<checks::SummaryRow<'r>>,
     checks_deferred: Vec<checks::DeferredCheck<'r>>,
     cautions: Vec<checks::Caution<'r>>,
+    changes: Option<Report>,
+    changes_figures: Vec<FigureRef<'r>>,
     registers: &'r Registers,
     self_check: results::SelfCheckView<'r>,
     method_figure: FigureRef<'r>,
@@ -116,6 +121,7 @@ pub(super) fn context<'r>(
     record: &'r Record,
     sources: &'r Sources,
     drawings: &'r [Figure],
+    changes: Option<&'r Comparison>,
 ) -> Context<'r> {
     static NO_REVISION: RevisionRecord = RevisionRecord {
         mark: String::new(),
@@ -149,6 +155,10 @@ pub(super) fn context<'r>(
         checks_summary: checks::summary(record),
         checks_deferred: checks::deferred(record),
         cautions: checks::cautions(record),
+        changes: changes.map(|of| of.changes.report(&record.model.units.printer())),
+        changes_figures: changes
+            .map(|of| of.figures.iter().map(FigureRef::from).collect())
+            .unwrap_or_default(),
         registers: &record.registers,
         self_check: results::self_check(record),
         method_figure: FigureRef::from(&drawings[0]),

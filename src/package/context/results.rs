@@ -201,6 +201,8 @@ struct GoverningReactions<'r> {
 struct ActionRow<'r> {
     node: &'r str,
     what: String,
+    /// The reaction that this is turned round.
+    reaction: String,
     combination: String,
     values: Vec<Quantity>,
 }
@@ -267,11 +269,15 @@ pub(super) fn reactions(record: &Record) -> Reactions<'_> {
                             with: quantities(&extreme.with, 1.0),
                         });
                     }
-                    for (which, extreme) in [("greatest", &extremes.min), ("least", &extremes.max)]
-                    {
+                    let turned = [
+                        ("greatest", "least", &extremes.min),
+                        ("least", "greatest", &extremes.max),
+                    ];
+                    for (which, reaction, extreme) in turned {
                         foundation.push(ActionRow {
                             node,
                             what: format!("{which} {component}"),
+                            reaction: format!("{reaction} {component}"),
                             combination: record.in_short(&extreme.state, &extreme.loaded),
                             values: quantities(&extreme.with, -1.0),
                         });

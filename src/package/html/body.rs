@@ -17,6 +17,7 @@ use super::notes::Notes;
 use super::symbols::symbols;
 use super::table::Table;
 use crate::figures::Figure;
+use crate::package::MARK;
 use crate::package::anchor::anchor;
 use crate::package::math::Mathematics;
 use crate::package::number::TABLE;
@@ -123,7 +124,11 @@ impl<'d> Body<'d> {
             Event::End(tag) => self.end(tag),
             Event::Text(text) => {
                 self.plain.push_str(&text);
-                self.html += &if self.in_code { escaped(&text) } else { symbols(&text) };
+                if self.in_code {
+                    self.html += &escaped(&text);
+                } else {
+                    self.text(&text);
+                }
             }
             Event::Code(code) => {
                 self.plain.push_str(&code);
@@ -140,6 +145,18 @@ impl<'d> Body<'d> {
             Event::FootnoteReference(_) => self.reference(),
             // No HTML but ours; tasks are not switched on.
             Event::Html(_) | Event::InlineHtml(_) | Event::TaskListMarker(_) => {}
+        }
+    }
+
+    /// Running text; the mark of a changed row goes into the margin.
+    fn text(&mut self, text: &str) {
+        let row_head = self.table.as_ref().is_some_and(Table::heads_row);
+        match text.split_once('\u{a0}').filter(|(mark, _)| row_head && mark.starts_with(MARK)) {
+            Some((mark, rest)) => {
+                let _ = write!(self.html, "<span class=\"changed\">{} </span>", escaped(mark));
+                self.html += &symbols(rest);
+            }
+            None => self.html += &symbols(text),
         }
     }
 

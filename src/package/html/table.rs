@@ -49,6 +49,11 @@ impl Table {
         }
     }
 
+    /// The present cell is the first of a row of the body.
+    pub(super) const fn heads_row(&self) -> bool {
+        !self.in_head && self.column == 0
+    }
+
     pub(super) fn cell_end(&mut self) -> &'static str {
         let heads = self.in_head || self.column == 0;
         self.column += 1;

@@ -1,5 +1,6 @@
 //! Files that the program reads and writes: project files, drawings and packages.
 
+mod against;
 mod demos;
 mod figures;
 mod package;

@@ -34,7 +34,7 @@ combinations:
 
 fn issued(sources: &Sources) -> Result<Package, Vec<Diagnostic>> {
     let solved = spanfolio::solve(sources)?;
-    package(&solved.record, sources)
+    package(&solved.record, sources, None)
 }
 
 fn with_template(name: &str, text: &str) -> Sources {

@@ -35,7 +35,7 @@ combinations:
 
 fn pages(sources: &Sources) -> Result<String, Vec<Diagnostic>> {
     let solved = spanfolio::solve(sources)?;
-    let mut package = package(&solved.record, sources)?;
+    let mut package = package(&solved.record, sources, None)?;
     let page = package.remove("package.html").expect("a page");
     Ok(String::from_utf8(page).expect("UTF-8"))
 }
