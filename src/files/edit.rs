@@ -6,7 +6,7 @@ use std::ops::Range;
 use std::path::Path;
 
 use super::Sources;
-use super::read::{LARGEST_PROJECT, PROJECT, as_text};
+use super::gather::{LARGEST_PROJECT, PROJECT, as_text};
 use super::write::unwritable;
 use crate::diagnostic::Diagnostic;
 

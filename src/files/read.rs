@@ -4,21 +4,12 @@ use std::fs::{self, File};
 use std::io::Read;
 use std::path::{Path, PathBuf};
 
-use super::{Sources, reason};
+use super::gather::{
+    DEEPEST, FOLDERS, Gathered, LARGEST_FILE, LARGEST_PROJECT, PROJECT, is_hidden, text, too_deep,
+    too_large,
+};
+use super::{Sources, gather, reason};
 use crate::diagnostic::Diagnostic;
-
-/// Bytes in `project.yaml`.
-pub const LARGEST_PROJECT: u64 = 8 << 20;
-/// Bytes in any other file.
-pub const LARGEST_FILE: u64 = 1 << 20;
-/// Files of a project, `project.yaml` included.
-pub const MOST_FILES: usize = 500;
-/// Folders inside each other below the project's own.
-const DEEPEST: usize = 8;
-
-pub(super) const PROJECT: &str = "project.yaml";
-/// Folders read whole, apart from files whose name begins with a point.
-const FOLDERS: [&str; 3] = ["checks", "narrative", "templates"];
 
 /// The folder of a project that is given as its folder or as its `project.yaml`.
 #[must_use]
@@ -36,8 +27,12 @@ pub fn folder(path: &Path) -> PathBuf {
 /// # Errors
 /// Everything that cannot be read: missing, too large, outside the folder, not text.
 pub fn read(path: &Path) -> Result<Sources, Vec<Diagnostic>> {
-    let folder = folder(path);
-    let mut reader = Reader::new(&folder).map_err(|problem| vec![problem])?;
+    gather(&folder(path)).map_err(|problem| vec![problem])?.end()
+}
+
+/// Reads what can be read of the project in `folder`.
+pub(super) fn gather(folder: &Path) -> Result<Gathered, Diagnostic> {
+    let mut reader = Reader::new(folder)?;
     reader.file(&folder.join(PROJECT), PROJECT, LARGEST_PROJECT);
     for name in FOLDERS {
         let inside = folder.join(name);
@@ -45,14 +40,13 @@ pub fn read(path: &Path) -> Result<Sources, Vec<Diagnostic>> {
             reader.folder(&inside, name, 0);
         }
     }
-    if reader.problems.is_empty() { Ok(reader.sources) } else { Err(reader.problems) }
+    Ok(reader.gathered)
 }
 
 struct Reader {
     /// The project's folder without links; nothing outside it is opened.
     jail: PathBuf,
-    sources: Sources,
-    problems: Vec<Diagnostic>,
+    gathered: Gathered,
 }
 
 impl Reader {
@@ -72,50 +66,36 @@ impl Reader {
             return Err(Diagnostic::error("missing-project", message).hint(start()));
         }
         let jail = folder.canonicalize().map_err(|e| unreadable(folder, &reason(&e)))?;
-        Ok(Self { jail, sources: Sources::default(), problems: Vec::new() })
+        Ok(Self { jail, gathered: Gathered::default() })
     }
 
     /// Reads one file to the name it has in [`Sources`].
     fn file(&mut self, path: &Path, name: &str, limit: u64) {
-        if self.sources.files.len() >= MOST_FILES {
-            let message = format!("a project has at most {MOST_FILES} files, `{name}` is one more");
-            // Once is enough: the walk goes on over what may be a large folder.
-            if self.problems.iter().all(|problem| problem.code != "too-many-files") {
-                self.problems.push(Diagnostic::error("too-many-files", message));
-            }
-            return;
-        }
-        match self.content(path, limit) {
-            Ok(text) => {
-                self.sources.files.insert(name.to_owned(), text.into_bytes());
-            }
-            Err(problem) => self.problems.push(problem),
+        if self.gathered.has_room_for(name) {
+            self.gathered.add(name, self.content(path, limit));
         }
     }
 
     fn folder(&mut self, path: &Path, name: &str, depth: usize) {
         if let Err(problem) = self.inside(path) {
-            self.problems.push(problem);
-            return;
+            return self.problem(problem);
         }
         if depth == DEEPEST {
-            let message = format!("`{}` is more than {DEEPEST} folders deep", path.display());
-            self.problems.push(Diagnostic::error("too-deep", message));
-            return;
+            return self.problem(too_deep(&path.display().to_string()));
         }
         let entries = fs::read_dir(path).and_then(Iterator::collect::<Result<Vec<_>, _>>);
         let mut entries = match entries {
             Ok(entries) => entries,
-            Err(error) => return self.problems.push(unreadable(path, &reason(&error))),
+            Err(error) => return self.problem(unreadable(path, &reason(&error))),
         };
         entries.sort_by_key(fs::DirEntry::file_name);
         for entry in entries {
             let path = entry.path();
             let Some(part) = entry.file_name().to_str().map(str::to_owned) else {
-                self.problems.push(unreadable(&path, "its name is not UTF-8"));
+                self.problem(unreadable(&path, "its name is not UTF-8"));
                 continue;
             };
-            if part.starts_with('.') {
+            if is_hidden(&part) {
                 continue;
             }
             let name = format!("{name}/{part}");
@@ -125,6 +105,10 @@ impl Reader {
                 self.file(&path, &name, LARGEST_FILE);
             }
         }
+    }
+
+    fn problem(&mut self, problem: Diagnostic) {
+        self.gathered.problems.push(problem);
     }
 
     /// Refuses what leads out of the project's folder.
@@ -147,32 +131,16 @@ impl Reader {
         File::open(&real)
             .and_then(|file| file.take(limit + 1).read_to_end(&mut bytes))
             .map_err(|error| unreadable(path, &reason(&error)))?;
+        let shown = path.display().to_string();
         if bytes.len() as u64 > limit {
-            let message = format!("`{}` is larger than {} MiB", path.display(), limit >> 20);
-            return Err(Diagnostic::error("too-large", message));
+            return Err(too_large(&shown, limit));
         }
-        let text = String::from_utf8(bytes).map_err(|error| not_text(path, &error))?;
-        Ok(as_text(&text))
+        text(bytes, &shown)
     }
 }
 
-/// The text of a file: without byte-order mark, line ends LF.
-pub(super) fn as_text(raw: &str) -> String {
-    raw.strip_prefix('\u{feff}').unwrap_or(raw).replace("\r\n", "\n")
-}
-
 fn unreadable(path: &Path, reason: &str) -> Diagnostic {
-    Diagnostic::error("cannot-read", format!("cannot read `{}`: {reason}", path.display()))
-}
-
-/// Names line and column of the first byte that is not UTF-8.
-fn not_text(path: &Path, error: &std::string::FromUtf8Error) -> Diagnostic {
-    let good = &error.as_bytes()[..error.utf8_error().valid_up_to()];
-    let good = String::from_utf8_lossy(good);
-    let line = good.matches('\n').count() + 1;
-    let column = good.rsplit('\n').next().unwrap_or_default().chars().count() + 1;
-    let place = format!("`{}` is not UTF-8 at line {line}, column {column}", path.display());
-    Diagnostic::error("not-text", place).hint("save the file as UTF-8 text".to_owned())
+    gather::unreadable(&path.display().to_string(), reason)
 }
 
 /// Bytes in a record.

@@ -2,7 +2,7 @@
 
 /// The name nearest to a word, if it is near enough to be meant: at most a third of the letters differ.
 #[must_use]
-pub(super) fn nearest<'n>(word: &str, names: impl Iterator<Item = &'n str>) -> Option<&'n str> {
+pub fn nearest<'n>(word: &str, names: impl Iterator<Item = &'n str>) -> Option<&'n str> {
     let word: Vec<char> = word.to_lowercase().chars().collect();
     let most = (word.len() / 3).max(1);
     if word.len() > 64 {
