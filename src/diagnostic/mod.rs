@@ -2,6 +2,8 @@
 //!
 //! Nothing here prints; `cli` renders diagnostics once, at the edge.
 
+pub mod near;
+
 use std::ops::Range;
 
 /// How serious a problem is.

@@ -7,12 +7,16 @@ use crate::diagnostic::Diagnostic;
 pub const LARGEST_PROJECT: u64 = 8 << 20;
 /// Bytes in any other file.
 pub const LARGEST_FILE: u64 = 1 << 20;
+/// Bytes in a package's record.
+pub(super) const LARGEST_RECORD: u64 = 256 << 20;
 /// Files of a project, `project.yaml` included.
 pub const MOST_FILES: usize = 500;
 /// Folders inside each other below the project's own.
 pub(super) const DEEPEST: usize = 8;
 
 pub(super) const PROJECT: &str = "project.yaml";
+/// The record inside a package.
+pub(super) const RECORD: &str = "record.json";
 /// Folders read whole, apart from what [`is_hidden`] says.
 pub(super) const FOLDERS: [&str; 3] = ["checks", "narrative", "templates"];
 
@@ -79,7 +83,7 @@ pub(super) fn unreadable(shown: &str, reason: &str) -> Diagnostic {
 }
 
 /// Names line and column of the first byte that is not UTF-8.
-fn not_text(shown: &str, error: &std::string::FromUtf8Error) -> Diagnostic {
+pub(super) fn not_text(shown: &str, error: &std::string::FromUtf8Error) -> Diagnostic {
     let good = &error.as_bytes()[..error.utf8_error().valid_up_to()];
     let good = String::from_utf8_lossy(good);
     let line = good.matches('\n').count() + 1;

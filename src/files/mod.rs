@@ -1,4 +1,4 @@
-//! The only module that reads or writes the disk.
+//! The only module that reads or writes the disk or asks git.
 //!
 //! Invariants
 //! - A project is read once, whole, before anything is computed; text has LF line ends and no byte-order
@@ -8,6 +8,8 @@
 //!   file or a report likewise by one.
 
 mod edit;
+mod gather;
+mod git;
 mod put;
 mod read;
 mod write;
@@ -16,8 +18,10 @@ use std::collections::BTreeMap;
 use std::io;
 
 pub use edit::edit;
+pub use gather::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES};
+pub use git::{AtRevision, read_at, uncommitted};
 pub use put::put;
-pub use read::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES, committed_record, folder, read, record};
+pub use read::{committed_record, folder, read, record};
 pub use write::{CONTENTS, PACKAGE, create, heal, write};
 
 use sha2::{Digest, Sha256};

@@ -5,10 +5,10 @@ use std::io::Read;
 use std::path::{Path, PathBuf};
 
 use super::gather::{
-    DEEPEST, FOLDERS, Gathered, LARGEST_FILE, LARGEST_PROJECT, PROJECT, is_hidden, text, too_deep,
-    too_large,
+    DEEPEST, FOLDERS, Gathered, LARGEST_FILE, LARGEST_PROJECT, LARGEST_RECORD, PROJECT, RECORD,
+    is_hidden, not_text, text, too_deep, too_large,
 };
-use super::{Sources, gather, reason};
+use super::{PACKAGE, Sources, gather, reason};
 use crate::diagnostic::Diagnostic;
 
 /// The folder of a project that is given as its folder or as its `project.yaml`.
@@ -139,13 +139,6 @@ impl Reader {
     }
 }
 
-fn unreadable(path: &Path, reason: &str) -> Diagnostic {
-    gather::unreadable(&path.display().to_string(), reason)
-}
-
-/// Bytes in a record.
-const LARGEST_RECORD: u64 = 256 << 20;
-
 /// Reads a record file.
 ///
 /// # Errors
@@ -156,15 +149,18 @@ pub fn record(path: &Path) -> Result<String, Diagnostic> {
         .and_then(|file| file.take(LARGEST_RECORD + 1).read_to_end(&mut bytes))
         .map_err(|error| unreadable(path, &reason(&error)))?;
     if bytes.len() as u64 > LARGEST_RECORD {
-        let message = format!("`{}` is larger than {} MiB", path.display(), LARGEST_RECORD >> 20);
-        return Err(Diagnostic::error("too-large", message));
+        return Err(too_large(&path.display().to_string(), LARGEST_RECORD));
     }
-    String::from_utf8(bytes).map_err(|error| not_text(path, &error))
+    String::from_utf8(bytes).map_err(|error| not_text(&path.display().to_string(), &error))
 }
 
 /// The record of the package that a project folder holds, if there is one.
 #[must_use]
 pub fn committed_record(folder: &Path) -> Option<Vec<u8>> {
-    let path = folder.join(super::PACKAGE).join("record.json");
+    let path = folder.join(PACKAGE).join(RECORD);
     record(&path).ok().map(String::into_bytes)
+}
+
+fn unreadable(path: &Path, reason: &str) -> Diagnostic {
+    gather::unreadable(&path.display().to_string(), reason)
 }

@@ -11,7 +11,6 @@ mod forms;
 pub mod keys;
 mod lines;
 pub mod narrative;
-mod near;
 mod resolve;
 mod schema;
 mod shape;
@@ -22,7 +21,7 @@ pub mod written;
 pub use edit::{Edit, section, section_edit, with_section};
 pub use lines::Lines;
 
-use crate::diagnostic::Diagnostic;
+use crate::diagnostic::{Diagnostic, near};
 use crate::files::Sources;
 use crate::model::Model;
 

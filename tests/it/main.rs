@@ -4,4 +4,5 @@ mod commands;
 mod documents;
 mod laws;
 mod published;
+mod repository;
 mod support;

@@ -16,10 +16,10 @@ use repository::Place;
 use tree::{Contents, Entry, Kind};
 
 use super::gather::{
-    DEEPEST, FOLDERS, Gathered, LARGEST_FILE, LARGEST_PROJECT, LARGEST_RECORD, PROJECT, is_hidden,
-    text, too_deep, too_large, unreadable,
+    DEEPEST, FOLDERS, Gathered, LARGEST_FILE, LARGEST_PROJECT, LARGEST_RECORD, PROJECT, RECORD,
+    is_hidden, text, too_deep, too_large, unreadable,
 };
-use super::{PACKAGE, RECORD, Sources, read};
+use super::{PACKAGE, Sources, read};
 use crate::diagnostic::Diagnostic;
 
 /// Projects named when there is none where it was looked for.
@@ -68,7 +68,8 @@ pub fn uncommitted(folder: &Path) -> Option<Vec<String>> {
     // What a link leads to is not known at a revision.
     let is_linked = |name: &str| {
         there.links.iter().any(|link| {
-            name.strip_prefix(link.as_str()).is_some_and(|rest| rest.is_empty() || rest.starts_with('/'))
+            name.strip_prefix(link.as_str())
+                .is_some_and(|rest| rest.is_empty() || rest.starts_with('/'))
                 && folder.join(link).is_symlink()
         })
     };
@@ -166,7 +167,7 @@ fn content(
 
 /// The folder of a file's path that is one too many.
 fn too_deep_folder(name: &str) -> Option<&str> {
-    let (end, _) = name.match_indices('/').nth(DEEPEST + 1)?;
+    let (end, _) = name.match_indices('/').nth(DEEPEST)?;
     Some(&name[..end])
 }
 

@@ -89,7 +89,9 @@ impl Answer {
 pub(super) fn cannot_run(error: &std::io::Error) -> Diagnostic {
     match error.kind() {
         ErrorKind::NotFound => Diagnostic::error("no-git", "there is no program `git` on the PATH")
-            .hint("install git to read revisions; folders and records are read without it".to_owned()),
+            .hint(
+                "install git to read revisions; folders and records are read without it".to_owned(),
+            ),
         _ => Diagnostic::error("no-git", format!("cannot run `git`: {}", reason(error))),
     }
 }

@@ -57,7 +57,8 @@ impl Place {
             return Err(self.several_names(revision, name));
         }
         if answer.err.contains(" only goes back to ") {
-            let message = format!("what git remembers of branches does not reach back to `{revision}`");
+            let message =
+                format!("what git remembers of branches does not reach back to `{revision}`");
             return Err(Diagnostic::error("unknown-revision", message)
                 .hint("name a commit, a branch or a tag".to_owned()));
         }
@@ -192,9 +193,8 @@ fn no_repository(answer: &Answer, base: &Path, shown: &str) -> Diagnostic {
         let path = base.canonicalize().unwrap_or_else(|_| base.to_owned());
         let root = quoted(&answer.err, "repository at '", "'").map(str::to_owned);
         let root = root.unwrap_or_else(|| path.display().to_string());
-        return Diagnostic::error("foreign-repository", message).hint(format!(
-            "if you trust it: `git config --global --add safe.directory '{root}'`"
-        ));
+        return Diagnostic::error("foreign-repository", message)
+            .hint(format!("if you trust it: `git config --global --add safe.directory '{root}'`"));
     }
     if !answer.err.contains("not a git repository") {
         return answer.failed("rev-parse");
@@ -245,6 +245,8 @@ fn fetch(revision: &str, remotes: &str) -> Option<String> {
     let (remote, branch) = name_of(revision).split_once('/')?;
     let known = remotes.lines().any(|line| line == remote);
     known.then(|| {
-        format!("if the remote has it: `git fetch {remote} {branch}:refs/remotes/{remote}/{branch}`")
+        format!(
+            "if the remote has it: `git fetch {remote} {branch}:refs/remotes/{remote}/{branch}`"
+        )
     })
 }

@@ -78,7 +78,8 @@ impl Contents {
     /// that neither side waits with a full pipe.
     pub(super) fn get(&mut self, id: &str) -> Result<Vec<u8>, String> {
         self.exchange(id).map_err(|error| reason(&error))?.ok_or_else(|| {
-            "this clone does not have it; `git fetch --refetch --no-filter` brings all files".to_owned()
+            "this clone does not have it; `git fetch --refetch --no-filter` brings all files"
+                .to_owned()
         })
     }
 
