@@ -1,6 +1,6 @@
 //! `spanfolio issue`
 
-use super::{Project, Status, render, wrong};
+use super::{Project, Status, render, side, wrong};
 use crate::files;
 use crate::package::package;
 
@@ -8,6 +8,9 @@ use crate::package::package;
 pub(super) struct Arguments {
     #[command(flatten)]
     project: Project,
+    /// Mark what changed since a git revision, and add a chapter that lists it
+    #[arg(long, value_name = "REVISION")]
+    against: Option<String>,
 }
 
 pub(super) fn run(arguments: &Arguments) -> Status {
@@ -20,7 +23,13 @@ pub(super) fn run(arguments: &Arguments) -> Status {
         anstream::eprintln!("the self-check is out of tolerance; nothing was written");
         return Status::CouldNot;
     }
-    let package = match package(&solved.record, &sources, None) {
+    let against = match arguments.against.as_ref().map(|revision| side::against(&folder, revision))
+    {
+        None => None,
+        Some(Ok(against)) => Some(against),
+        Some(Err(status)) => return status,
+    };
+    let package = match package(&solved.record, &sources, against.as_ref()) {
         Ok(package) => package,
         Err(problems) => return wrong(&problems, &folder, Some(&sources)),
     };

@@ -6,6 +6,7 @@
 //! - Problems are rendered here and nowhere else.
 
 pub mod catalogue;
+mod compare;
 mod issue;
 mod point;
 mod progress;
@@ -14,6 +15,7 @@ mod rules;
 mod schema;
 mod sheets;
 mod shell;
+mod side;
 mod solve;
 mod start;
 mod table;
@@ -49,7 +51,7 @@ pub enum Status {
     long_about = "Turns one YAML project file into a calculation package for beams and frames that a checker can review.\n\n\
                   A package supports and does not replace the judgement of a licensed engineer; local codes and national annexes govern.",
     after_help = "Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); \
-                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred` (`solve`), or no section satisfies (`try`).",
+                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred` (`solve`), or no section satisfies (`try`), or an outcome worsened (`compare --exit-status`).",
     propagate_version = true
 )]
 pub struct Arguments {
@@ -68,6 +70,8 @@ enum Command {
     Solve(solve::Arguments),
     /// Write the calculation package into the project's `package` folder
     Issue(issue::Arguments),
+    /// Say what changed between two revisions of a project
+    Compare(compare::Arguments),
     /// Try the sections of a family in place of one section, lightest first
     Try(trial::Arguments),
     /// Find sections, materials, check sheets and combination rules, print their properties and source
@@ -89,6 +93,7 @@ pub fn run(arguments: Arguments) -> Status {
         Command::Start(arguments) => start::run(&arguments),
         Command::Solve(arguments) => solve::run(&arguments),
         Command::Issue(arguments) => issue::run(&arguments),
+        Command::Compare(arguments) => compare::run(&arguments),
         Command::Try(arguments) => trial::run(&arguments),
         Command::Catalogue(arguments) => match catalogue::run(&arguments) {
             Ok(text) => {

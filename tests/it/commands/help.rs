@@ -21,6 +21,7 @@ fn help_lists_the_commands() {
       start        Set up a new project folder from a small working example
       solve        Solve a project and print what governs; writes nothing
       issue        Write the calculation package into the project's `package` folder
+      compare      Say what changed between two revisions of a project
       try          Try the sections of a family in place of one section, lightest first
       catalogue    Find sections, materials, check sheets and combination rules, print their properties
                    and source
@@ -41,7 +42,8 @@ fn help_lists_the_commands() {
 
     Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); 2
     the command line or the project is wrong; 3 a check is not satisfied, or deferred without being
-    named in `basis.deferred` (`solve`), or no section satisfies (`try`).
+    named in `basis.deferred` (`solve`), or no section satisfies (`try`), or an outcome worsened
+    (`compare --exit-status`).
     ");
 }
 
@@ -80,9 +82,10 @@ fn help_of_issue() {
       <PROJECT>  Folder of the project, or its `project.yaml`
 
     Options:
-          --jobs <N>  Threads to use at most; the result does not depend on it
-      -h, --help      Print help
-      -V, --version   Print version
+          --against <REVISION>  Mark what changed since a git revision, and add a chapter that lists it
+          --jobs <N>            Threads to use at most; the result does not depend on it
+      -h, --help                Print help
+      -V, --version             Print version
     ");
 }
 

@@ -1,7 +1,9 @@
 //! The built program, run the way an engineer runs it.
 
+mod against;
 mod catalogue;
 mod checks;
+mod compare;
 mod files;
 mod help;
 mod issue;
