@@ -26,7 +26,10 @@ pub(super) fn run(arguments: &Arguments) -> Status {
     let against = match arguments.against.as_ref().map(|revision| side::against(&folder, revision))
     {
         None => None,
-        Some(Ok(against)) => Some(against),
+        Some(Ok(against)) => {
+            render::print(against.warning(&solved.record).as_slice(), &folder, None);
+            Some(against)
+        }
         Some(Err(status)) => return status,
     };
     let package = match package(&solved.record, &sources, against.as_ref()) {

@@ -81,6 +81,20 @@ impl Against {
         &self.sources
     }
 
+    /// Says so when the project's table of revisions has no revision after the one at that commit: its marks
+    /// would name the old one.
+    #[must_use]
+    pub fn warning(&self, record: &Record) -> Option<Diagnostic> {
+        let last = |record: &Record| record.project.revisions.last().map(|last| last.mark.clone());
+        let (old, new) = (last(&self.record)?, last(record)?);
+        (old == new).then(|| {
+            let message =
+                format!("changes since revision {old} are marked as revision {new} again");
+            Diagnostic::warning("same-revision", message)
+                .hint("add the new revision to `project.revisions`".to_owned())
+        })
+    }
+
     pub(super) const fn record(&self) -> &Record {
         &self.record
     }

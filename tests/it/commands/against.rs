@@ -38,6 +38,18 @@ fn issued_again_against_nothing_the_marks_are_gone() {
 }
 
 #[test]
+fn without_a_new_revision_in_the_table_a_warning_says_so() {
+    let story = Story::issued();
+    let run = story.run(&["issue", ".", "--against", "HEAD"]);
+    assert_eq!(run.status, 0);
+    assert!(
+        run.err.contains("changes since revision A are marked as revision A again"),
+        "{}",
+        run.err
+    );
+}
+
+#[test]
 fn an_unknown_revision_leaves_the_package_as_it_was() {
     let story = Story::revised();
     let before = markdown(&story);
