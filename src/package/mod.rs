@@ -12,6 +12,7 @@ mod anchor;
 mod cautions;
 mod comparison;
 mod context;
+mod data_uri;
 mod html;
 mod links;
 mod look_up;

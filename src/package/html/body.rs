@@ -14,6 +14,7 @@ use pulldown_cmark::{CodeBlockKind, Event, HeadingLevel, LinkType, Options, Pars
 use super::escaped;
 use super::ids::{self, Ids};
 use super::notes::Notes;
+use super::sheets;
 use super::symbols::symbols;
 use super::table::Table;
 use crate::figures::Figure;
@@ -25,11 +26,13 @@ use crate::package::number::TABLE;
 /// A line of the table of contents.
 pub(super) struct Entry {
     pub(super) level: HeadingLevel,
-    /// Where its heading begins in the body.
+    /// Where its chapter or its heading begins in the body.
     at: usize,
     pub(super) id: String,
     /// HTML.
     pub(super) title: String,
+    /// The title without markup.
+    pub(super) plain: String,
 }
 
 /// The body so far and what is open in it.
@@ -40,6 +43,8 @@ pub(super) struct Body<'d> {
     ids: Ids,
     pub(super) html: String,
     pub(super) contents: Vec<Entry>,
+    /// Chapters begun so far, each a section with a printed page of its own name.
+    chapters: usize,
     /// Ids inside the page that links lead to.
     links: Vec<String>,
     /// Where the present paragraph begins, its tag left out.
@@ -78,6 +83,7 @@ impl<'d> Body<'d> {
             notes,
             html: String::with_capacity(2 * markdown.len()),
             contents: Vec::new(),
+            chapters: 0,
             links: Vec::new(),
             paragraph: None,
             inline: 0,
@@ -96,6 +102,9 @@ impl<'d> Body<'d> {
         while let Some(event) = events.next() {
             let before_table = matches!(events.peek(), Some(Event::Start(Tag::Table(_))));
             body.take(event, before_table);
+        }
+        if body.chapters > 0 {
+            body.html += "</section>\n";
         }
         body
     }
@@ -278,11 +287,28 @@ impl<'d> Body<'d> {
         let title = self.html.split_off(start);
         let notes = std::mem::take(&mut self.behind);
         let id = self.ids.heading(anchor(&self.plain));
-        let at = self.html.len();
+        let mut at = self.html.len();
+        if level == HeadingLevel::H1 {
+            at = self.chapter();
+        }
         let _ = writeln!(self.html, "<{level} id=\"{id}\">{title}{notes}</{level}>");
         if level <= HeadingLevel::H2 {
-            self.contents.push(Entry { level, at, id, title });
+            let plain = std::mem::take(&mut self.plain);
+            self.contents.push(Entry { level, at, id, title, plain });
         }
+    }
+
+    /// Ends the chapter before and begins the next; says where that begins.
+    fn chapter(&mut self) -> usize {
+        if self.chapters > 0 {
+            self.html += "</section>\n";
+        }
+        let at = self.html.len();
+        let kind = if self.chapters == 0 { "cover" } else { "chapter" };
+        let page = sheets::page_name(self.chapters);
+        let _ = writeln!(self.html, "<section class=\"{kind}\" style=\"page: {page}\">");
+        self.chapters += 1;
+        at
     }
 
     /// Outcomes get a mark of their own, so that nothing hangs on colour alone.
@@ -306,8 +332,9 @@ impl<'d> Body<'d> {
         }
         match inside {
             Some(id) => {
-                let _ = write!(self.html, "<a href=\"#{}\">", escaped(id));
-                self.link_end = "</a>".to_owned();
+                let id = escaped(id);
+                let _ = write!(self.html, "<a href=\"#{id}\">");
+                self.link_end = format!("</a>{}", sheets::number_of(&id));
             }
             None if matches!(link_type, LinkType::Autolink | LinkType::Email) => {}
             None => self.link_end = format!(" ({})", escaped(target)),
@@ -352,7 +379,7 @@ impl<'d> Body<'d> {
         // heading's id holds a point.
         let id = ids::figure(&figure.id);
         let times = self.placed.iter().filter(|other| **other == figure.id).count();
-        let mut svg = figure.svg.trim().to_owned();
+        let mut svg = without_style(figure.svg.trim());
         if times > 0 {
             for part in ["title", "desc"] {
                 let own = format!("{}-{part}", figure.id);
@@ -365,6 +392,17 @@ impl<'d> Body<'d> {
         self.block(&format!(
             "<figure{named}>\n{svg}\n<figcaption>{description}</figcaption>\n</figure>\n"
         ));
+    }
+}
+
+/// A drawing without its style, which the page has once for all drawings.
+fn without_style(svg: &str) -> String {
+    match (svg.find("<style>"), svg.find("</style>")) {
+        (Some(start), Some(end)) => {
+            let rest = svg[end + "</style>".len()..].trim_start();
+            format!("{}{rest}", &svg[..start])
+        }
+        _ => svg.to_owned(),
     }
 }
 

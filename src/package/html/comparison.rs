@@ -1,6 +1,6 @@
 //! The page of a comparison, which stands apart from any package.
 
-use super::{STYLE, body, escaped, opening};
+use super::{body, escaped, head};
 use crate::figures::Figure;
 use crate::record::Record;
 
@@ -13,8 +13,9 @@ pub(in crate::package) fn comparison(
     let body = body::Body::new(markdown, drawings);
     let project = &record.project;
     let title = format!("{} – {}: changes", project.number, project.title);
-    let mut out = opening(&title, &format!("@page {{ size: {}; }}\n", record.model.package.paper));
-    out.reserve(body.html.len() + STYLE.len());
+    let mut out =
+        head::opening(&title, &format!("@page {{ size: {}; }}\n", record.model.package.paper));
+    out.reserve(body.html.len());
     out += &format!(
         "<header class=\"head\"><span>{}</span> <span>{}</span></header>\n<main>\n",
         escaped(&project.number),

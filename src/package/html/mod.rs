@@ -1,11 +1,13 @@
 //! Markdown → one self-contained page.
 //!
-//! Here stands the frame of the page: head, contents, what is at the edge of every printed sheet.
+//! Here stands the frame of the page: cover, contents, chapters.
 
 mod body;
 mod comparison;
+mod head;
 mod ids;
 mod notes;
+mod sheets;
 mod symbols;
 mod table;
 
@@ -16,16 +18,20 @@ pub(super) use comparison::comparison;
 use crate::figures::Figure;
 use crate::record::Record;
 
-const STYLE: &str = include_str!("../../../styles/page.css");
-
 /// The whole page, and the ids that links lead to although nothing in the page has them.
 pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (String, Vec<String>) {
     let body = body::Body::new(markdown, drawings);
     let project = &record.project;
     let mark = project.revisions.last().map_or("", |revision| revision.mark.as_str());
     let title = format!("{} – {}", project.number, project.title);
-    let mut out = opening(&title, &sheet(record, mark));
+    let mut out = head::opening(&title, &sheets::rules(record, &body.contents));
     out.reserve(body.html.len());
+    // The cover comes first, then the contents.
+    let (cover, chapters) = body.html.split_at(body.contents_at());
+    let contents = &body.contents[body.contents.len().min(1)..];
+    if let Some(first) = contents.first() {
+        let _ = writeln!(out, "<a class=\"skip\" href=\"#{}\">Skip to the text</a>", first.id);
+    }
     let _ = writeln!(
         out,
         "<header class=\"head\"><span>{}</span> <span>{}</span> <span>Revision {}</span></header>",
@@ -33,64 +39,18 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (Str
         escaped(&project.title),
         escaped(mark),
     );
-    // The cover comes first, then the contents.
-    let (cover, rest) = body.html.split_at(body.contents_at());
-    let _ = write!(out, "<div class=\"cover\">\n{cover}</div>\n");
-    out += "<nav class=\"contents\" aria-label=\"Contents\">\n<h2>Contents</h2>\n<ol>\n";
-    for entry in body.contents.iter().skip(1) {
+    let _ = write!(out, "<main>\n{cover}");
+    out += "<nav class=\"contents\" aria-labelledby=\"page.contents\">\n<h2 id=\"page.contents\">Contents</h2>\n<ol>\n";
+    for body::Entry { level, id, title, .. } in contents {
         let _ = writeln!(
             out,
-            "<li class=\"level-{}\"><a href=\"#{}\">{}</a></li>",
-            entry.level as usize, entry.id, entry.title
+            "<li class=\"level-{}\"><a href=\"#{id}\">{title}</a>{}</li>",
+            *level as usize,
+            sheets::number_of(id),
         );
     }
-    out += "</ol>\n</nav>\n<main>\n";
-    out += rest;
-    out += "</main>\n</body>\n</html>\n";
+    let _ = write!(out, "</ol>\n</nav>\n{chapters}</main>\n</body>\n</html>\n");
     (out, body.missing())
-}
-
-/// The page up to its body: nothing is loaded from elsewhere, no script runs.
-fn opening(title: &str, sheet: &str) -> String {
-    format!(
-        "<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n\
-         <meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; style-src 'unsafe-inline'; img-src data:\">\n\
-         <meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n\
-         <title>{}</title>\n<style>\n{STYLE}\n{sheet}</style>\n</head>\n<body>\n",
-        escaped(title),
-    )
-}
-
-/// Sheet size and what stands at the edge of every printed sheet.
-fn sheet(record: &Record, mark: &str) -> String {
-    let project = &record.project;
-    let date = project.revisions.last().map_or("", |revision| revision.date.as_str());
-    let text = |text: &str| -> String {
-        let mut out = String::from("\"");
-        for c in text.chars() {
-            match c {
-                // A code point in hexadecimal, ended by a space: no character can leave the string.
-                '"' | '\\' | '<' | '>' | '&' => {
-                    let _ = write!(out, "\\{:x} ", u32::from(c));
-                }
-                c if c.is_control() => out.push(' '),
-                c => out.push(c),
-            }
-        }
-        out.push('"');
-        out
-    };
-    format!(
-        "@page {{ size: {}; \
-         @top-left {{ content: {}; }} \
-         @top-right {{ content: {}; }} \
-         @bottom-left {{ content: {}; }} \
-         @bottom-right {{ content: \"sheet \" counter(page) \" of \" counter(pages); }} }}\n",
-        record.model.package.paper,
-        text(&project.number),
-        text(&project.title),
-        text(&format!("Revision {mark}, {date}")),
-    )
 }
 
 /// Text for an element or an attribute.

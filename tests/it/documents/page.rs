@@ -58,7 +58,7 @@ fn chapter(summary: &str) -> String {
     let page = with(summary, None).unwrap_or_else(|problems| panic!("{problems:#?}"));
     let heading = "<h1 id=\"1-summary\">1 Summary</h1>\n";
     let start = page.find(heading).expect("the summary") + heading.len();
-    let end = page[start..].find("<h1").expect("a next chapter") + start;
+    let end = page[start..].find("</section>").expect("its end") + start;
     page[start..end].to_owned()
 }
 

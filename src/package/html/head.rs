@@ -1,0 +1,63 @@
+//! The head of a page: what it may load, its fonts and its looks.
+
+use std::fmt::Write;
+
+use super::escaped;
+use crate::package::data_uri::data_uri;
+
+const STYLES: [&str; 4] = [
+    include_str!("../../../styles/page.css"),
+    include_str!("../../../styles/drawing.css"),
+    include_str!("../../../styles/screen.css"),
+    include_str!("../../../styles/print.css"),
+];
+
+/// Fonts: family, weight, slope, WOFF2.
+const FONTS: [(&str, u16, &str, &[u8]); 4] = [
+    (
+        "Spanfolio Text",
+        400,
+        "normal",
+        include_bytes!("../../../styles/fonts/Spanfolio-Text-Regular.woff2"),
+    ),
+    (
+        "Spanfolio Text",
+        400,
+        "italic",
+        include_bytes!("../../../styles/fonts/Spanfolio-Text-Italic.woff2"),
+    ),
+    (
+        "Spanfolio Text",
+        600,
+        "normal",
+        include_bytes!("../../../styles/fonts/Spanfolio-Text-Semibold.woff2"),
+    ),
+    (
+        "Spanfolio Math",
+        400,
+        "normal",
+        include_bytes!("../../../styles/fonts/Spanfolio-Math-Regular.woff2"),
+    ),
+];
+
+/// The page up to its body: nothing is loaded from elsewhere, no script runs.
+pub(super) fn opening(title: &str, sheets: &str) -> String {
+    let title = escaped(title);
+    let mut out = format!(
+        "<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n\
+         <meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; style-src 'unsafe-inline'; img-src data:; font-src data:\">\n\
+         <meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n\
+         <meta name=\"color-scheme\" content=\"light dark\">\n\
+         <title>{title}</title>\n<style>\n",
+    );
+    for (family, weight, slope, bytes) in FONTS {
+        let _ = writeln!(
+            out,
+            "@font-face {{ font-family: \"{family}\"; font-weight: {weight}; font-style: {slope}; src: url({}) format(\"woff2\"); }}",
+            data_uri("font/woff2", bytes),
+        );
+    }
+    out.extend(STYLES);
+    let _ = write!(out, "{sheets}</style>\n</head>\n<body>\n");
+    out
+}
