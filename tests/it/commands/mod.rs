@@ -8,6 +8,7 @@ mod files;
 mod help;
 mod issue;
 mod project;
+mod revisions;
 mod rules;
 mod solve;
 mod start;
