@@ -7,6 +7,7 @@
 //! → [`package::Package`] → `files`.
 
 pub mod analysis;
+pub mod audit;
 pub mod calc;
 pub mod catalogue;
 pub mod checks;

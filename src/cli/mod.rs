@@ -5,6 +5,7 @@
 //! - Nothing here computes or decides what another caller of the library would need.
 //! - Problems are rendered here and nowhere else.
 
+mod audit;
 pub mod catalogue;
 mod compare;
 mod issue;
@@ -40,6 +41,8 @@ pub enum Status {
     /// A check is not satisfied, or deferred without being named in `basis.deferred`; of `try`: so with
     /// every section tried.
     NotSatisfied = 3,
+    /// The committed package is out of date.
+    OutOfDate = 4,
 }
 
 /// Turns one YAML project file into a calculation package for beams and frames.
@@ -51,7 +54,8 @@ pub enum Status {
     long_about = "Turns one YAML project file into a calculation package for beams and frames that a checker can review.\n\n\
                   A package supports and does not replace the judgement of a licensed engineer; local codes and national annexes govern.",
     after_help = "Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); \
-                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred` (`solve`), or no section satisfies (`try`), or an outcome worsened (`compare --exit-status`).",
+                  2 the command line or the project is wrong; 3 a check is not satisfied, or deferred without being named in `basis.deferred` (`solve`, `audit`), or no section satisfies (`try`), or an outcome worsened (`compare --exit-status`); \
+                  4 a committed package is out of date (`audit`).",
     propagate_version = true
 )]
 pub struct Arguments {
@@ -72,6 +76,8 @@ enum Command {
     Issue(issue::Arguments),
     /// Say what changed between two revisions of a project
     Compare(compare::Arguments),
+    /// Hold committed packages against their projects, list what is open; for CI
+    Audit(audit::Arguments),
     /// Try the sections of a family in place of one section, lightest first
     Try(trial::Arguments),
     /// Find sections, materials, check sheets and combination rules, print their properties and source
@@ -94,6 +100,7 @@ pub fn run(arguments: Arguments) -> Status {
         Command::Solve(arguments) => solve::run(&arguments),
         Command::Issue(arguments) => issue::run(&arguments),
         Command::Compare(arguments) => compare::run(&arguments),
+        Command::Audit(arguments) => audit::run(&arguments),
         Command::Try(arguments) => trial::run(&arguments),
         Command::Catalogue(arguments) => match catalogue::run(&arguments) {
             Ok(text) => {

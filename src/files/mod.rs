@@ -7,7 +7,9 @@
 //! - Writing is all or nothing: beside the old package, then exchanged by two renames; a changed project
 //!   file or a report likewise by one.
 
+mod committed;
 mod edit;
+mod find;
 mod gather;
 mod git;
 mod put;
@@ -17,12 +19,14 @@ mod write;
 use std::collections::BTreeMap;
 use std::io;
 
+pub use committed::committed;
 pub use edit::edit;
+pub use find::{Found, projects};
 pub use gather::{LARGEST_FILE, LARGEST_PROJECT, MOST_FILES};
 pub use git::{AtRevision, read_at, uncommitted};
 pub use put::put;
 pub use read::{committed_record, folder, read, record};
-pub use write::{CONTENTS, PACKAGE, create, heal, write};
+pub use write::{CONTENTS, PACKAGE, contents, create, digest, heal, write};
 
 use sha2::{Digest, Sha256};
 

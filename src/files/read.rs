@@ -161,6 +161,6 @@ pub fn committed_record(folder: &Path) -> Option<Vec<u8>> {
     record(&path).ok().map(String::into_bytes)
 }
 
-fn unreadable(path: &Path, reason: &str) -> Diagnostic {
+pub(super) fn unreadable(path: &Path, reason: &str) -> Diagnostic {
     gather::unreadable(&path.display().to_string(), reason)
 }

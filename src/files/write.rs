@@ -85,11 +85,19 @@ fn is_there(path: &Path) -> bool {
 
 fn write_all(new: &Path, package: &BTreeMap<String, Vec<u8>>) -> Result<(), Diagnostic> {
     write_files(new, package)?;
-    let line = |(path, bytes): (&String, &Vec<u8>)| {
-        format!("{}  {path}\n", hexadecimal(&Sha256::digest(bytes)))
-    };
-    let contents: String = package.iter().map(line).collect();
-    write_file(&new.join(CONTENTS), contents.as_bytes())
+    write_file(&new.join(CONTENTS), contents(package).as_bytes())
+}
+
+/// The text of [`CONTENTS`] for the other files of a package.
+#[must_use]
+pub fn contents(package: &BTreeMap<String, Vec<u8>>) -> String {
+    package.iter().map(|(path, bytes)| format!("{}  {path}\n", digest(bytes))).collect()
+}
+
+/// SHA-256 in hexadecimal.
+#[must_use]
+pub fn digest(bytes: &[u8]) -> String {
+    hexadecimal(&Sha256::digest(bytes))
 }
 
 fn write_files(folder: &Path, files: &BTreeMap<String, Vec<u8>>) -> Result<(), Diagnostic> {

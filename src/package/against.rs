@@ -13,8 +13,6 @@ use crate::diagnostic::Diagnostic;
 use crate::files::Sources;
 use crate::record::Record;
 
-/// Folder inside the package.
-const FOLDER: &str = "against/";
 /// What the revision is called, inside that folder.
 const ABOUT: &str = "against/about.json";
 /// Digits of a commit that name it in print.
@@ -35,6 +33,9 @@ struct About {
 }
 
 impl Against {
+    /// Where a package keeps it.
+    pub const FOLDER: &str = "against/";
+
     /// Solves the project as it stood at a commit.
     ///
     /// # Errors
@@ -63,7 +64,7 @@ impl Against {
             .iter()
             .filter(|(path, _)| *path != ABOUT)
             .filter_map(|(path, bytes)| {
-                Some((path.strip_prefix(FOLDER)?.to_owned(), bytes.clone()))
+                Some((path.strip_prefix(Self::FOLDER)?.to_owned(), bytes.clone()))
             })
             .collect();
         Some(Self::solve(&about.commit, Sources { files }))
@@ -121,7 +122,7 @@ impl Against {
             .sources
             .files
             .iter()
-            .map(|(path, content)| (format!("{FOLDER}{path}"), content.clone()))
+            .map(|(path, content)| (format!("{}{path}", Self::FOLDER), content.clone()))
             .collect();
         files.insert(ABOUT.to_owned(), (about + "\n").into_bytes());
         files

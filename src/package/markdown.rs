@@ -3,7 +3,8 @@
 use std::fmt::Write;
 
 /// Text that comes out of Markdown as it went in, in a paragraph or a table's cell.
-pub(super) fn escaped(text: &str) -> String {
+#[must_use]
+pub fn escaped(text: &str) -> String {
     let mut out = String::with_capacity(text.len() + 8);
     let mut before: Option<char> = None;
     let mut rest = text.chars().peekable();

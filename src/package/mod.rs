@@ -28,6 +28,7 @@ use std::collections::BTreeMap;
 
 pub use against::Against;
 pub use comparison::{comparison_markdown, comparison_page};
+pub use markdown::escaped as escaped_markdown;
 
 use crate::compare::{Changes, Marks};
 use crate::diagnostic::{Diagnostic, Place};

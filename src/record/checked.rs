@@ -2,7 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::{Map, Record};
+use super::{AssumptionRecord, Map, Record};
 use crate::model::Side;
 
 /// A check on one of its targets, or an agreement of a hand calculation.
@@ -177,6 +177,11 @@ impl Record {
     #[must_use]
     pub fn is_covered(&self, check: &CheckRecord) -> bool {
         self.basis.deferred.iter().any(|deferral| deferral.checks.contains(&check.id))
+    }
+
+    /// Assumptions that nobody has confirmed.
+    pub fn open_assumptions(&self) -> impl Iterator<Item = &AssumptionRecord> {
+        self.basis.assumptions.iter().filter(|assumption| assumption.status != "confirmed")
     }
 
     /// Every check is satisfied, or deferred with a deferral of the project that names it.

@@ -27,15 +27,13 @@ fn item(kind: &str, text: String) -> OpenItem {
 }
 
 fn assumptions(record: &Record) -> impl Iterator<Item = OpenItem> {
-    record.basis.assumptions.iter().filter(|assumption| assumption.status != "confirmed").map(
-        |assumption| {
-            let by = assumption.by.as_ref().map(|by| format!(" (by {by})")).unwrap_or_default();
-            item(
-                "assumption",
-                format!("Assumption {} is to be confirmed{by}: {}", assumption.id, assumption.text),
-            )
-        },
-    )
+    record.open_assumptions().map(|assumption| {
+        let by = assumption.by.as_ref().map(|by| format!(" (by {by})")).unwrap_or_default();
+        item(
+            "assumption",
+            format!("Assumption {} is to be confirmed{by}: {}", assumption.id, assumption.text),
+        )
+    })
 }
 
 /// Load cases that no combination counts, and those without any load.

@@ -22,6 +22,7 @@ fn help_lists_the_commands() {
       solve        Solve a project and print what governs; writes nothing
       issue        Write the calculation package into the project's `package` folder
       compare      Say what changed between two revisions of a project
+      audit        Hold committed packages against their projects, list what is open; for CI
       try          Try the sections of a family in place of one section, lightest first
       catalogue    Find sections, materials, check sheets and combination rules, print their properties
                    and source
@@ -42,8 +43,8 @@ fn help_lists_the_commands() {
 
     Exit status: 0 done; 1 could not (writing failed, self-check out of tolerance; nothing written); 2
     the command line or the project is wrong; 3 a check is not satisfied, or deferred without being
-    named in `basis.deferred` (`solve`), or no section satisfies (`try`), or an outcome worsened
-    (`compare --exit-status`).
+    named in `basis.deferred` (`solve`, `audit`), or no section satisfies (`try`), or an outcome
+    worsened (`compare --exit-status`); 4 a committed package is out of date (`audit`).
     ");
 }
 

@@ -1,6 +1,7 @@
 //! The built program, run the way an engineer runs it.
 
 mod against;
+mod audit;
 mod catalogue;
 mod checks;
 mod compare;

@@ -1,5 +1,6 @@
 //! See the files beside this one.
 
+mod audit_parts;
 mod by_span;
 mod check_places;
 mod checks;

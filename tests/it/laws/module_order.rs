@@ -2,7 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-const ORDER: [&str; 16] = [
+const ORDER: [&str; 17] = [
     "quantity",
     "diagnostic",
     "files",
@@ -18,6 +18,7 @@ const ORDER: [&str; 16] = [
     "compare",
     "figures",
     "package",
+    "audit",
     "cli",
 ];
 
