@@ -1,12 +1,12 @@
 //! The effects along one member over the combinations of one purpose, one under the other.
 
-use super::Figure;
 use super::canvas::{Align, Canvas, Pen};
 use super::curve;
 use super::names::{COMBINATIONS, NOTHING, is_bending, slug, words};
 use super::plane::Point;
 use super::sheet::{Sample, Sheet, extreme, legend, zero};
 use super::text::Text;
+use super::{Figure, Row};
 use crate::model::{Effect, Purpose};
 use crate::quantity::Kind;
 use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberRecord};
@@ -15,7 +15,7 @@ use crate::record::{ExtremeRecord, ExtremesRecord, Map, MemberRecord};
 const DRAWN: [Effect; 8] =
     [Effect::N, Effect::Vy, Effect::Vz, Effect::T, Effect::My, Effect::Mz, Effect::Dy, Effect::Dz];
 /// Left and right ends of the member on the paper, mm.
-pub(super) const ENDS: [f64; 2] = [26.0, 160.0];
+pub const ENDS: [f64; 2] = [26.0, 160.0];
 /// Height from least to greatest value, mm, and the height of all effects together.
 const HEIGHT: f64 = 19.0;
 const HEIGHTS: f64 = 195.0;
@@ -96,12 +96,16 @@ impl Drawing<'_> {
         self.member_line(&mut canvas);
         let mut top = canvas.bottom() + 7.0;
         let mut zeros = false;
-        let rows = u32::try_from(effects.len()).unwrap_or(1);
-        let full = (HEIGHTS / f64::from(rows) - GAP).min(HEIGHT);
+        let count = u32::try_from(effects.len()).unwrap_or(1);
+        let full = (HEIGHTS / f64::from(count) - GAP).min(HEIGHT);
+        let mut rows = Vec::new();
         for effect in effects {
             let minor = self.size(*effect) < MINOR * self.related(*effect);
             let height = if minor { full / 2.0 } else { full };
-            zeros |= self.row(&mut canvas, *effect, top, height);
+            if let Some(row) = self.place(*effect, top, height) {
+                zeros |= self.row(&mut canvas, &row, top + height / 2.0);
+                rows.push(row);
+            }
             top += height + GAP;
         }
         self.legend(&mut canvas, top - GAP + 7.0, zeros);
@@ -143,6 +147,7 @@ impl Drawing<'_> {
             structure: Some(self.sheet.name.to_owned()),
             member: Some(self.name.to_owned()),
             purpose: Some(self.purpose.name().to_owned()),
+            rows,
             ..Figure::default()
         }
     }
@@ -160,15 +165,22 @@ impl Drawing<'_> {
         ENDS[0] + position * self.scale()
     }
 
-    /// One effect over its axis; says whether zeros are marked.
-    fn row(&self, canvas: &mut Canvas, effect: Effect, top: f64, height: f64) -> bool {
-        let Some(extremes) = self.governing[0].get(effect.name()) else { return false };
+    /// Axis and scale of an effect between `top` and `top + height`.
+    fn place(&self, effect: Effect, top: f64, height: f64) -> Option<Row> {
+        let extremes = self.governing[0].get(effect.name())?;
         let (low, high) = (extremes.min.value.min(0.0), extremes.max.value.max(0.0));
         // Positive values below the axis.
         let down = is_bending(effect) && self.sheet.record.model.package.moments == "tension side";
-        let factor = height / (high - low) * if down { 1.0 } else { -1.0 };
-        let axis = top - (if down { low } else { high }) * factor;
-        let place = |point: Point| [self.x(point[0]), axis + point[1] * factor];
+        let scale = height / (high - low) * if down { 1.0 } else { -1.0 };
+        Some(Row { effect, axis: top - (if down { low } else { high }) * scale, scale })
+    }
+
+    /// One effect over its axis, its name beside `middle`; says whether zeros are marked.
+    fn row(&self, canvas: &mut Canvas, row: &Row, middle: f64) -> bool {
+        let Row { effect, axis, scale } = *row;
+        let Some(extremes) = self.governing[0].get(effect.name()) else { return false };
+        let down = scale > 0.0;
+        let place = |point: Point| [self.x(point[0]), axis + point[1] * scale];
 
         let band = self.sheet.record.band(self.name, effect, self.purpose).unwrap_or_default();
         self.envelope(canvas, effect, &band, axis, place);
@@ -176,7 +188,6 @@ impl Drawing<'_> {
         for station in &self.member.stations {
             canvas.line([self.x(*station), axis - 0.8], [self.x(*station), axis + 0.8], Pen::Axis);
         }
-        let middle = top + height / 2.0;
         let unit = &self.sheet.printer.units.get(effect.kind()).label;
         canvas.text([2.0, middle - 1.6], Align::Start, &Text::symbol(effect.name()).strong());
         canvas.text([2.0, middle + 1.6], Align::Start, &Text::new(unit.as_str()));

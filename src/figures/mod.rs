@@ -26,15 +26,26 @@ mod view;
 
 use rayon::prelude::*;
 
-use crate::model::Purpose;
+use crate::model::{Effect, Purpose};
 use crate::record::Record;
 use sheet::Sheet;
 
 pub use comparison::comparison;
 pub use method::method;
 
+/// Left and right ends of the member on a drawing of its effects, mm of paper.
+pub use member::ENDS;
+
+/// Where an effect along a member is drawn: its zero line and the paper that one SI unit takes downwards, mm.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Row {
+    pub effect: Effect,
+    pub axis: f64,
+    pub scale: f64,
+}
+
 /// A drawing with its place in the package.
-#[derive(Clone, Debug, Default, PartialEq, Eq)]
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct Figure {
     /// Unique: `model-main`, `loads-main.g`, `frame-main.strength.m_y`, `member-b1.strength`, …
     pub id: String,
@@ -52,6 +63,8 @@ pub struct Figure {
     pub purpose: Option<String>,
     /// The effect shown (its name, e.g. `M_y`, or `displacement`); `None` where several are.
     pub effect: Option<String>,
+    /// The effects along a member, from top to bottom, where the drawing can be read.
+    pub rows: Vec<Row>,
 }
 
 /// All drawings of a package, in order: for each structure its model, the loads of each case and the

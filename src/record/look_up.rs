@@ -19,11 +19,11 @@ pub struct Piece {
 /// greatest); two points at the same x where it jumps.
 pub type Band = Vec<[f64; 3]>;
 
-/// States with factors that act, and parts of cases that act or not.
-#[derive(Clone)]
-struct Acting<'r> {
-    terms: Vec<(&'r str, f64)>,
-    free: Vec<(&'r str, f64)>,
+/// What acts in a combination: solved states with their factors, and parts of cases that act or not.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Acting<'r> {
+    pub terms: Vec<(&'r str, f64)>,
+    pub free: Vec<(&'r str, f64)>,
 }
 
 impl Record {
@@ -153,6 +153,14 @@ impl Record {
         } else {
             format!("{number} [{}]", choices.join("; "))
         }
+    }
+
+    /// What acts on a member in a combination, one entry for each simplified arrangement of loaded spans;
+    /// nothing for other names.
+    #[must_use]
+    pub fn arrangements<'r>(&'r self, member: &str, combination: &str) -> Vec<Acting<'r>> {
+        let combination = self.combinations.get(combination);
+        combination.map(|combination| self.acting(member, combination)).unwrap_or_default()
     }
 
     /// A member as resolved, whatever its structure.

@@ -16,7 +16,7 @@ mod types;
 mod words;
 
 pub use checked::*;
-pub use look_up::{Band, Piece};
+pub use look_up::{Acting, Band, Piece};
 pub use registers::printed_utilisation;
 pub use rules::*;
 pub use settle::rounded;

@@ -14,10 +14,10 @@ pub(in crate::package) fn comparison(
     let project = &record.project;
     let title = format!("{} – {}: changes", project.number, project.title);
     let mut out =
-        head::opening(&title, &format!("@page {{ size: {}; }}\n", record.model.package.paper));
+        head::opening(&title, &format!("@page {{ size: {}; }}\n", record.model.package.paper), "");
     out.reserve(body.html.len());
     out += &format!(
-        "<header class=\"head\"><span>{}</span> <span>{}</span></header>\n<main>\n",
+        "<header class=\"head\" data-issue=\"{0}\"><span>{0}</span> <span>{1}</span></header>\n<main>\n",
         escaped(&project.number),
         escaped(&project.title),
     );

@@ -7,6 +7,7 @@ mod comparison;
 mod head;
 mod ids;
 mod notes;
+mod readings;
 mod sheets;
 mod symbols;
 mod table;
@@ -22,10 +23,13 @@ use crate::record::Record;
 pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (String, Vec<String>) {
     let body = body::Body::new(markdown, drawings);
     let project = &record.project;
+    let number = escaped(&project.number);
     let mark = project.revisions.last().map_or("", |revision| revision.mark.as_str());
     let title = format!("{} – {}", project.number, project.title);
-    let mut out = head::opening(&title, &sheets::rules(record, &body.contents));
+    let readings = readings::readings(record, drawings);
+    let mut out = head::opening(&title, &sheets::rules(record, &body.contents), &readings);
     out.reserve(body.html.len());
+    let mark = escaped(mark);
     // The cover comes first, then the contents.
     let (cover, chapters) = body.html.split_at(body.contents_at());
     let contents = &body.contents[body.contents.len().min(1)..];
@@ -34,10 +38,8 @@ pub(super) fn page(record: &Record, markdown: &str, drawings: &[Figure]) -> (Str
     }
     let _ = writeln!(
         out,
-        "<header class=\"head\"><span>{}</span> <span>{}</span> <span>Revision {}</span></header>",
-        escaped(&project.number),
+        "<header class=\"head\" data-issue=\"{number} rev {mark}\"><span>{number}</span> <span>{}</span> <span>Revision {mark}</span></header>",
         escaped(&project.title),
-        escaped(mark),
     );
     let _ = write!(out, "<main>\n{cover}");
     out += "<nav class=\"contents\" aria-labelledby=\"page.contents\">\n<h2 id=\"page.contents\">Contents</h2>\n<ol>\n";
