@@ -63,8 +63,25 @@ impl Table {
     /// Ends the table at the end of the page so far.
     pub(super) fn end(&self, html: &mut String) {
         html.push_str("</tbody>\n</table>\n</div>\n");
+        without_empty_heads(html, self.start);
         if self.rows <= TOGETHER {
             html.insert_str(self.start + "<div class=\"table".len(), " short");
         }
     }
+}
+
+/// A corner without words is no head, and a row of such corners is none either.
+fn without_empty_heads(html: &mut String, start: usize) {
+    let Some(from) = html[start..].find("<thead>").map(|at| start + at) else { return };
+    let Some(to) = html[from..].find("</thead>\n").map(|at| from + at + "</thead>\n".len()) else {
+        return;
+    };
+    let mut head = html[from..to].to_owned();
+    for class in ["", " class=\"right\"", " class=\"centre\""] {
+        head = head.replace(&format!("<th scope=\"col\"{class}></th>"), "<td></td>");
+    }
+    if !head.contains("<th") {
+        head.clear();
+    }
+    html.replace_range(from..to, &head);
 }

@@ -1,6 +1,9 @@
 // Reading a diagram: a position along the member (pointer, touch, or the slider with the keyboard), and a table
 // of every drawn effect there with its combination; one combination can be drawn above the envelope.
 
+/** Steps of the slider from one end of a member to the other. */
+const STEPS = 200;
+
 /** An effect's name set as a symbol with its subscript. */
 function symbolOf(effect) {
   const [letter, index] = effect.split("_");
@@ -23,13 +26,13 @@ class Reading {
     const { factor, label } = record.units.x;
     const length = this.member.length / factor;
     const name = `along ${member}`;
-    this.slider = make("input", { type: "range", min: 0, max: length, step: length / 200, value: length / 2, "aria-label": `Position ${name}` });
+    this.slider = make("input", { type: "range", min: 0, max: STEPS, value: STEPS / 2, "aria-label": `Position ${name}` });
     this.field = make("input", { type: "number", min: 0, max: Number(length.toPrecision(9)), step: "any", "aria-label": `Position ${name} in ${label}` });
     this.choice = make("select", { "aria-label": `Combination of ${name}` }, make("option", { value: "" }, `Envelope, ${purpose}`));
     this.states.forEach((state, index) => this.choice.append(make("option", { value: index }, `${state.number}: ${state.title}`)));
     this.table = make("table", { "aria-label": `Effects at the position ${name}`, "aria-live": "polite" });
     const output = make("div", { class: "table" }, this.table);
-    this.slider.addEventListener("input", () => this.at(Number(this.slider.value) * factor));
+    this.slider.addEventListener("input", () => this.at((Number(this.slider.value) / STEPS) * this.member.length));
     this.field.addEventListener("input", () => {
       const x = Number(this.field.value) * factor;
       if (this.field.value !== "" && x >= 0 && x <= this.member.length * (1 + 1e-9)) this.at(Math.min(x, this.member.length), this.field);
@@ -56,7 +59,7 @@ class Reading {
 
   /** The position itself, or the break of the member beside it. */
   snapped(x) {
-    return breaksOf(this.member).find((at) => Math.abs(at - x) < this.member.length / 200) ?? x;
+    return breaksOf(this.member).find((at) => Math.abs(at - x) < this.member.length / STEPS) ?? x;
   }
 
   paper(x) {
@@ -72,7 +75,7 @@ class Reading {
   at(x, source) {
     this.x = x;
     const { factor } = record.units.x;
-    this.slider.value = x / factor;
+    this.slider.value = (x / this.member.length) * STEPS;
     this.slider.setAttribute("aria-valuetext", `x = ${inUnit("x", x)} ${record.units.x.label}`);
     if (source !== this.field) this.field.value = Number((x / factor).toPrecision(6));
     this.marks.querySelectorAll(".cursor").forEach((mark) => mark.remove());

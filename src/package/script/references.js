@@ -2,9 +2,10 @@
 
 const issue = document.querySelector(".head").dataset.issue;
 
+/** "Figure 7" of a figure; a heading without its footnote marks and buttons. */
 function wordsOf(target) {
-  const heading = target.matches("figure") ? target.querySelector("figcaption strong") : target;
-  return [...heading.childNodes].filter((node) => !node.matches?.("button, sup")).map((node) => node.textContent).join("").trim().replace(/\.$/, "");
+  if (target.matches("figure")) return target.querySelector("figcaption").textContent.split(".")[0];
+  return [...target.childNodes].filter((node) => !node.matches?.("button, sup")).map((node) => node.textContent).join("").trim();
 }
 
 async function copy(text) {
