@@ -9,7 +9,7 @@ use crate::quantity::Kind;
 use crate::record::{CombinationRecord, LoadWords, Record, RuleUseRecord, components};
 
 /// Cases side by side in one block of the factors matrix.
-const COLUMNS: usize = 8;
+const COLUMNS: usize = 16;
 
 #[derive(Serialize)]
 pub(super) struct BuildUpTable<'r> {

@@ -9,7 +9,7 @@
 //! | `structures` | nodes, members, supports, hinges, drawings |
 //! | `cases` | load cases with their loads in words and figures |
 //! | `takedown` | reactions handed from structure to structure |
-//! | `combinations` | factors matrix in blocks of at most eight cases |
+//! | `combinations` | factors matrix in blocks of at most sixteen cases |
 //! | `members` | drawings and governing values of each member |
 //! | `reactions` | by case and governing, with components acting together |
 //! | `checks`, `checks_method` | checks by id: the worst place in full, all others in a line each |

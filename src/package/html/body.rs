@@ -231,7 +231,8 @@ impl<'d> Body<'d> {
             TagEnd::FootnoteDefinition => self.html += "</aside>\n",
             TagEnd::Table => {
                 if let Some(table) = self.table.take() {
-                    table.end(&mut self.html);
+                    let chapter = self.chapters.saturating_sub(1);
+                    table.end(&mut self.html, &sheets::sideways_name(chapter));
                 }
             }
             TagEnd::TableHead => self.html += self.table.as_mut().map_or("", Table::head_end),

@@ -15,6 +15,11 @@ pub(super) fn page_name(chapter: usize) -> String {
     format!("chapter-{chapter}")
 }
 
+/// The name of the pages of a chapter that are turned sideways, for wide tables.
+pub(super) fn sideways_name(chapter: usize) -> String {
+    page_name(chapter) + "-sideways"
+}
+
 /// The mark to be filled with the number of the sheet that holds the element of this id, already escaped.
 pub(super) fn number_of(id: &str) -> String {
     format!("<span class=\"sheet\" data-of=\"{id}\"></span>")
@@ -51,7 +56,8 @@ pub(super) fn rules(record: &Record, contents: &[Entry]) -> String {
         let _ = writeln!(out, "@page {name} {{ @top-right {{ content: {title}; }} }}");
         let _ = writeln!(
             out,
-            "@page {name}-wide {{ size: {paper} landscape; @top-right {{ content: {title}; }} }}"
+            "@page {} {{ size: {paper} landscape; @top-right {{ content: {title}; }} }}",
+            sideways_name(number),
         );
     }
     out

@@ -4,6 +4,8 @@ use pulldown_cmark::Alignment;
 
 /// Tables of at most so many rows stay on one sheet.
 const TOGETHER: usize = 14;
+/// Tables with more columns than these stand on sheets turned sideways.
+const UPRIGHT: usize = 12;
 
 pub(super) struct Table {
     alignments: Vec<Alignment>,
@@ -60,12 +62,16 @@ impl Table {
         if heads { "</th>" } else { "</td>" }
     }
 
-    /// Ends the table at the end of the page so far.
-    pub(super) fn end(&self, html: &mut String) {
+    /// Ends the table at the end of the page so far; `sideways` names the sheets that are turned.
+    pub(super) fn end(&self, html: &mut String, sideways: &str) {
         html.push_str("</tbody>\n</table>\n</div>\n");
         without_empty_heads(html, self.start);
         if self.rows <= TOGETHER {
             html.insert_str(self.start + "<div class=\"table".len(), " short");
+        }
+        if self.alignments.len() > UPRIGHT {
+            let style = format!(" style=\"page: {sideways}\"");
+            html.insert_str(self.start + "<div".len(), &style);
         }
     }
 }

@@ -21,7 +21,7 @@ for (const target of document.querySelectorAll(".chapter :is(h1, h2, h3)[id], fi
   const words = wordsOf(target);
   const sheet = document.querySelector(`.sheet[data-of="${CSS.escape(target.id)}"]`)?.textContent;
   const reference = `${issue}, ${words}${sheet ? `, sheet ${sheet}` : ""}`;
-  const button = make("button", { type: "button", class: "reference", "aria-label": `Copy as reference: ${words}` }, "Copy reference");
+  const button = make("button", { type: "button", class: "reference", "aria-label": `Copy reference: ${words}` }, "Copy reference");
   button.addEventListener("click", async () => {
     history.replaceState(null, "", `#${target.id}`);
     button.textContent = (await copy(reference)) ? "Copied" : reference;

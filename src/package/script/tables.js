@@ -37,7 +37,7 @@ for (const wrapper of document.querySelectorAll(".chapter .table")) {
 }
 
 function reachable() {
-  for (const wide of document.querySelectorAll(".table, .display, pre")) {
+  for (const wide of document.querySelectorAll(".table, .display, figure, pre")) {
     if (wide.scrollWidth > wide.clientWidth) wide.tabIndex = 0;
     else wide.removeAttribute("tabindex");
   }

@@ -109,6 +109,15 @@ fn nothing_is_loaded_from_elsewhere() {
 }
 
 #[test]
+fn no_text_of_the_project_leaves_what_the_script_reads() {
+    let yaml = BEAM.replace("title: all,", "title: '</script><b>&amp;',");
+    assert_ne!(yaml, BEAM);
+    let page = text(&issued(&sources(&yaml)).expect("a package"), "package.html");
+    assert!(!page.contains("</script><b>"));
+    assert!(page.contains("\\u003c/script\\u003e\\u003cb\\u003e\\u0026amp;"), "{page}");
+}
+
+#[test]
 fn a_template_of_the_project_takes_the_place_of_ours() {
     let own = with_template(
         "summary.md",
